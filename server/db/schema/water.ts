@@ -1,0 +1,196 @@
+import { sql } from 'drizzle-orm';
+import { check, index, integer, primaryKey, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
+import { id, instant, version } from './columns.ts';
+
+/** Tanks that share one water volume. */
+export const systems = sqliteTable(
+  'system',
+  {
+    id: id(),
+    code: text('code').notNull().unique(),
+    name: text('name').notNull(),
+    kind: text('kind', { enum: ['growout', 'broodstock', 'quarantine'] }).notNull(),
+    netVolumeL: real('net_volume_l').notNull(),
+    note: text('note').notNull().default(''),
+    createdAt: instant('created_at').notNull(),
+    retiredAt: instant('retired_at'),
+    version: version(),
+  },
+  (table) => [check('system_volume_positive', sql`${table.netVolumeL} > 0`)],
+);
+
+/** Where a system's parameter should stay, in the parameter's canonical unit. */
+export const targetBands = sqliteTable(
+  'target_band',
+  {
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    parameter: text('parameter').notNull(),
+    low: real('low').notNull(),
+    high: real('high').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.systemId, table.parameter] }),
+    check('target_band_order', sql`${table.low} < ${table.high}`),
+  ],
+);
+
+export const tanks = sqliteTable('tank', {
+  id: id(),
+  systemId: text('system_id')
+    .notNull()
+    .references(() => systems.id),
+  code: text('code').notNull().unique(),
+  name: text('name').notNull(),
+  createdAt: instant('created_at').notNull(),
+});
+
+/** A movable tray of plugs; positions are row letter and column number, like C-11. */
+export const racks = sqliteTable(
+  'rack',
+  {
+    id: id(),
+    tankId: text('tank_id')
+      .notNull()
+      .references(() => tanks.id),
+    code: text('code').notNull().unique(),
+    rows: integer('rows').notNull(),
+    columns: integer('columns').notNull(),
+    createdAt: instant('created_at').notNull(),
+    retiredAt: instant('retired_at'),
+    version: version(),
+  },
+  (table) => [
+    index('rack_tank').on(table.tankId),
+    check('rack_size', sql`${table.rows} BETWEEN 1 AND 26 AND ${table.columns} BETWEEN 1 AND 99`),
+  ],
+);
+
+/** One import of readings from a file; undone as a whole. */
+export const readingImports = sqliteTable('reading_import', {
+  id: id(),
+  fileName: text('file_name').notNull(),
+  readings: integer('readings').notNull(),
+  at: instant('at').notNull(),
+  by: text('by').notNull(),
+});
+
+/** One measured value in the parameter's canonical unit. */
+export const readings = sqliteTable(
+  'reading',
+  {
+    id: id(),
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    parameter: text('parameter').notNull(),
+    value: real('value').notNull(),
+    method: text('method').notNull().default(''),
+    takenAt: instant('taken_at').notNull(),
+    by: text('by').notNull(),
+    note: text('note').notNull().default(''),
+    importId: text('import_id').references(() => readingImports.id),
+    createdAt: instant('created_at').notNull(),
+    version: version(),
+  },
+  (table) => [
+    unique('reading_once').on(table.systemId, table.parameter, table.takenAt),
+    index('reading_import_id').on(table.importId),
+  ],
+);
+
+/** Part of a system's water replaced by new water of known alkalinity. */
+export const waterChanges = sqliteTable(
+  'water_change',
+  {
+    id: id(),
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    litres: real('litres').notNull(),
+    alkalinityMeqL: real('alkalinity_meq_l').notNull(),
+    saltG: real('salt_g').notNull().default(0),
+    at: instant('at').notNull(),
+    by: text('by').notNull(),
+  },
+  (table) => [
+    index('water_change_system').on(table.systemId, table.at),
+    check('water_change_litres', sql`${table.litres} > 0`),
+  ],
+);
+
+/** A supplement other than limewater put into a system; its effect as total alkalinity. */
+export const doses = sqliteTable(
+  'dose',
+  {
+    id: id(),
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    itemId: text('item_id').notNull(),
+    amount: real('amount').notNull(),
+    alkalinityMeq: real('alkalinity_meq').notNull(),
+    at: instant('at').notNull(),
+    by: text('by').notNull(),
+    note: text('note').notNull().default(''),
+  },
+  (table) => [index('dose_system').on(table.systemId, table.at), check('dose_amount', sql`${table.amount} > 0`)],
+);
+
+/** A vessel of limewater. At most one reservoir is online for a system at a time. */
+export const reservoirs = sqliteTable(
+  'reservoir',
+  {
+    id: id(),
+    code: text('code').notNull().unique(),
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    volumeL: real('volume_l').notNull(),
+    state: text('state', { enum: ['standby', 'settling', 'online', 'spent'] })
+      .notNull()
+      .default('standby'),
+    levelL: real('level_l').notNull().default(0),
+    /** Strength of what is in it, once acetate is used up. */
+    alkalinityMeqL: real('alkalinity_meq_l').notNull().default(0),
+    readyAt: instant('ready_at'),
+    createdAt: instant('created_at').notNull(),
+    retiredAt: instant('retired_at'),
+    version: version(),
+  },
+  (table) => [
+    index('reservoir_system').on(table.systemId),
+    check('reservoir_level', sql`${table.levelL} >= 0 AND ${table.levelL} <= ${table.volumeL} * 1.02`),
+  ],
+);
+
+/**
+ * What happened to a reservoir, in order: mixed (refill), level read, put online or taken off (changeover).
+ * `levelL` and `alkalinityMeqL` are what holds after the event; `levelBeforeL` what was read before a refill.
+ */
+export const reservoirEvents = sqliteTable(
+  'reservoir_event',
+  {
+    id: id(),
+    reservoirId: text('reservoir_id')
+      .notNull()
+      .references(() => reservoirs.id),
+    kind: text('kind', { enum: ['refill', 'level', 'online', 'offline'] }).notNull(),
+    at: instant('at').notNull(),
+    by: text('by').notNull(),
+    levelBeforeL: real('level_before_l').notNull(),
+    levelL: real('level_l').notNull(),
+    alkalinityMeqL: real('alkalinity_meq_l').notNull(),
+    waterL: real('water_l'),
+    limeG: real('lime_g'),
+    limePurity: real('lime_purity'),
+    vinegarMl: real('vinegar_ml'),
+    acidPercent: real('acid_percent'),
+    temperatureC: real('temperature_c'),
+    undissolvedG: real('undissolved_g'),
+    calciumMgL: real('calcium_mg_l'),
+    note: text('note').notNull().default(''),
+  },
+  (table) => [index('reservoir_event_order').on(table.reservoirId, table.at)],
+);
