@@ -1,0 +1,152 @@
+import { DomainError } from '../errors.ts';
+
+/** A calendar day of the farm, 'YYYY-MM-DD'. */
+export type Day = string;
+
+/** A calendar month, 'YYYY-MM'. */
+export type Month = string;
+
+export const MS_PER_HOUR = 3_600_000;
+
+/** Length of a day without a clock change; use {@link startOfDay} where the local day matters. */
+export const MS_PER_DAY = 24 * MS_PER_HOUR;
+
+/** No zone is further than this from UTC, so the local midnight is always inside the span around UTC midnight. */
+const WIDEST_OFFSET_MS = 15 * MS_PER_HOUR;
+
+const DAY_PATTERN = /^(\d{4})-(\d{2})-(\d{2})$/;
+
+// Building a formatter costs far more than using one.
+const clockFormats = new Map<string, Intl.DateTimeFormat>();
+
+/** Whether the text is a real calendar day such as '2028-02-29'. */
+export function isDay(text: string): boolean {
+  const parts = DAY_PATTERN.exec(text);
+  if (!parts) return false;
+  const date = new Date(Date.UTC(Number(parts[1]), Number(parts[2]) - 1, Number(parts[3])));
+  return date.toISOString().slice(0, 10) === text;
+}
+
+/**
+ * The calendar day on the wall of the farm at an instant.
+ *
+ * @param instantMs epoch milliseconds, UTC
+ * @param timeZone IANA name, such as 'Europe/Lisbon'
+ * @throws {DomainError} `input.invalid` when the zone is unknown
+ */
+export function dayOf(instantMs: number, timeZone: string): Day {
+  return dayFromUtc(wallClockAsUtc(instantMs, timeZone));
+}
+
+/**
+ * The first instant of a day in a zone. Where the clocks skip midnight it is the moment after the jump; where midnight
+ * comes twice it is the first one; a day that the zone skipped altogether starts where the next one does.
+ *
+ * @throws {DomainError} `input.invalid` when the day or the zone is not real
+ */
+export function startOfDay(day: Day, timeZone: string): number {
+  const utcMidnight = utcOf(day);
+  const candidates = [-MS_PER_DAY, MS_PER_DAY]
+    .map((shift) => utcMidnight - offsetAt(utcMidnight + shift, timeZone))
+    .filter((instant) => wallClockAsUtc(instant, timeZone) === utcMidnight);
+  return candidates.length > 0 ? Math.min(...candidates) : firstInstantFrom(utcMidnight, timeZone);
+}
+
+/** The day `count` days later (earlier when negative). */
+export function addDays(day: Day, count: number): Day {
+  if (!Number.isInteger(count)) {
+    throw new DomainError('input.invalid', 'Days are counted in whole numbers.', { details: { count } });
+  }
+  return dayFromUtc(utcOf(day) + count * MS_PER_DAY);
+}
+
+/** Whole days from `from` to `to`; negative when `to` is earlier. */
+export function daysBetween(from: Day, to: Day): number {
+  return (utcOf(to) - utcOf(from)) / MS_PER_DAY;
+}
+
+/** The month of a day, 'YYYY-MM'. */
+export function monthOf(day: Day): Month {
+  utcOf(day);
+  return day.slice(0, 7);
+}
+
+/** First day of a month and first day of the month after it. */
+export function monthBounds(month: Month): { from: Day; to: Day } {
+  const from = `${month}-01`;
+  const start = new Date(utcOf(from));
+  return { from, to: dayFromUtc(Date.UTC(start.getUTCFullYear(), start.getUTCMonth() + 1, 1)) };
+}
+
+/** ISO weekday: 1 is Monday, 7 is Sunday. */
+export function weekdayOf(day: Day): number {
+  return new Date(utcOf(day)).getUTCDay() || 7;
+}
+
+/** Every day from `from` to `to`, both included; empty when `to` is earlier. */
+export function eachDay(from: Day, to: Day): Day[] {
+  const count = Math.max(0, daysBetween(from, to) + 1);
+  return Array.from({ length: count }, (_, index) => addDays(from, index));
+}
+
+function utcOf(day: Day): number {
+  if (!isDay(day)) {
+    throw new DomainError('input.invalid', 'Enter a real day as year-month-day, such as 2026-03-12.', {
+      details: { day },
+    });
+  }
+  return Date.parse(`${day}T00:00:00Z`);
+}
+
+function dayFromUtc(utcMs: number): Day {
+  return new Date(utcMs).toISOString().slice(0, 10);
+}
+
+function offsetAt(instantMs: number, timeZone: string): number {
+  return wallClockAsUtc(instantMs, timeZone) - Math.floor(instantMs / 1000) * 1000;
+}
+
+/** What the wall clock of the zone shows, read as if it were UTC, to the second. */
+function wallClockAsUtc(instantMs: number, timeZone: string): number {
+  const shown: Partial<Record<Intl.DateTimeFormatPartTypes, number>> = {};
+  for (const { type, value } of clockFormat(timeZone).formatToParts(instantMs)) shown[type] = Number(value);
+  const { year = 0, month = 1, day = 1, hour = 0, minute = 0, second = 0 } = shown;
+  return Date.UTC(year, month - 1, day, hour, minute, second);
+}
+
+function clockFormat(timeZone: string): Intl.DateTimeFormat {
+  const known = clockFormats.get(timeZone);
+  if (known) return known;
+  const made = newClockFormat(timeZone);
+  clockFormats.set(timeZone, made);
+  return made;
+}
+
+function newClockFormat(timeZone: string): Intl.DateTimeFormat {
+  try {
+    return new Intl.DateTimeFormat('en-US', {
+      timeZone,
+      hourCycle: 'h23',
+      year: 'numeric',
+      month: 'numeric',
+      day: 'numeric',
+      hour: 'numeric',
+      minute: 'numeric',
+      second: 'numeric',
+    });
+  } catch {
+    throw new DomainError('input.invalid', 'Choose a time zone from the list.', { details: { timeZone } });
+  }
+}
+
+/** Bisection for the jump over a missing midnight. */
+function firstInstantFrom(utcMidnight: number, timeZone: string): number {
+  let before = utcMidnight - WIDEST_OFFSET_MS;
+  let after = utcMidnight + WIDEST_OFFSET_MS;
+  while (after - before > 1) {
+    const middle = Math.floor((before + after) / 2);
+    if (wallClockAsUtc(middle, timeZone) < utcMidnight) before = middle;
+    else after = middle;
+  }
+  return after;
+}
