@@ -1,0 +1,3 @@
+import type { RouteRecordRaw } from 'vue-router';
+
+export const scanRoutes: RouteRecordRaw[] = [];

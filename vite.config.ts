@@ -1,0 +1,58 @@
+import { fileURLToPath } from 'node:url';
+import vue from '@vitejs/plugin-vue';
+import vuetify from 'vite-plugin-vuetify';
+import { defineConfig } from 'vitest/config';
+
+const server = `http://127.0.0.1:${process.env.PORT ?? '3000'}`;
+const folder = (name: string) => fileURLToPath(new URL(`./${name}`, import.meta.url));
+
+export default defineConfig({
+  plugins: [vue(), vuetify({ autoImport: true })],
+  resolve: { alias: { '@shared': folder('shared'), '@': folder('src') } },
+  // The server puts a fresh nonce in place of this mark in every page that it sends.
+  html: { cspNonce: '__CSP_NONCE__' },
+  server: { proxy: { '/api': server, '/p': server } },
+  build: {
+    outDir: 'dist',
+    target: 'es2022',
+    // The Content-Security-Policy allows no data: addresses for scripts, styles or fonts.
+    assetsInlineLimit: 0,
+    rolldownOptions: {
+      output: {
+        codeSplitting: {
+          groups: [{ name: 'framework', test: /node_modules\/(?:@?vue|vue-router|pinia|@tanstack|zod)\// }],
+        },
+      },
+    },
+  },
+  test: {
+    projects: [
+      {
+        extends: true,
+        test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], exclude: ['tests/unit/client/**'] },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'client',
+          include: ['tests/unit/client/**/*.test.ts'],
+          environment: 'jsdom',
+          setupFiles: ['tests/unit/client/setup.ts'],
+          server: { deps: { inline: ['vuetify'] } },
+        },
+      },
+      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'] } },
+      {
+        extends: true,
+        test: {
+          name: 'browser',
+          include: ['tests/browser/**/*.test.ts'],
+          globalSetup: ['tests/browser/global-setup.ts'],
+          fileParallelism: false,
+          testTimeout: 60_000,
+          hookTimeout: 60_000,
+        },
+      },
+    ],
+  },
+});
