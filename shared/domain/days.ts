@@ -14,17 +14,20 @@ export const MS_PER_DAY = 24 * MS_PER_HOUR;
 /** No zone is further than this from UTC, so the local midnight is always inside the span around UTC midnight. */
 const WIDEST_OFFSET_MS = 15 * MS_PER_HOUR;
 
-const DAY_PATTERN = /^(\d{4})-(\d{2})-(\d{2})$/;
+const FIRST_DAY_MS = Date.parse('0001-01-01T00:00:00Z');
+const END_OF_DAYS_MS = Date.parse('9999-12-31T00:00:00Z') + MS_PER_DAY;
+
+const DAY_PATTERN = /^\d{4}-\d{2}-\d{2}$/;
 
 // Building a formatter costs far more than using one.
 const clockFormats = new Map<string, Intl.DateTimeFormat>();
 
 /** Whether the text is a real calendar day such as '2028-02-29'. */
 export function isDay(text: string): boolean {
-  const parts = DAY_PATTERN.exec(text);
-  if (!parts) return false;
-  const date = new Date(Date.UTC(Number(parts[1]), Number(parts[2]) - 1, Number(parts[3])));
-  return date.toISOString().slice(0, 10) === text;
+  if (!DAY_PATTERN.test(text)) return false;
+  const midnight = Date.parse(`${text}T00:00:00Z`);
+  // Some engines roll 30 February over to March instead of refusing it.
+  return midnight >= FIRST_DAY_MS && new Date(midnight).toISOString().slice(0, 10) === text;
 }
 
 /**
@@ -99,6 +102,9 @@ function utcOf(day: Day): number {
 }
 
 function dayFromUtc(utcMs: number): Day {
+  if (!(utcMs >= FIRST_DAY_MS && utcMs < END_OF_DAYS_MS)) {
+    throw new DomainError('domain.out_of_range', 'Days run from year 1 to year 9999.', { details: { utcMs } });
+  }
   return new Date(utcMs).toISOString().slice(0, 10);
 }
 

@@ -78,7 +78,7 @@ export function estimateDemand(
 ): DemandEstimate {
   const windowFrom = until - windowDays * MS_PER_DAY;
   const readings = inputs.readings
-    .filter(({ at, sd }) => at >= windowFrom && at <= until && sd > 0)
+    .filter(({ at, meqL, sd }) => at >= windowFrom && at <= until && sd > 0 && Number.isFinite(meqL))
     .sort((a, b) => a.at - b.at);
   const first = readings[0];
   const from = first?.at ?? windowFrom;

@@ -3,6 +3,9 @@ import { addDays, daysBetween, type Day } from './days.ts';
 
 export { GROWTH_FORMS, type GrowthForm, type GrowthFormCode } from './growth-forms.ts';
 
+/** A size that is more than ten years away is never reached. */
+const LONGEST_DAYS = 3652;
+
 /** Sale grades by the largest measure of a piece, mm; common practice, no source. A grade ends where the next begins. */
 export const GRADES = [
   { code: 'nub', label: 'Nub', minMm: 0 },
@@ -68,7 +71,7 @@ export function sizeEstimate(basis: SizeBasis, day: Day): number {
  *
  * @param minMm the size wanted, mm
  * @param healDays days from the cut until skinned over
- * @returns the day, or null where it will never grow so large
+ * @returns the day, or null where it will not grow so large within ten years
  */
 export function saleableDay(basis: SizeBasis, minMm: number, healDays: number): Day | null {
   const healed = addDays(basis.cutDay, Math.ceil(healDays));
@@ -76,7 +79,8 @@ export function saleableDay(basis: SizeBasis, minMm: number, healDays: number): 
   const lastKnown = basis.measured && basis.measured.day > healed ? basis.measured.day : healed;
   const missing = minMm - sizeEstimate(basis, lastKnown);
   if (missing > 0 && !(basis.mmPerWeek > 0)) return null;
-  if (missing > 0) return addDays(lastKnown, Math.ceil(trimmed((missing / basis.mmPerWeek) * 7)));
+  const days = (missing / basis.mmPerWeek) * 7;
+  if (missing > 0) return days > LONGEST_DAYS ? null : addDays(lastKnown, Math.ceil(trimmed(days)));
   return firstDayBetween(basis, minMm, healed, lastKnown);
 }
 

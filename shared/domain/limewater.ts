@@ -1,4 +1,5 @@
 import { DomainError } from '../errors.ts';
+import { assertAboveZero, assertNotNegative, assertPurity, assertWithin } from './ranges.ts';
 
 /** Molar masses, g/mol, from CIAAW abridged standard atomic weights. */
 export const CALCIUM_HYDROXIDE_G_PER_MOL = 74.092;
@@ -69,17 +70,11 @@ export function limeSolubility(temperatureC: number): number {
  */
 export function mixLimewater(mix: LimewaterMix): LimewaterResult {
   assertMix(mix);
+  assertNotNegative('Lime (g)', mix.limeG);
   const limeMol = (mix.limeG * mix.purity) / CALCIUM_HYDROXIDE_G_PER_MOL;
   const acidMol = acidIn(mix);
-  const waterRoomMol = (limeSolubility(mix.temperatureC) * mix.waterL) / CALCIUM_HYDROXIDE_G_PER_MOL;
-  const roomMol = waterRoomMol + VINEGAR_YIELD * (acidMol / 2);
-  if (acidMol > 0 && 2 * limeMol <= acidMol) {
-    throw new DomainError(
-      'domain.out_of_range',
-      'The vinegar would use up all the lime. Add less vinegar or more lime.',
-      { details: { limeG: mix.limeG, vinegarMl: mix.vinegarMl } },
-    );
-  }
+  assertStaysAlkaline(limeMol, acidMol);
+  const { waterMol, totalMol: roomMol } = roomFor(mix);
   const dissolvedMol = Math.min(limeMol, roomMol);
   return {
     dissolvedG: dissolvedMol * CALCIUM_HYDROXIDE_G_PER_MOL,
@@ -89,7 +84,7 @@ export function mixLimewater(mix: LimewaterMix): LimewaterResult {
     calciumMgL: (1000 * dissolvedMol * CALCIUM_G_PER_MOL) / mix.waterL,
     saturation: dissolvedMol / roomMol,
     shortOf: limeMol < roomMol ? 'lime' : 'solubility',
-    vinegarHelps: acidMol > 0 && limeMol > waterRoomMol,
+    vinegarHelps: acidMol > 0 && limeMol > waterMol,
     limeToSaturateG: (roomMol * CALCIUM_HYDROXIDE_G_PER_MOL) / mix.purity,
   };
 }
@@ -102,10 +97,9 @@ export function mixLimewater(mix: LimewaterMix): LimewaterResult {
  */
 export function limeForStrength(wanted: Omit<LimewaterMix, 'limeG'> & { alkalinityMeqL: number }): number {
   const { alkalinityMeqL, waterL, purity } = wanted;
-  assertWithin('Strength (meq/L)', alkalinityMeqL, 0, Number.MAX_VALUE);
-  assertMix({ ...wanted, limeG: 0 });
-  const roomMol =
-    (limeSolubility(wanted.temperatureC) * waterL) / CALCIUM_HYDROXIDE_G_PER_MOL + VINEGAR_YIELD * (acidIn(wanted) / 2);
+  assertMix(wanted);
+  assertNotNegative('Strength (meq/L)', alkalinityMeqL);
+  const roomMol = roomFor(wanted).totalMol;
   const neededMol = (alkalinityMeqL * waterL) / 2000;
   if (neededMol > roomMol * (1 + 1e-12)) {
     const strongest = (2000 * roomMol) / waterL;
@@ -115,6 +109,7 @@ export function limeForStrength(wanted: Omit<LimewaterMix, 'limeG'> & { alkalini
       { details: { alkalinityMeqL, strongest } },
     );
   }
+  assertStaysAlkaline(neededMol, acidIn(wanted));
   return (neededMol * CALCIUM_HYDROXIDE_G_PER_MOL) / purity;
 }
 
@@ -133,8 +128,9 @@ export function blendStrength(parts: readonly { litres: number; alkalinityMeqL: 
  * @returns meq/L a day
  */
 export function limewaterCeiling(evaporationLPerDay: number, alkalinityMeqL: number, systemVolumeL: number): number {
-  assertWithin('Evaporation (L a day)', evaporationLPerDay, 0, Number.MAX_VALUE);
-  assertAbove('System volume (L)', systemVolumeL);
+  assertNotNegative('Evaporation (L a day)', evaporationLPerDay);
+  assertNotNegative('Strength (meq/L)', alkalinityMeqL);
+  assertAboveZero('System volume (L)', systemVolumeL);
   return (evaporationLPerDay * alkalinityMeqL) / systemVolumeL;
 }
 
@@ -142,24 +138,26 @@ function acidIn({ vinegarMl, acidPercent = USUAL_ACID_PERCENT }: { vinegarMl: nu
   return (vinegarMl * acidPercent) / 100 / ACETIC_ACID_G_PER_MOL;
 }
 
-function assertMix(mix: LimewaterMix): void {
-  assertAbove('Water (L)', mix.waterL);
-  assertWithin('Lime (g)', mix.limeG, 0, Number.MAX_VALUE);
-  assertWithin('Vinegar (mL)', mix.vinegarMl, 0, Number.MAX_VALUE);
+function roomFor(mix: Omit<LimewaterMix, 'limeG'>): { waterMol: number; totalMol: number } {
+  const waterMol = (limeSolubility(mix.temperatureC) * mix.waterL) / CALCIUM_HYDROXIDE_G_PER_MOL;
+  return { waterMol, totalMol: waterMol + VINEGAR_YIELD * (acidIn(mix) / 2) };
+}
+
+function assertMix(mix: Omit<LimewaterMix, 'limeG'>): void {
+  assertAboveZero('Water (L)', mix.waterL);
+  assertNotNegative('Vinegar (mL)', mix.vinegarMl);
   assertWithin('Acidity (%)', mix.acidPercent ?? USUAL_ACID_PERCENT, 0, 100);
-  assertAbove('Purity', mix.purity);
-  assertWithin('Purity', mix.purity, 0, 1);
+  assertPurity(mix.purity);
 }
 
-function assertAbove(name: string, value: number): void {
-  if (!(value > 0 && Number.isFinite(value))) {
-    throw new DomainError('domain.out_of_range', `${name} must be above zero.`, { details: { value } });
-  }
-}
-
-function assertWithin(name: string, value: number, min: number, max: number): void {
-  if (!(value >= min && value <= max)) {
-    const limits = max === Number.MAX_VALUE ? `${min} or more` : `between ${min} and ${max}`;
-    throw new DomainError('domain.out_of_range', `${name} must be ${limits}.`, { details: { value, min, max } });
-  }
+/** Each mole of lime neutralises two of acid; the clear solution must stay alkaline. */
+function assertStaysAlkaline(limeMol: number, acidMol: number): void {
+  if (acidMol === 0 || 2 * limeMol > acidMol) return;
+  throw new DomainError(
+    'domain.out_of_range',
+    'The vinegar would use up all the lime. Use less vinegar or more lime.',
+    {
+      details: { limeMol, acidMol },
+    },
+  );
 }

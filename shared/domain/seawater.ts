@@ -1,4 +1,4 @@
-import { DomainError } from '../errors.ts';
+import { assertWithin } from './ranges.ts';
 
 /** EOS-80 is defined on the 1968 temperature scale; thermometers of today show ITS-90 (Saunders 1990). */
 const T68_PER_T90 = 1.00024;
@@ -6,6 +6,9 @@ const T68_PER_T90 = 1.00024;
 const SALINITY_LIMITS = { min: 0, max: 42 } as const;
 const TEMPERATURE_LIMITS = { min: -2, max: 40 } as const;
 const SG_TEMPERATURE = 25;
+
+/** Specific gravity of salinity 42, where the equation of state ends. */
+const HIGHEST_SG = 1.0317;
 
 /**
  * Density of seawater at one atmosphere.
@@ -17,8 +20,8 @@ const SG_TEMPERATURE = 25;
  * @see UNESCO 1983, Technical Papers in Marine Science 44, equations 13 and 14 (EOS-80)
  */
 export function seawaterDensity(salinity: number, temperatureC: number): number {
-  assertWithin('Salinity', salinity, SALINITY_LIMITS);
-  assertWithin('Temperature', temperatureC, TEMPERATURE_LIMITS);
+  assertWithin('Salinity', salinity, SALINITY_LIMITS.min, SALINITY_LIMITS.max);
+  assertWithin('Temperature (°C)', temperatureC, TEMPERATURE_LIMITS.min, TEMPERATURE_LIMITS.max);
   return densityOf(salinity, temperatureC * T68_PER_T90);
 }
 
@@ -38,7 +41,7 @@ export function specificGravity(salinity: number): number {
  * @throws {DomainError} `domain.out_of_range` outside 1.0000–1.0317 (salinity 0–42)
  */
 export function salinityFromSpecificGravity(sg: number): number {
-  assertWithin('Specific gravity', sg, { min: 1, max: specificGravity(SALINITY_LIMITS.max) });
+  assertWithin('Specific gravity', sg, 1, HIGHEST_SG);
   const target = sg * seawaterDensity(0, SG_TEMPERATURE);
   const t68 = SG_TEMPERATURE * T68_PER_T90;
   let salinity = (sg - 1) * 1300;
@@ -76,12 +79,4 @@ function saltTerms(t: number): { linear: number; power: number; square: number }
 
 function polynomial(x: number, coefficients: readonly number[]): number {
   return coefficients.reduceRight((sum, coefficient) => sum * x + coefficient, 0);
-}
-
-function assertWithin(name: string, value: number, { min, max }: { min: number; max: number }): void {
-  if (!(value >= min && value <= max)) {
-    throw new DomainError('domain.out_of_range', `${name} must be between ${min} and ${Number(max.toFixed(4))}.`, {
-      details: { value, min, max },
-    });
-  }
 }
