@@ -25,7 +25,9 @@ export const pieces = z.int('Enter a whole number.').min(1, 'At least 1.').max(5
 
 export const idParams = z.strictObject({ id });
 export const nothing = z.strictObject({});
+/** The answer of what has nothing to tell; handlers return `DONE`. */
 export const done = z.object({ ok: z.literal(true) });
+export const DONE = { ok: true } as const;
 
 /** Query of a list page: an opaque cursor from the answer before, and how many rows. */
 export const listQuery = z.strictObject({

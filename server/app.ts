@@ -1,0 +1,52 @@
+import express, { type Express } from 'express';
+import { pinoHttp } from 'pino-http';
+import { Api } from './http/api.ts';
+import { serveClient } from './http/client-pages.ts';
+import { errorHandler, unknownRoute } from './http/error-handler.ts';
+import { loadCaller, refuseForgedWrites } from './http/guards.ts';
+import { openApiDocument } from './http/openapi.ts';
+import { nonce, securityHeaders } from './http/security-headers.ts';
+import { sessionMiddleware } from './http/session.ts';
+import { registerRoutes } from './routes/index.ts';
+import { healthRoutes } from './routes/health-routes.ts';
+import type { Deps } from './deps.ts';
+
+/** Builds the whole application on what it is given; it does not listen. */
+export function createApp(deps: Deps, sessionSecret: string): { app: Express; api: Api } {
+  const app = express();
+  app.disable('x-powered-by');
+  app.set('trust proxy', deps.config.trustProxy);
+  app.set('etag', false);
+
+  app.use(
+    pinoHttp({
+      logger: deps.log,
+      genReqId: () => deps.newId(),
+      redact: [
+        'req.headers.cookie',
+        'req.headers.authorization',
+        'req.headers["x-csrf-token"]',
+        'res.headers["set-cookie"]',
+      ],
+      autoLogging: { ignore: (request) => request.url?.startsWith('/assets/') ?? false },
+    }),
+  );
+  app.use(nonce, securityHeaders(deps.config.publicUrl.startsWith('https:')));
+
+  // Webhooks are signed over their raw bytes and have no session.
+  app.use('/api/webhooks', express.raw({ type: '*/*', limit: '1mb' }));
+  app.use(express.json({ limit: '1mb' }));
+  app.use('/api', sessionMiddleware(deps, sessionSecret), loadCaller(deps));
+  app.use(/^\/api\/(?!webhooks\/)/, refuseForgedWrites());
+
+  const api = new Api(app, deps);
+  healthRoutes(api);
+  registerRoutes(api);
+  app.get('/api/openapi.json', (_request, response) => {
+    response.json(openApiDocument(api.endpoints));
+  });
+  app.use('/api', unknownRoute);
+  serveClient(app);
+  app.use(errorHandler);
+  return { app, api };
+}

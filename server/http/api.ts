@@ -1,0 +1,120 @@
+import type { Express, Request, RequestHandler, Response } from 'express';
+import type { BodyOf, Endpoint, ParamsOf, QueryOf, ResponseOf } from '../../shared/contracts/endpoint.ts';
+import { DomainError } from '../../shared/errors.ts';
+import { mayUse } from '../../shared/permissions.ts';
+import type { Db } from '../db/client.ts';
+import { inWrite, SYSTEM, type Write } from '../db/write.ts';
+import type { Deps } from '../deps.ts';
+import { callerOf, type Caller } from './caller.ts';
+import { answerOnce } from './idempotency.ts';
+import { parseInput } from './parse-input.ts';
+import { receiveUpload, type Upload } from './upload.ts';
+
+/** What a handler gets: the parsed request and who asks. `caller` is null only on public endpoints. */
+export interface Input<E extends Endpoint> {
+  params: ParamsOf<E>;
+  query: QueryOf<E>;
+  body: BodyOf<E>;
+  caller: E['access'] extends 'public' ? Caller | null : Caller;
+  /** Version that the editor saw, on endpoints that edit. */
+  ifMatch: E['edits'] extends true ? number : undefined;
+  upload: E['upload'] extends object ? Upload : undefined;
+}
+
+/** A download: whole, or written by `stream`. */
+export interface FileAnswer {
+  fileName: string;
+  contentType: string;
+  content: Buffer | string;
+  inline?: boolean;
+}
+
+type Answer<E extends Endpoint> = E['answer'] extends 'file' ? FileAnswer : ResponseOf<E>;
+
+/**
+ * Registers endpoints on the Express application. Access is checked before anything else is read; requests and answers
+ * are parsed by the endpoint's contract. `read` only reads; `write` runs in one transaction with the audit log and the
+ * idempotency record; `act` is for what must wait on something outside and opens its own writes.
+ */
+export class Api {
+  readonly endpoints: Endpoint[] = [];
+  private readonly app: Express;
+  readonly deps: Deps;
+
+  constructor(app: Express, deps: Deps) {
+    this.app = app;
+    this.deps = deps;
+  }
+
+  read<E extends Endpoint>(endpoint: E, handler: (db: Db, input: Input<E>) => Answer<E>): void {
+    this.register(endpoint, (_request, input) => handler(this.deps.db, input));
+  }
+
+  write<E extends Endpoint>(endpoint: E, handler: (write: Write, input: Input<E>) => Answer<E>): void {
+    this.register(endpoint, (request, input) =>
+      inWrite(this.deps, input.caller ?? SYSTEM, (write) => {
+        const key = request.get('Idempotency-Key');
+        if (!endpoint.creates || !key || !input.caller) return handler(write, input);
+        const identity = {
+          key,
+          callerId: input.caller.userId,
+          route: `${endpoint.method} ${endpoint.path}`,
+          content: [input.params, input.query, input.body],
+        };
+        return answerOnce(write, identity, 201, () => handler(write, input));
+      }),
+    );
+  }
+
+  act<E extends Endpoint>(
+    endpoint: E,
+    handler: (input: Input<E> & { request: Request; response: Response }) => Promise<Answer<E>> | Answer<E>,
+  ): void {
+    this.register(endpoint, (request, input, response) => handler({ ...input, request, response }));
+  }
+
+  private register<E extends Endpoint>(
+    endpoint: E,
+    run: (request: Request, input: Input<E>, response: Response) => Promise<Answer<E>> | Answer<E>,
+  ): void {
+    if (!endpoint.access) throw new Error(`${endpoint.path} declares no access.`);
+    this.endpoints.push(endpoint);
+
+    const guard: RequestHandler = (request, _response, next) => {
+      checkAccess(endpoint, callerOf(request));
+      next();
+    };
+    const answer: RequestHandler = async (request, response) => {
+      const input = parseInput(endpoint, request, callerOf(request));
+      send(endpoint, response, await run(request, input, response));
+    };
+    const uploads = endpoint.upload ? [receiveUpload(endpoint.upload)] : [];
+    this.app[endpoint.method](endpoint.path, guard, ...uploads, answer);
+  }
+}
+
+function checkAccess(endpoint: Endpoint, caller: Caller | null): void {
+  if (mayUse(caller?.role ?? null, endpoint.access)) return;
+  if (!caller) throw new DomainError('session.required', 'Sign in to go on.');
+  throw new DomainError('permission.denied', 'Your role does not allow this. Ask the owner of the farm.');
+}
+
+function send<E extends Endpoint>(endpoint: E, response: Response, answer: Answer<E>): void {
+  if (endpoint.answer === 'file') {
+    const file = answer as FileAnswer;
+    response.setHeader('Content-Type', file.contentType);
+    response.setHeader('Content-Disposition', `${file.inline ? 'inline' : 'attachment'}; filename="${file.fileName}"`);
+    response.setHeader('Cache-Control', 'no-store');
+    response.send(file.content);
+    return;
+  }
+  const body: unknown = endpoint.response ? endpoint.response.parse(answer) : undefined;
+  if (hasVersion(body)) response.setHeader('ETag', `"${body.version}"`);
+  response.setHeader('Cache-Control', 'no-store');
+  if (body === undefined) response.status(204).end();
+  else response.status(endpoint.creates ? 201 : 200).json(body);
+}
+
+function hasVersion(body: unknown): body is { version: number } {
+  return typeof body === 'object' && body !== null && 'version' in body && typeof body.version === 'number';
+}

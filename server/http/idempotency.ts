@@ -1,0 +1,47 @@
+import { createHash } from 'node:crypto';
+import { and, eq } from 'drizzle-orm';
+import { DomainError } from '../../shared/errors.ts';
+import type { Write } from '../db/write.ts';
+import { idempotencyKeys } from '../db/schema/index.ts';
+
+export interface RequestIdentity {
+  key: string;
+  callerId: string;
+  route: string;
+  /** Parsed params, query and body. */
+  content: unknown;
+}
+
+/**
+ * Gives the first answer again when this key was used before, or makes the answer and keeps it, in one transaction.
+ * @throws {DomainError} `idempotency.mismatch` when the key was used for something else
+ */
+export function answerOnce<T>(write: Write, request: RequestIdentity, status: number, make: () => T): T {
+  const requestHash = createHash('sha256')
+    .update(JSON.stringify([request.route, request.content]))
+    .digest('hex');
+  const earlier = write.tx
+    .select()
+    .from(idempotencyKeys)
+    .where(and(eq(idempotencyKeys.callerId, request.callerId), eq(idempotencyKeys.key, request.key)))
+    .get();
+  if (earlier) {
+    if (earlier.requestHash !== requestHash) {
+      throw new DomainError(
+        'idempotency.mismatch',
+        'This Idempotency-Key was used for another request. Send a new key.',
+      );
+    }
+    return earlier.answer as T;
+  }
+  const answer = make();
+  write.tx
+    .insert(idempotencyKeys)
+    .values({ ...identityColumns(request), requestHash, status, answer: answer ?? null, at: write.now })
+    .run();
+  return answer;
+}
+
+function identityColumns({ key, callerId, route }: RequestIdentity) {
+  return { key, callerId, route };
+}

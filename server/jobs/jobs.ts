@@ -1,0 +1,55 @@
+import { lt } from 'drizzle-orm';
+import { idempotencyKeys } from '../db/schema/index.ts';
+import type { Deps } from '../deps.ts';
+import { deleteExpiredSessions } from '../http/session.ts';
+import { sendDueMails } from './send-due-mails.ts';
+
+const SECOND = 1000;
+const DAY = 86_400_000;
+
+interface Job {
+  name: string;
+  everyMs: number;
+  run: (deps: Deps) => void | Promise<void>;
+}
+
+const JOBS: readonly Job[] = [
+  { name: 'send mails', everyMs: 2 * SECOND, run: sendDueMails },
+  { name: 'delete expired sessions', everyMs: 3600 * SECOND, run: deleteExpiredSessions },
+  { name: 'forget old request keys', everyMs: 3600 * SECOND, run: forgetOldRequestKeys },
+];
+
+/** Starts the recurring work. @returns a stop that waits for what is running */
+export function startJobs(deps: Deps): () => Promise<void> {
+  const running = new Set<Promise<void>>();
+  const timers = JOBS.map((job) => {
+    let busy = false;
+    return setInterval(() => {
+      if (busy) return;
+      busy = true;
+      const run = runJob(job, deps).finally(() => {
+        busy = false;
+        running.delete(run);
+      });
+      running.add(run);
+    }, job.everyMs);
+  });
+  return async () => {
+    for (const timer of timers) clearInterval(timer);
+    await Promise.all(running);
+  };
+}
+
+async function runJob(job: Job, deps: Deps): Promise<void> {
+  try {
+    await job.run(deps);
+  } catch (error) {
+    deps.log.error({ err: error, job: job.name }, 'job failed');
+  }
+}
+
+function forgetOldRequestKeys({ db, clock }: Deps): void {
+  db.delete(idempotencyKeys)
+    .where(lt(idempotencyKeys.at, clock.now() - 30 * DAY))
+    .run();
+}

@@ -1,0 +1,25 @@
+import type { outboxMails } from '../db/schema/index.ts';
+import type { Write } from '../db/write.ts';
+import { outboxMails as outbox } from '../db/schema/index.ts';
+import type { Deps } from '../deps.ts';
+import type { Mail } from '../outside/mail-transport.ts';
+
+export type MailBody = Omit<Mail, 'to'>;
+type Template = (deps: Deps, data: Record<string, unknown>) => MailBody | Promise<MailBody>;
+
+/** Every mail the product sends, by template name. Each area's mails live in `server/services/mails/`. */
+const TEMPLATES: Record<string, Template> = {};
+
+/** Queues a mail in the transaction that causes it. */
+export function queueMail(write: Write, template: string, to: string, data: Record<string, unknown>): void {
+  write.tx
+    .insert(outbox)
+    .values({ id: write.newId(), template, toAddress: to, data, createdAt: write.now, nextAttemptAt: write.now })
+    .run();
+}
+
+export async function renderMail(deps: Deps, row: typeof outboxMails.$inferSelect): Promise<MailBody> {
+  const template = TEMPLATES[row.template];
+  if (!template) throw new Error(`There is no mail template ${row.template}.`);
+  return template(deps, row.data);
+}
