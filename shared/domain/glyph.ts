@@ -77,13 +77,14 @@ function rosette(features: GlyphFeatures): Corallite[] {
 function centresOf(count: number): [cx: number, cy: number, radius: number][] {
   if (count === 1) return [[50, 50, 42]];
   if (count === 7) return [[50, 50, 15], ...ring(6, 30.5, 15)];
-  return ring(count, count === 3 ? 25 : 27, count === 3 ? 21 : 18);
+  // Three sit lower, so that the drawing as a whole is in the middle of the box.
+  return count === 3 ? ring(3, 25, 21, 56) : ring(4, 27, 18);
 }
 
-function ring(count: number, distance: number, radius: number): [number, number, number][] {
+function ring(count: number, distance: number, radius: number, middleY = 50): [number, number, number][] {
   return Array.from({ length: count }, (_, index) => {
     const angle = (2 * Math.PI * index) / count - Math.PI / (count === 4 ? 4 : 2);
-    return [50 + distance * Math.cos(angle), 50 + distance * Math.sin(angle), radius];
+    return [50 + distance * Math.cos(angle), middleY + distance * Math.sin(angle), radius];
   });
 }
 
