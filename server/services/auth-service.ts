@@ -1,0 +1,54 @@
+import { and, eq, isNull } from 'drizzle-orm';
+import { DomainError } from '../../shared/errors.ts';
+import { inWrite, SYSTEM } from '../db/write.ts';
+import { users } from '../db/schema/index.ts';
+import type { Deps } from '../deps.ts';
+import { isPassword } from './passwords.ts';
+import { countTry, forgetTries, type SignInTry } from './sign-in-slowdown.ts';
+
+export type UserRow = typeof users.$inferSelect;
+
+/**
+ * The person whose e-mail and password these are.
+ * @throws {DomainError} `sign_in.refused`, the same for an unknown account, a wrong password and a disabled person;
+ *   `rate.limited` after too many of them
+ */
+export async function signIn(deps: Deps, attempt: SignInTry & { password: string }): Promise<UserRow> {
+  inWrite(deps, SYSTEM, (write) => countTry(write, attempt));
+  const user = findActiveUser(deps, attempt.email);
+  if (!(await isPassword(user?.passwordHash ?? null, attempt.password)) || !user) {
+    throw new DomainError(
+      'sign_in.refused',
+      'This e-mail and password do not go together. Try again, or ask for a link to set a new password.',
+    );
+  }
+  inWrite(deps, actorOf(user), (write) => {
+    forgetTries(write, attempt);
+    write.audit({ action: 'user.signed_in', entity: 'user', entityId: user.id });
+  });
+  return user;
+}
+
+/** @throws {DomainError} `record.not_found` unless the farm is a demo and this one of its people */
+export function signInAsDemo(deps: Deps, email: string): UserRow {
+  const user = deps.config.demo ? findActiveUser(deps, email) : null;
+  if (!user?.demo) throw new DomainError('record.not_found', 'There is no such demo person. Sign in with a password.');
+  inWrite(deps, actorOf(user), (write) => {
+    write.audit({ action: 'user.signed_in', entity: 'user', entityId: user.id });
+  });
+  return user;
+}
+
+export function actorOf(user: UserRow) {
+  return { userId: user.id, name: user.name, role: user.role, storeId: user.storeId };
+}
+
+function findActiveUser({ db }: Deps, email: string): UserRow | null {
+  return (
+    db
+      .select()
+      .from(users)
+      .where(and(eq(users.email, email), isNull(users.disabledAt)))
+      .get() ?? null
+  );
+}
