@@ -490,6 +490,19 @@ CREATE TABLE `supplier` (
 );
 --> statement-breakpoint
 CREATE UNIQUE INDEX `supplier_name_unique` ON `supplier` (`name`);--> statement-breakpoint
+CREATE TABLE `supply_count` (
+	`id` text PRIMARY KEY NOT NULL,
+	`item_id` text NOT NULL,
+	`counted` real NOT NULL,
+	`expected` real NOT NULL,
+	`reason` text NOT NULL,
+	`at` integer NOT NULL,
+	`by` text NOT NULL,
+	FOREIGN KEY (`item_id`) REFERENCES `item`(`id`) ON UPDATE no action ON DELETE no action,
+	CONSTRAINT "supply_count_amounts" CHECK("supply_count"."counted" >= 0 AND "supply_count"."expected" >= 0)
+);
+--> statement-breakpoint
+CREATE INDEX `supply_count_item` ON `supply_count` (`item_id`,`at`);--> statement-breakpoint
 CREATE TABLE `cost_month` (
 	`month` text PRIMARY KEY NOT NULL,
 	`built_at` integer NOT NULL,

@@ -91,3 +91,23 @@ export const consumptions = sqliteTable(
     check('consumption_quantity', sql`${table.quantity} > 0 AND ${table.costMicro} >= 0`),
   ],
 );
+
+/** What a person counted of an item, what the books said then, and why they differ. */
+export const supplyCounts = sqliteTable(
+  'supply_count',
+  {
+    id: id(),
+    itemId: text('item_id')
+      .notNull()
+      .references(() => items.id),
+    counted: real('counted').notNull(),
+    expected: real('expected').notNull(),
+    reason: text('reason').notNull(),
+    at: instant('at').notNull(),
+    by: text('by').notNull(),
+  },
+  (table) => [
+    index('supply_count_item').on(table.itemId, table.at),
+    check('supply_count_amounts', sql`${table.counted} >= 0 AND ${table.expected} >= 0`),
+  ],
+);
