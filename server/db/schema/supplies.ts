@@ -1,5 +1,6 @@
 import { sql } from 'drizzle-orm';
 import { check, index, integer, real, sqliteTable, text } from 'drizzle-orm/sqlite-core';
+import { ITEM_KINDS, ITEM_UNITS, USE_CAUSES } from '../../../shared/domain/supply-items.ts';
 import { day, id, instant, version } from './columns.ts';
 import { systems } from './water.ts';
 
@@ -18,10 +19,8 @@ export const items = sqliteTable(
     id: id(),
     code: text('code').notNull().unique(),
     name: text('name').notNull(),
-    kind: text('kind', {
-      enum: ['lime', 'vinegar', 'salt', 'supplement', 'plug', 'glue', 'label', 'packing', 'other'],
-    }).notNull(),
-    unit: text('unit', { enum: ['g', 'mL', 'piece'] }).notNull(),
+    kind: text('kind', { enum: ITEM_KINDS }).notNull(),
+    unit: text('unit', { enum: ITEM_UNITS }).notNull(),
     packSize: real('pack_size').notNull(),
     leadTimeDays: integer('lead_time_days').notNull(),
     safetyDays: integer('safety_days').notNull(),
@@ -78,7 +77,7 @@ export const consumptions = sqliteTable(
       .references(() => lots.id),
     quantity: real('quantity').notNull(),
     costMicro: integer('cost_micro').notNull(),
-    cause: text('cause', { enum: ['refill', 'dose', 'water_change', 'cut', 'packing', 'count'] }).notNull(),
+    cause: text('cause', { enum: USE_CAUSES }).notNull(),
     causeId: text('cause_id').notNull(),
     systemId: text('system_id').references(() => systems.id),
     at: instant('at').notNull(),

@@ -1,0 +1,67 @@
+/** What a supply is for; lime and vinegar are named apart because the water's demand foretells their use. */
+export const ITEM_KINDS = [
+  'lime',
+  'vinegar',
+  'salt',
+  'supplement',
+  'plug',
+  'glue',
+  'label',
+  'packing',
+  'other',
+] as const;
+export type ItemKind = (typeof ITEM_KINDS)[number];
+
+export const ITEM_UNITS = ['g', 'mL', 'piece'] as const;
+export type ItemUnit = (typeof ITEM_UNITS)[number];
+
+export const USE_CAUSES = ['refill', 'dose', 'water_change', 'cut', 'packing', 'count'] as const;
+export type UseCause = (typeof USE_CAUSES)[number];
+
+/** How urgent a supply is: `out`, `order_now` (the last day to order is here), `order_soon` (within a week), else `ok`. */
+export const SUPPLY_STATES = ['ok', 'order_soon', 'order_now', 'out'] as const;
+export type SupplyState = (typeof SUPPLY_STATES)[number];
+
+/** The unit that a kind is kept in where the chemistry or the act that uses it fixes it. */
+const FIXED_UNITS: Partial<Record<ItemKind, ItemUnit>> = {
+  lime: 'g',
+  vinegar: 'mL',
+  salt: 'g',
+  plug: 'piece',
+  label: 'piece',
+};
+
+const STRENGTHS: Partial<Record<ItemKind, { above: number; upTo: number; message: string }>> = {
+  lime: { above: 0, upTo: 1, message: 'Enter the part that is calcium hydroxide, above 0 and up to 1, such as 0.95.' },
+  vinegar: { above: 0, upTo: 30, message: 'Enter the acid of the vinegar in percent, above 0 and up to 30.' },
+  supplement: {
+    above: 0,
+    upTo: 100,
+    message: 'Enter the alkalinity that one unit brings, above 0 and up to 100 meq.',
+  },
+};
+
+export interface ItemProblem {
+  path: 'unit' | 'strength';
+  message: string;
+}
+
+/** What does not fit together about an item; empty when all does. */
+export function itemProblems(item: { kind: ItemKind; unit: ItemUnit; strength: number | null }): ItemProblem[] {
+  const problems: ItemProblem[] = [];
+  const unit = FIXED_UNITS[item.kind];
+  if (unit && item.unit !== unit) problems.push({ path: 'unit', message: `This kind is kept in ${unit}.` });
+  const range = STRENGTHS[item.kind];
+  if (range && !(item.strength !== null && item.strength > range.above && item.strength <= range.upTo)) {
+    problems.push({ path: 'strength', message: range.message });
+  }
+  if (!range && item.strength !== null) {
+    problems.push({ path: 'strength', message: 'Only lime, vinegar and supplements have a strength.' });
+  }
+  return problems;
+}
+
+/** Whether a kind has a strength at all. */
+export function hasStrength(kind: ItemKind): boolean {
+  return STRENGTHS[kind] !== undefined;
+}
