@@ -158,6 +158,9 @@ CREATE TABLE `reading` (
 	FOREIGN KEY (`import_id`) REFERENCES `reading_import`(`id`) ON UPDATE no action ON DELETE no action
 );
 --> statement-breakpoint
+CREATE INDEX `reading_system_time` ON `reading` (`system_id`,`taken_at`);--> statement-breakpoint
+CREATE INDEX `reading_parameter_time` ON `reading` (`parameter`,`taken_at`);--> statement-breakpoint
+CREATE INDEX `reading_time` ON `reading` (`taken_at`);--> statement-breakpoint
 CREATE INDEX `reading_import_id` ON `reading` (`import_id`);--> statement-breakpoint
 CREATE UNIQUE INDEX `reading_once` ON `reading` (`system_id`,`parameter`,`taken_at`);--> statement-breakpoint
 CREATE TABLE `reservoir_event` (
@@ -224,6 +227,7 @@ CREATE TABLE `tank` (
 );
 --> statement-breakpoint
 CREATE UNIQUE INDEX `tank_code_unique` ON `tank` (`code`);--> statement-breakpoint
+CREATE INDEX `tank_system` ON `tank` (`system_id`);--> statement-breakpoint
 CREATE TABLE `target_band` (
 	`system_id` text NOT NULL,
 	`parameter` text NOT NULL,
@@ -295,6 +299,7 @@ CREATE TABLE `cut` (
 	`by` text NOT NULL,
 	`note` text DEFAULT '' NOT NULL,
 	`created_at` integer NOT NULL,
+	`undone_at` integer,
 	FOREIGN KEY (`colony_id`) REFERENCES `colony`(`id`) ON UPDATE no action ON DELETE no action,
 	CONSTRAINT "cut_pieces" CHECK("cut"."pieces" > 0)
 );
@@ -302,7 +307,8 @@ CREATE TABLE `cut` (
 CREATE INDEX `cut_colony` ON `cut` (`colony_id`,`cut_on`);--> statement-breakpoint
 CREATE TABLE `ledger_gate` (
 	`id` integer PRIMARY KEY NOT NULL,
-	`open` integer NOT NULL
+	`open` integer NOT NULL,
+	`posted_id` integer DEFAULT 0 NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE `line` (

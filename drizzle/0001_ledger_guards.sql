@@ -9,6 +9,12 @@ BEGIN SELECT RAISE(ABORT, 'Movements are never deleted. Reverse it instead.'); E
 --> statement-breakpoint
 CREATE TRIGGER stock_movement_check BEFORE INSERT ON stock_movement
 BEGIN
+  -- INSERT OR REPLACE would take the old row away without asking the delete trigger.
+  SELECT RAISE(ABORT, 'Movements are never edited. Reverse it instead.')
+  WHERE EXISTS (SELECT 1 FROM stock_movement WHERE id = NEW.id);
+  SELECT RAISE(ABORT, 'stock.already_reversed')
+  WHERE NEW.reverses_id IS NOT NULL
+    AND EXISTS (SELECT 1 FROM stock_movement WHERE reverses_id = NEW.reverses_id);
   SELECT RAISE(ABORT, 'stock.not_there')
   WHERE NEW.plug_code IS NOT NULL AND NOT EXISTS (
     SELECT 1 FROM plug
@@ -45,8 +51,23 @@ BEGIN
     SELECT NEW.batch_id, id, NEW.pieces, is_source FROM stock_account WHERE id = NEW.to_account_id
     ON CONFLICT (batch_id, account_id) DO UPDATE SET pieces = pieces + excluded.pieces;
   UPDATE plug SET account_id = NEW.to_account_id, position = NEW.to_position WHERE code = NEW.plug_code;
-  UPDATE ledger_gate SET open = 0 WHERE id = 1;
+  UPDATE ledger_gate SET open = 0, posted_id = NEW.id WHERE id = 1;
 END;
+--> statement-breakpoint
+-- The gate opens only for a movement that is not posted yet, which is never so outside the trigger above.
+CREATE TRIGGER ledger_gate_guard BEFORE UPDATE ON ledger_gate
+WHEN NOT (
+  (OLD.open = 0 AND NEW.open = 1 AND NEW.id = OLD.id AND NEW.posted_id = OLD.posted_id
+    AND OLD.posted_id < coalesce((SELECT max(id) FROM stock_movement), 0))
+  OR (OLD.open = 1 AND NEW.open = 0 AND NEW.id = OLD.id
+    AND NEW.posted_id = (SELECT max(id) FROM stock_movement)))
+BEGIN SELECT RAISE(ABORT, 'The ledger opens for its own movements only.'); END;
+--> statement-breakpoint
+CREATE TRIGGER ledger_gate_no_insert BEFORE INSERT ON ledger_gate
+BEGIN SELECT RAISE(ABORT, 'The ledger has one gate.'); END;
+--> statement-breakpoint
+CREATE TRIGGER ledger_gate_no_delete BEFORE DELETE ON ledger_gate
+BEGIN SELECT RAISE(ABORT, 'The ledger has one gate.'); END;
 --> statement-breakpoint
 CREATE TRIGGER stock_balance_gate_insert BEFORE INSERT ON stock_balance
 WHEN (SELECT open FROM ledger_gate WHERE id = 1) = 0
@@ -64,6 +85,10 @@ CREATE TRIGGER plug_starts_nowhere BEFORE INSERT ON plug
 WHEN NEW.account_id IS NOT NULL OR NEW.position IS NOT NULL
 BEGIN SELECT RAISE(ABORT, 'A plug gets its place by a movement.'); END;
 --> statement-breakpoint
+CREATE TRIGGER plug_code_never_reused BEFORE INSERT ON plug
+WHEN EXISTS (SELECT 1 FROM plug WHERE code = NEW.code OR (batch_id = NEW.batch_id AND number = NEW.number))
+BEGIN SELECT RAISE(ABORT, 'Plug codes are never reused.'); END;
+--> statement-breakpoint
 CREATE TRIGGER plug_gate_update BEFORE UPDATE ON plug
 WHEN (SELECT open FROM ledger_gate WHERE id = 1) = 0
   OR NEW.code <> OLD.code OR NEW.batch_id <> OLD.batch_id OR NEW.number <> OLD.number
@@ -71,6 +96,12 @@ BEGIN SELECT RAISE(ABORT, 'Plugs change place through movements only.'); END;
 --> statement-breakpoint
 CREATE TRIGGER plug_no_delete BEFORE DELETE ON plug
 BEGIN SELECT RAISE(ABORT, 'Plug codes are never reused, so plugs are never deleted.'); END;
+--> statement-breakpoint
+CREATE TRIGGER stock_account_no_replace BEFORE INSERT ON stock_account
+WHEN EXISTS (SELECT 1 FROM stock_account WHERE id = NEW.id
+  OR (rack_id IS NOT NULL AND rack_id = NEW.rack_id)
+  OR (rack_id IS NULL AND NEW.rack_id IS NULL AND kind = NEW.kind AND detail = NEW.detail))
+BEGIN SELECT RAISE(ABORT, 'Stock accounts are never edited.'); END;
 --> statement-breakpoint
 CREATE TRIGGER stock_account_no_update BEFORE UPDATE ON stock_account
 BEGIN SELECT RAISE(ABORT, 'Stock accounts are never edited.'); END;

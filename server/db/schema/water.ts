@@ -36,15 +36,19 @@ export const targetBands = sqliteTable(
   ],
 );
 
-export const tanks = sqliteTable('tank', {
-  id: id(),
-  systemId: text('system_id')
-    .notNull()
-    .references(() => systems.id),
-  code: text('code').notNull().unique(),
-  name: text('name').notNull(),
-  createdAt: instant('created_at').notNull(),
-});
+export const tanks = sqliteTable(
+  'tank',
+  {
+    id: id(),
+    systemId: text('system_id')
+      .notNull()
+      .references(() => systems.id),
+    code: text('code').notNull().unique(),
+    name: text('name').notNull(),
+    createdAt: instant('created_at').notNull(),
+  },
+  (table) => [index('tank_system').on(table.systemId)],
+);
 
 /** A movable tray of plugs; positions are row letter and column number, like C-11. */
 export const racks = sqliteTable(
@@ -96,6 +100,9 @@ export const readings = sqliteTable(
   },
   (table) => [
     unique('reading_once').on(table.systemId, table.parameter, table.takenAt),
+    index('reading_system_time').on(table.systemId, table.takenAt),
+    index('reading_parameter_time').on(table.parameter, table.takenAt),
+    index('reading_time').on(table.takenAt),
     index('reading_import_id').on(table.importId),
   ],
 );

@@ -1,0 +1,211 @@
+import { z } from 'zod';
+import { done, id, idParams, instant, nothing, noteText } from './common.ts';
+import type { Endpoint } from './endpoint.ts';
+import { Reservoir } from './reservoirs.ts';
+import { litres, parameterCode, System, TargetBand } from './systems.ts';
+
+/** Where a value stands to its target band. */
+export const bandState = z.enum(['below', 'in', 'above', 'none']);
+export type BandState = z.infer<typeof bandState>;
+
+export const LatestValue = z.object({
+  parameter: parameterCode,
+  value: z.number(),
+  takenAt: instant,
+  method: z.string(),
+  band: TargetBand.nullable(),
+  state: bandState,
+});
+export type LatestValue = z.infer<typeof LatestValue>;
+
+const perDay = z.number();
+const demandBasis = { from: instant, to: instant, readings: z.int(), windowDays: z.int() };
+
+/** What the corals of a system take and what it is given, meq/L a day; or why that can't be told yet. */
+export const Demand = z.discriminatedUnion('enough', [
+  z.object({
+    enough: z.literal(true),
+    ...demandBasis,
+    demand: perDay,
+    low: perDay,
+    high: perDay,
+    /** All that was added, the limewater part of it, and the other supplements. */
+    supply: perDay,
+    limewater: perDay,
+    others: perDay,
+  }),
+  z.object({
+    enough: z.literal(false),
+    ...demandBasis,
+    reason: z.enum(['too_few_readings', 'too_short']),
+  }),
+]);
+export type Demand = z.infer<typeof Demand>;
+
+/** The most that limewater can bring at today's evaporation, meq/L a day. */
+export const LimeCeiling = z.object({
+  evaporationLPerDay: z.number(),
+  strengthMeqL: z.number(),
+  now: perDay,
+  saturated: perDay,
+  withVinegar: perDay,
+  vinegarMlPerL: z.number(),
+});
+export type LimeCeiling = z.infer<typeof LimeCeiling>;
+
+export const SystemDemand = z.object({
+  systemId: id,
+  netVolumeL: z.number(),
+  demand: Demand,
+  /** Null where no use of limewater was logged lately. */
+  ceiling: LimeCeiling.nullable(),
+  history: z.array(z.object({ at: instant, demand: perDay, low: perDay, high: perDay })),
+  waterChanges: z.array(z.object({ at: instant, litres: z.number() })),
+  /** How it was made. */
+  inputs: z.object({
+    limewaterL: z.number(),
+    limewaterMeq: z.number(),
+    /** Part of the litres that is taken from the usual use, after the last level reading. */
+    assumedL: z.number(),
+    doses: z.int(),
+    waterChanges: z.int(),
+    testSdMeqL: z.number(),
+    /** Readings before it are left out: what was dosed then is not known. */
+    knownSince: instant.nullable(),
+  }),
+});
+export type SystemDemand = z.infer<typeof SystemDemand>;
+
+/** A system at a glance. */
+export const SystemGlance = z.object({
+  system: System.omit({ tanks: true, bands: true }),
+  latest: z.array(LatestValue),
+  demand: Demand,
+  online: Reservoir.nullable(),
+  standby: z.int(),
+  plugs: z.int(),
+});
+export type SystemGlance = z.infer<typeof SystemGlance>;
+
+export const LogWaterChange = z.strictObject({
+  systemId: id,
+  at: instant.optional(),
+  litres,
+  alkalinityMeqL: z.number('Enter the alkalinity.').min(0, 'Zero or more.').max(20, 'At most 20 meq/L.'),
+  saltG: z.number().min(0, 'Zero or more.').max(10_000_000).default(0),
+  saltItemId: id.optional(),
+});
+export type LogWaterChange = z.infer<typeof LogWaterChange>;
+export const LogDose = z.strictObject({
+  systemId: id,
+  itemId: id,
+  at: instant.optional(),
+  /** In the item's unit. */
+  amount: z.number('Enter the amount.').positive('Above zero.').max(10_000_000),
+  note: noteText.default(''),
+});
+export type LogDose = z.infer<typeof LogDose>;
+
+/** A water change or a dose of another supplement. */
+export const Addition = z.object({
+  id,
+  kind: z.enum(['water_change', 'dose']),
+  systemId: id,
+  at: instant,
+  by: z.string(),
+  name: z.string(),
+  amount: z.number(),
+  unit: z.string(),
+  /** New water's alkalinity, or what the dose added to the system, meq/L. */
+  alkalinityMeqL: z.number(),
+});
+export type Addition = z.infer<typeof Addition>;
+
+export const WaterItem = z.object({
+  id,
+  code: z.string(),
+  name: z.string(),
+  kind: z.enum(['lime', 'vinegar', 'salt', 'supplement']),
+  unit: z.string(),
+  strength: z.number().nullable(),
+  onHand: z.number(),
+});
+export type WaterItem = z.infer<typeof WaterItem>;
+
+export const waterEndpoints = {
+  overview: {
+    method: 'get',
+    path: '/api/water',
+    access: 'water.read',
+    summary: 'Every system at a glance',
+    query: nothing,
+    response: z.object({ items: z.array(SystemGlance) }),
+  },
+  glance: {
+    method: 'get',
+    path: '/api/systems/:id/glance',
+    access: 'water.read',
+    summary: 'One system at a glance',
+    params: idParams,
+    response: SystemGlance,
+  },
+  demand: {
+    method: 'get',
+    path: '/api/systems/:id/demand',
+    access: 'water.read',
+    summary: 'Alkalinity demand of a system, and how it was made',
+    params: idParams,
+    query: z.strictObject({ days: z.coerce.number().int().min(7).max(365).default(90) }),
+    response: SystemDemand,
+  },
+  items: {
+    method: 'get',
+    path: '/api/water-items',
+    access: 'water.read',
+    summary: 'Supplies that water work takes from, the usual one of each kind first',
+    query: nothing,
+    response: z.object({ items: z.array(WaterItem) }),
+  },
+  additions: {
+    method: 'get',
+    path: '/api/systems/:id/additions',
+    access: 'water.read',
+    summary: 'Latest water changes and doses',
+    params: idParams,
+    response: z.object({ items: z.array(Addition) }),
+  },
+  logWaterChange: {
+    method: 'post',
+    path: '/api/water-changes',
+    access: 'water.log',
+    summary: 'Log a water change',
+    body: LogWaterChange,
+    response: Addition,
+    creates: true,
+  },
+  undoWaterChange: {
+    method: 'delete',
+    path: '/api/water-changes/:id',
+    access: 'water.log',
+    summary: 'Take a water change back',
+    params: idParams,
+    response: done,
+  },
+  logDose: {
+    method: 'post',
+    path: '/api/doses',
+    access: 'water.log',
+    summary: 'Log a dose of another supplement',
+    body: LogDose,
+    response: Addition,
+    creates: true,
+  },
+  undoDose: {
+    method: 'delete',
+    path: '/api/doses/:id',
+    access: 'water.log',
+    summary: 'Take a dose back',
+    params: idParams,
+    response: done,
+  },
+} as const satisfies Record<string, Endpoint>;
