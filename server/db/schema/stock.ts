@@ -76,6 +76,8 @@ export const cuts = sqliteTable(
     by: text('by').notNull(),
     note: text('note').notNull().default(''),
     createdAt: instant('created_at').notNull(),
+    /** Logged by mistake and taken back; its plugs have left the stock. */
+    undoneAt: instant('undone_at'),
   },
   (table) => [index('cut_colony').on(table.colonyId, table.cutOn), check('cut_pieces', sql`${table.pieces} > 0`)],
 );
@@ -223,6 +225,8 @@ export const stockBalances = sqliteTable(
 export const ledgerGate = sqliteTable('ledger_gate', {
   id: integer('id').primaryKey(),
   open: integer('open', { mode: 'boolean' }).notNull(),
+  /** Newest movement that is in the balances. Only a newer one can open the gate. */
+  postedId: integer('posted_id').notNull().default(0),
 });
 
 /** Measured size of a plug, or of a sample of a batch. */
