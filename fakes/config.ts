@@ -16,7 +16,7 @@ const Environment = z.object({
   /** Folder that keeps payments over a restart. */
   FAKE_DATA_DIR: z.string().min(1).optional(),
 });
-export type Environment = z.infer<typeof Environment>;
+type Environment = z.infer<typeof Environment>;
 
 /** Reads the environment, or throws one error that names every wrong variable. */
 export function readEnvironment(env: Record<string, string | undefined>): Environment {

@@ -48,9 +48,11 @@ export async function listenSmtp(
       );
     },
   });
+  // Without a listener a client that drops its connection would stop the program. A failure to listen is told below.
+  server.on('error', (error) => {
+    if (server.server.listening) console.error(`Mail stand-in: ${error.message}`);
+  });
   await listening(server.server, () => server.listen(port, host), port);
-  // A client that drops its connection is nothing to stop for.
-  server.on('error', (error) => console.error(`Mail stand-in: ${error.message}`));
 
   return {
     port: portOf(server.server),

@@ -3,7 +3,7 @@ import type { Attempt, PaymentStore, StoredEvent } from './store.ts';
 
 const ANSWER_TIMEOUT_MS = 10_000;
 
-export interface DeliveryOptions {
+interface DeliveryOptions {
   url: string | null;
   secret: string;
   /** Pauses before the second, third, … try of an event, ms; afterwards it is given up. */

@@ -17,12 +17,12 @@ interface FormState {
 
 const FIELDS = [
   { name: 'number', label: 'Card number', hint: '', inputmode: 'numeric', place: 'whole' },
-  { name: 'expiry', label: 'Expiry', hint: 'month / year', inputmode: 'numeric', place: 'half' },
+  { name: 'expiry', label: 'Expiry', hint: 'MM / YY', inputmode: 'numeric', place: 'half' },
   { name: 'cvc', label: 'CVC', hint: '3 digits', inputmode: 'numeric', place: 'half' },
   { name: 'name', label: 'Name on card', hint: '', inputmode: 'text', place: 'whole' },
 ] as const;
 
-export function payPage({ session, lines }: StoredSession, state: FormState): Page {
+export function payPage({ session, lines, intentData }: StoredSession, state: FormState): Page {
   return {
     ...FRAME,
     title: state.refusal === null ? TITLE : `Not paid: ${TITLE}`,
@@ -30,7 +30,7 @@ export function payPage({ session, lines }: StoredSession, state: FormState): Pa
       <h1>${TITLE}</h1>
       <p class="lead">
         <strong class="figure">${moneyText(session.amount_total ?? 0, session.currency ?? '')}</strong> is
-        due${dueFor(session)}. Pay with one of the test cards.
+        due${intentData.description !== undefined && ` for ${intentData.description}`}. Pay with one of the test cards.
       </p>
       <div class="columns">
         <div class="stack">${summarySheet(session, lines)} ${cardsSheet(session)}</div>
@@ -87,11 +87,6 @@ export function successUrl(session: Session): string {
   return (session.success_url ?? '/').replaceAll('{CHECKOUT_SESSION_ID}', session.id);
 }
 
-function dueFor(session: Session): Markup | null {
-  const reference = session.client_reference_id;
-  return reference === null ? null : html` for <span class="code">${reference}</span>`;
-}
-
 function summarySheet(session: Session, lines: readonly LineItem[]): Markup {
   const currency = session.currency ?? '';
   const unitPrice = (line: LineItem) => moneyText(line.price.unit_amount ?? 0, currency);
@@ -127,18 +122,23 @@ function summarySheet(session: Session, lines: readonly LineItem[]): Markup {
 }
 
 function formSheet(session: Session, { form, errors, refusal }: FormState): Markup {
-  const firstWrong = FIELDS.find(({ name }) => errors[name] !== undefined)?.name;
+  // Focus leads the eye, and a screen reader, to what is to be done first.
+  const firstWrong = refusal === null ? FIELDS.find(({ name }) => errors[name] !== undefined)?.name : 'number';
   return html`
     <section class="sheet" aria-labelledby="card">
       <h2 id="card">Card</h2>
       <form method="post" action="/pay/${session.id}" class="fields" autocomplete="off" novalidate>
         ${
           refusal !== null &&
-          html`<p class="alert" role="alert"><strong>Not paid.</strong> ${refusal} Try another card.</p>`
+          html`<p class="alert" id="refusal" role="alert"><strong>Not paid.</strong> ${refusal} Try another card.</p>`
         }
         ${FIELDS.map((field) => {
           const error = errors[field.name];
-          const describedBy = error === undefined ? `${field.name}-hint` : `${field.name}-error`;
+          const describedBy = [
+            field.name === 'number' && refusal !== null && 'refusal',
+            field.hint !== '' && `${field.name}-hint`,
+            error !== undefined && `${field.name}-error`,
+          ].filter((id) => id !== false);
           return html`<div class="field ${field.place}">
             <label for="${field.name}">
               ${field.label}
@@ -151,7 +151,7 @@ function formSheet(session: Session, { form, errors, refusal }: FormState): Mark
               inputmode="${field.inputmode}"
               maxlength="${field.name === 'name' ? 200 : 23}"
               required
-              ${(error !== undefined || field.hint !== '') && html`aria-describedby="${describedBy}"`}
+              ${describedBy.length > 0 && html`aria-describedby="${describedBy.join(' ')}"`}
               ${error !== undefined && html`aria-invalid="true"`}
               ${field.name === firstWrong && html`autofocus`}
             />

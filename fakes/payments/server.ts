@@ -61,7 +61,6 @@ export async function startPayments(options: PaymentsOptions = {}): Promise<Runn
       clearInterval(expiryCheck);
       deliveries.close();
       await listener.close();
-      store.save();
     },
   };
 }

@@ -25,7 +25,7 @@ export interface StoredEvent {
   state: 'waiting' | 'delivered' | 'given up';
 }
 
-export interface StoredAnswer {
+interface StoredAnswer {
   fingerprint: string;
   status: number;
   body: object;

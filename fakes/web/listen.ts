@@ -22,6 +22,7 @@ export async function listenHttp(handler: RequestListener, host: string, port: n
     port: portOf(server),
     close: () =>
       new Promise((resolve, reject) => {
+        if (!server.listening) return resolve();
         server.close((error) => (error ? reject(error) : resolve()));
         server.closeAllConnections();
       }),
