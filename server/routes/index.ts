@@ -1,7 +1,19 @@
 import type { Api } from '../http/api.ts';
+import { labelRoutes } from './label-routes.ts';
+import { accountRoutes } from './account-routes.ts';
+import { auditRoutes } from './audit-routes.ts';
+import { farmRoutes } from './farm-routes.ts';
+import { peopleRoutes } from './people-routes.ts';
 import { sessionRoutes } from './session-routes.ts';
+import { supplyRoutes } from './supply-routes.ts';
 
 /** Every resource's routes, in one list. */
 export function registerRoutes(api: Api): void {
+  labelRoutes(api);
   sessionRoutes(api);
+  supplyRoutes(api);
+  accountRoutes(api);
+  peopleRoutes(api);
+  farmRoutes(api);
+  auditRoutes(api);
 }

@@ -3,7 +3,6 @@ import { itemProblems, ITEM_KINDS, ITEM_UNITS, SUPPLY_STATES, USE_CAUSES } from 
 import {
   calendarDay,
   done,
-  emailAddress,
   id,
   idParams,
   instant,
@@ -23,22 +22,19 @@ const days = z.int('Enter whole days.').min(0, 'Enter zero or more days.').max(3
 /** Nullable in answers, optional in what is sent. */
 const strength = z.number().max(1000).nullable();
 
-export const Supplier = z.object({ id, name: z.string(), email: z.string(), items: z.int(), version });
-export type Supplier = z.infer<typeof Supplier>;
-
 /** How fast an item goes, and what that was made from. Amounts in the item's unit. */
 export const SupplyUse = z.object({
   /** Null: not enough is known yet. */
   perDay: z.number().nullable(),
   sdPerDay: z.number(),
-  basis: z.enum(['reservoirs', 'consumption', 'none']),
+  basis: z.enum(['limewater', 'consumption', 'none']),
   windowDays: z.int(),
   /** What left the lots in the window, and in how many takes. */
   taken: z.number(),
   takes: z.int(),
-  reservoirs: z.array(
+  /** Limewater that each system takes and how much of this item is in a litre of it. */
+  systems: z.array(
     z.object({
-      code: z.string(),
       systemCode: z.string(),
       litresPerDay: z.number(),
       perLitre: z.number(),
@@ -148,17 +144,6 @@ export type CreateItem = z.infer<typeof CreateItem>;
 export const EditItem = itemFields.partial().extend({ retired: z.boolean().optional() });
 export type EditItem = z.infer<typeof EditItem>;
 
-export const CreateSupplier = z.strictObject({
-  name: shortText,
-  email: z.union([z.literal(''), emailAddress]).default(''),
-});
-export type CreateSupplier = z.infer<typeof CreateSupplier>;
-export const EditSupplier = z.strictObject({
-  name: shortText.optional(),
-  email: z.union([z.literal(''), emailAddress]).optional(),
-});
-export type EditSupplier = z.infer<typeof EditSupplier>;
-
 export const Receive = z.strictObject({
   itemId: id,
   code: z
@@ -234,32 +219,6 @@ export const supplyEndpoints = {
     params: idParams,
     body: EditItem,
     response: Item,
-    edits: true,
-  },
-  suppliers: {
-    method: 'get',
-    path: '/api/supplies/suppliers',
-    access: 'supplies.read',
-    summary: 'All suppliers',
-    response: z.object({ items: z.array(Supplier) }),
-  },
-  createSupplier: {
-    method: 'post',
-    path: '/api/supplies/suppliers',
-    access: 'supplies.work',
-    summary: 'Add a supplier',
-    body: CreateSupplier,
-    response: Supplier,
-    creates: true,
-  },
-  editSupplier: {
-    method: 'patch',
-    path: '/api/supplies/suppliers/:id',
-    access: 'supplies.work',
-    summary: 'Change a supplier',
-    params: idParams,
-    body: EditSupplier,
-    response: Supplier,
     edits: true,
   },
   receive: {

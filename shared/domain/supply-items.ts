@@ -1,3 +1,5 @@
+import { daysBetween, type Day } from './days.ts';
+
 /** What a supply is for; lime and vinegar are named apart because the water's demand foretells their use. */
 export const ITEM_KINDS = [
   'lime',
@@ -64,4 +66,18 @@ export function itemProblems(item: { kind: ItemKind; unit: ItemUnit; strength: n
 /** Whether a kind has a strength at all. */
 export function hasStrength(kind: ItemKind): boolean {
   return STRENGTHS[kind] !== undefined;
+}
+
+const SOON_DAYS = 7;
+
+/**
+ * The one word for how a supply stands.
+ *
+ * @param orderByDay last day to order; null where nothing is used
+ */
+export function supplyState(onHand: number, orderByDay: Day | null, today: Day): SupplyState {
+  if (onHand <= 0) return 'out';
+  if (orderByDay === null) return 'ok';
+  if (orderByDay <= today) return 'order_now';
+  return daysBetween(today, orderByDay) <= SOON_DAYS ? 'order_soon' : 'ok';
 }
