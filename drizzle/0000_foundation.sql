@@ -547,6 +547,7 @@ CREATE TABLE `invoice` (
 	`number` integer NOT NULL,
 	`order_id` text NOT NULL,
 	`issued_on` text NOT NULL,
+	`content` text NOT NULL,
 	`created_at` integer NOT NULL,
 	FOREIGN KEY (`order_id`) REFERENCES `order`(`id`) ON UPDATE no action ON DELETE no action
 );
@@ -573,11 +574,13 @@ CREATE TABLE `order_line` (
 	`line_id` text NOT NULL,
 	`grade` text NOT NULL,
 	`quantity` integer NOT NULL,
+	`missing` integer DEFAULT 0 NOT NULL,
 	`price_minor` integer NOT NULL,
 	FOREIGN KEY (`order_id`) REFERENCES `order`(`id`) ON UPDATE no action ON DELETE no action,
 	FOREIGN KEY (`listing_id`) REFERENCES `listing`(`id`) ON UPDATE no action ON DELETE no action,
 	FOREIGN KEY (`line_id`) REFERENCES `line`(`id`) ON UPDATE no action ON DELETE no action,
-	CONSTRAINT "order_line_quantity" CHECK("order_line"."quantity" > 0)
+	CONSTRAINT "order_line_quantity" CHECK("order_line"."quantity" > 0),
+	CONSTRAINT "order_line_missing" CHECK("order_line"."missing" BETWEEN 0 AND "order_line"."quantity")
 );
 --> statement-breakpoint
 CREATE INDEX `order_line_order` ON `order_line` (`order_id`);--> statement-breakpoint
@@ -590,6 +593,7 @@ CREATE TABLE `order` (
 	`subtotal_minor` integer NOT NULL,
 	`tax_minor` integer NOT NULL,
 	`total_minor` integer NOT NULL,
+	`tax_percent_hundredths` integer DEFAULT 0 NOT NULL,
 	`ship_on` text,
 	`note` text DEFAULT '' NOT NULL,
 	`placed_at` integer NOT NULL,
@@ -609,8 +613,8 @@ CREATE TABLE `order` (
 );
 --> statement-breakpoint
 CREATE UNIQUE INDEX `order_number_unique` ON `order` (`number`);--> statement-breakpoint
-CREATE INDEX `order_store` ON `order` (`store_id`,`placed_at`);--> statement-breakpoint
-CREATE INDEX `order_state` ON `order` (`state`,`placed_at`);--> statement-breakpoint
+CREATE INDEX `order_store` ON `order` (`store_id`,`number`);--> statement-breakpoint
+CREATE INDEX `order_state` ON `order` (`state`,`number`);--> statement-breakpoint
 CREATE TABLE `payment_event` (
 	`id` text PRIMARY KEY NOT NULL,
 	`type` text NOT NULL,
@@ -626,6 +630,7 @@ CREATE TABLE `payment` (
 	`amount_minor` integer NOT NULL,
 	`currency` text NOT NULL,
 	`state` text NOT NULL,
+	`refusal` text DEFAULT '' NOT NULL,
 	`created_at` integer NOT NULL,
 	`paid_at` integer,
 	FOREIGN KEY (`order_id`) REFERENCES `order`(`id`) ON UPDATE no action ON DELETE no action
@@ -633,6 +638,8 @@ CREATE TABLE `payment` (
 --> statement-breakpoint
 CREATE UNIQUE INDEX `payment_session_id_unique` ON `payment` (`session_id`);--> statement-breakpoint
 CREATE INDEX `payment_order` ON `payment` (`order_id`);--> statement-breakpoint
+CREATE INDEX `payment_intent` ON `payment` (`intent_id`);--> statement-breakpoint
+CREATE INDEX `payment_state` ON `payment` (`state`);--> statement-breakpoint
 CREATE TABLE `pick` (
 	`id` text PRIMARY KEY NOT NULL,
 	`order_line_id` text NOT NULL,
@@ -664,6 +671,7 @@ CREATE TABLE `refund` (
 --> statement-breakpoint
 CREATE UNIQUE INDEX `refund_external_id_unique` ON `refund` (`external_id`);--> statement-breakpoint
 CREATE INDEX `refund_payment` ON `refund` (`payment_id`);--> statement-breakpoint
+CREATE INDEX `refund_state` ON `refund` (`state`);--> statement-breakpoint
 CREATE TABLE `store` (
 	`id` text PRIMARY KEY NOT NULL,
 	`code` text NOT NULL,

@@ -1,5 +1,6 @@
 import { sql } from 'drizzle-orm';
 import { check, index, integer, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
+import type { InvoiceContent } from '../../../shared/contracts/invoices.ts';
 import { day, id, instant, version } from './columns.ts';
 import { batches, lines, plugs } from './stock.ts';
 
@@ -49,6 +50,8 @@ export const orders = sqliteTable(
     subtotalMinor: integer('subtotal_minor').notNull(),
     taxMinor: integer('tax_minor').notNull(),
     totalMinor: integer('total_minor').notNull(),
+    /** Tax rate of the day it was placed, in hundredths of a percent. */
+    taxPercent: integer('tax_percent_hundredths').notNull().default(0),
     shipOn: day('ship_on'),
     note: text('note').notNull().default(''),
     placedAt: instant('placed_at').notNull(),
@@ -66,8 +69,8 @@ export const orders = sqliteTable(
     version: version(),
   },
   (table) => [
-    index('order_store').on(table.storeId, table.placedAt),
-    index('order_state').on(table.state, table.placedAt),
+    index('order_store').on(table.storeId, table.number),
+    index('order_state').on(table.state, table.number),
     check('order_total', sql`${table.totalMinor} = ${table.subtotalMinor} + ${table.taxMinor}`),
   ],
 );
@@ -87,9 +90,15 @@ export const orderLines = sqliteTable(
       .references(() => lines.id),
     grade: text('grade').notNull(),
     quantity: integer('quantity').notNull(),
+    /** Pieces that could not be packed and are paid back. */
+    missing: integer('missing').notNull().default(0),
     priceMinor: integer('price_minor').notNull(),
   },
-  (table) => [index('order_line_order').on(table.orderId), check('order_line_quantity', sql`${table.quantity} > 0`)],
+  (table) => [
+    index('order_line_order').on(table.orderId),
+    check('order_line_quantity', sql`${table.quantity} > 0`),
+    check('order_line_missing', sql`${table.missing} BETWEEN 0 AND ${table.quantity}`),
+  ],
 );
 
 /**
@@ -152,10 +161,16 @@ export const payments = sqliteTable(
     amountMinor: integer('amount_minor').notNull(),
     currency: text('currency').notNull(),
     state: text('state', { enum: ['open', 'paid', 'expired', 'failed'] }).notNull(),
+    /** Why the last try to pay was refused, in the payment service's words. */
+    refusal: text('refusal').notNull().default(''),
     createdAt: instant('created_at').notNull(),
     paidAt: instant('paid_at'),
   },
-  (table) => [index('payment_order').on(table.orderId)],
+  (table) => [
+    index('payment_order').on(table.orderId),
+    index('payment_intent').on(table.intentId),
+    index('payment_state').on(table.state),
+  ],
 );
 
 export const refunds = sqliteTable(
@@ -172,7 +187,11 @@ export const refunds = sqliteTable(
     createdAt: instant('created_at').notNull(),
     by: text('by').notNull(),
   },
-  (table) => [index('refund_payment').on(table.paymentId), check('refund_amount', sql`${table.amountMinor} > 0`)],
+  (table) => [
+    index('refund_payment').on(table.paymentId),
+    index('refund_state').on(table.state),
+    check('refund_amount', sql`${table.amountMinor} > 0`),
+  ],
 );
 
 /** Events of the payment service that were handled, so that a repeat changes nothing. */
@@ -191,5 +210,7 @@ export const invoices = sqliteTable('invoice', {
     .unique()
     .references(() => orders.id),
   issuedOn: day('issued_on').notNull(),
+  /** What it says, as it was on that day; later edits of farm or store don't reach it. */
+  content: text('content', { mode: 'json' }).$type<InvoiceContent>().notNull(),
   createdAt: instant('created_at').notNull(),
 });
