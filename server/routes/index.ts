@@ -1,4 +1,9 @@
 import type { Api } from '../http/api.ts';
+import { readingImportRoutes } from './reading-import-routes.ts';
+import { readingRoutes } from './reading-routes.ts';
+import { reservoirRoutes } from './reservoir-routes.ts';
+import { systemRoutes } from './system-routes.ts';
+import { waterRoutes } from './water-routes.ts';
 import { labelRoutes } from './label-routes.ts';
 import { accountRoutes } from './account-routes.ts';
 import { auditRoutes } from './audit-routes.ts';
@@ -16,4 +21,9 @@ export function registerRoutes(api: Api): void {
   peopleRoutes(api);
   farmRoutes(api);
   auditRoutes(api);
+  waterRoutes(api);
+  systemRoutes(api);
+  reservoirRoutes(api);
+  readingRoutes(api);
+  readingImportRoutes(api);
 }

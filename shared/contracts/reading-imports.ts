@@ -27,12 +27,15 @@ export const ImportMapping = z.strictObject({
 export type ImportMapping = z.infer<typeof ImportMapping>;
 
 /** Multipart forms carry text: the mapping travels as JSON. */
-const mappingField = z.string().max(20_000).transform((text, context) => {
-  const parsed = ImportMapping.safeParse(jsonOf(text));
-  if (parsed.success) return parsed.data;
-  context.addIssue({ code: 'custom', message: 'Choose again what each column means.' });
-  return z.NEVER;
-});
+const mappingField = z
+  .string()
+  .max(20_000)
+  .transform((text, context) => {
+    const parsed = ImportMapping.safeParse(jsonOf(text));
+    if (parsed.success) return parsed.data;
+    context.addIssue({ code: 'custom', message: 'Choose again what each column means.' });
+    return z.NEVER;
+  });
 
 export const PreviewImport = z.strictObject({ mapping: mappingField.optional(), systemId: id.optional() });
 export const CommitImport = z.strictObject({ mapping: mappingField });
@@ -56,7 +59,13 @@ export const ImportPreview = z.object({
   problems: z.array(ImportProblem),
   first: z
     .array(
-      z.object({ line: z.int(), systemCode: z.string(), takenAt: instant, parameter: parameterCode, value: z.number() }),
+      z.object({
+        line: z.int(),
+        systemCode: z.string(),
+        takenAt: instant,
+        parameter: parameterCode,
+        value: z.number(),
+      }),
     )
     .max(20),
 });

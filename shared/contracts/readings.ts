@@ -125,7 +125,10 @@ export const readingEndpoints = {
     params: idParams,
     query: z.strictObject({
       parameter: parameterCode,
-      days: z.coerce.number().pipe(z.union(SERIES_DAYS.map((days) => z.literal(days)))).default(90),
+      days: z.coerce
+        .number()
+        .pipe(z.union(SERIES_DAYS.map((days) => z.literal(days))))
+        .default(90),
     }),
     response: ReadingSeries,
   },

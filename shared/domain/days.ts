@@ -48,11 +48,21 @@ export function dayOf(instantMs: number, timeZone: string): Day {
  * @throws {DomainError} `input.invalid` when the day or the zone is not real
  */
 export function startOfDay(day: Day, timeZone: string): number {
-  const utcMidnight = utcOf(day);
+  return instantAt(day, 0, timeZone);
+}
+
+/**
+ * The instant at which the clocks of a zone show a time; as {@link startOfDay} where they skip it or show it twice.
+ *
+ * @param minuteOfDay minutes after midnight as the clock shows them, 0 to 1439; parts of minutes are seconds
+ * @throws {DomainError} `input.invalid` when the day or the zone is not real
+ */
+export function instantAt(day: Day, minuteOfDay: number, timeZone: string): number {
+  const wall = utcOf(day) + Math.round(minuteOfDay * 60) * 1000;
   const candidates = [-MS_PER_DAY, MS_PER_DAY]
-    .map((shift) => utcMidnight - offsetAt(utcMidnight + shift, timeZone))
-    .filter((instant) => wallClockAsUtc(instant, timeZone) === utcMidnight);
-  return candidates.length > 0 ? Math.min(...candidates) : firstInstantFrom(utcMidnight, timeZone);
+    .map((shift) => wall - offsetAt(wall + shift, timeZone))
+    .filter((instant) => wallClockAsUtc(instant, timeZone) === wall);
+  return candidates.length > 0 ? Math.min(...candidates) : firstInstantFrom(wall, timeZone);
 }
 
 /** The day `count` days later (earlier when negative). */
@@ -145,13 +155,13 @@ function newClockFormat(timeZone: string): Intl.DateTimeFormat {
   }
 }
 
-/** Bisection for the jump over a missing midnight. */
-function firstInstantFrom(utcMidnight: number, timeZone: string): number {
-  let before = utcMidnight - WIDEST_OFFSET_MS;
-  let after = utcMidnight + WIDEST_OFFSET_MS;
+/** Bisection for the jump over a time that the clocks skip. */
+function firstInstantFrom(wall: number, timeZone: string): number {
+  let before = wall - WIDEST_OFFSET_MS;
+  let after = wall + WIDEST_OFFSET_MS;
   while (after - before > 1) {
     const middle = Math.floor((before + after) / 2);
-    if (wallClockAsUtc(middle, timeZone) < utcMidnight) before = middle;
+    if (wallClockAsUtc(middle, timeZone) < wall) before = middle;
     else after = middle;
   }
   return after;

@@ -17,6 +17,9 @@ const VINEGAR_YIELD = 0.87;
 /** Household vinegar: grams of acetic acid in 100 mL. */
 export const USUAL_ACID_PERCENT = 5;
 
+/** Part of a lime powder that is calcium hydroxide where its label doesn't tell (grades run 0.88–0.97; common practice). */
+export const USUAL_LIME_PURITY = 0.95;
+
 export interface LimewaterMix {
   /** Powder weighed in, g. */
   limeG: number;

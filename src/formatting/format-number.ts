@@ -45,13 +45,3 @@ export function formatFigures(value: number, figures = 3): string {
   const decimals = figures - 1 - Math.floor(Math.log10(Math.abs(value)));
   return formatNumber(value, { decimals: clampDecimals(decimals) });
 }
-
-/** A number as typed by a person: decimal comma or point, spaces between thousands. Null when it is none. */
-export function numberFromText(text: string): number | null {
-  const plain = text
-    .trim()
-    .replace(/[\s\u2009\u202f']/g, '')
-    .replace(MINUS, '-');
-  const dotted = plain.includes('.') ? plain.replace(/,(?=\d{3}(\D|$))/g, '') : plain.replace(',', '.');
-  return /^[+-]?(\d+\.?\d*|\.\d+)$/.test(dotted) ? Number(dotted) : null;
-}

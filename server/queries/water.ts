@@ -1,0 +1,59 @@
+import { asc, eq, sql } from 'drizzle-orm';
+import type { BandState, LatestValue, SystemGlance } from '../../shared/contracts/water.ts';
+import type { TargetBand } from '../../shared/contracts/systems.ts';
+import type { Db } from '../db/client.ts';
+import { racks, stockAccounts, stockBalances, systems, tanks } from '../db/schema/index.ts';
+import { currentDemand } from './demand.ts';
+import { latestReadings } from './readings.ts';
+import { listReservoirs } from './reservoirs.ts';
+import { bandsOf, systemRow, type SystemRow } from './systems.ts';
+
+/** Every system at a glance, in the order of their codes. */
+export function waterOverview(db: Db, now: number): SystemGlance[] {
+  const rows = db.select().from(systems).orderBy(asc(systems.code)).all();
+  return rows.map((row) => glanceOf(db, row, now));
+}
+
+export function systemGlance(db: Db, systemId: string, now: number): SystemGlance {
+  return glanceOf(db, systemRow(db, systemId), now);
+}
+
+function glanceOf(db: Db, row: SystemRow, now: number): SystemGlance {
+  const { retiredAt: _, ...system } = row;
+  const held = listReservoirs(db, now, row.id);
+  return {
+    system,
+    latest: latestValues(db, row.id),
+    demand: currentDemand(db, row, now),
+    online: held.find(({ state }) => state === 'online') ?? null,
+    standby: held.filter(({ state }) => state === 'standby').length,
+    plugs: piecesIn(db, row.id),
+  };
+}
+
+function latestValues(db: Db, systemId: string): LatestValue[] {
+  const bands = bandsOf(db, systemId);
+  return latestReadings(db, systemId).map(({ parameter, value, takenAt, method }) => {
+    const band = bands.find((each) => each.parameter === parameter) ?? null;
+    return { parameter, value, takenAt, method, band, state: bandStateOf(value, band) };
+  });
+}
+
+function bandStateOf(value: number, band: TargetBand | null): BandState {
+  if (!band) return 'none';
+  if (value < band.low) return 'below';
+  return value > band.high ? 'above' : 'in';
+}
+
+/** Living pieces on the racks of a system's tanks. */
+function piecesIn(db: Db, systemId: string): number {
+  const row = db
+    .select({ pieces: sql<number>`coalesce(sum(${stockBalances.pieces}), 0)` })
+    .from(tanks)
+    .innerJoin(racks, eq(racks.tankId, tanks.id))
+    .innerJoin(stockAccounts, eq(stockAccounts.rackId, racks.id))
+    .innerJoin(stockBalances, eq(stockBalances.accountId, stockAccounts.id))
+    .where(eq(tanks.systemId, systemId))
+    .get();
+  return row?.pieces ?? 0;
+}

@@ -1,0 +1,32 @@
+import { DONE } from '../../shared/contracts/common.ts';
+import { type Reading, readingEndpoints } from '../../shared/contracts/readings.ts';
+import { UNITS } from '../../shared/domain/units.ts';
+import type { Api } from '../http/api.ts';
+import { type CsvColumns, csvFile } from '../http/csv-file.ts';
+import { readingSeries } from '../queries/reading-series.ts';
+import { allReadings, listReadings } from '../queries/readings.ts';
+import { editReading, logReadings, removeReading } from '../services/reading-service.ts';
+
+export function readingRoutes(api: Api): void {
+  const { clock } = api.deps;
+  api.read(readingEndpoints.list, (db, { query }) => listReadings(db, query));
+  api.read(readingEndpoints.export, (db, { query }) => csvFile('readings.csv', COLUMNS, allReadings(db, query)));
+  api.read(readingEndpoints.series, (db, { params, query }) => readingSeries(db, params.id, query, clock.now()));
+  api.write(readingEndpoints.log, (write, { body }) => ({ items: logReadings(write, body) }));
+  api.write(readingEndpoints.edit, (write, { params, body, ifMatch }) => editReading(write, params.id, ifMatch, body));
+  api.write(readingEndpoints.remove, (write, { params }) => {
+    removeReading(write, params.id);
+    return DONE;
+  });
+}
+
+const COLUMNS: CsvColumns<Reading> = {
+  'Taken (UTC)': ({ takenAt }) => new Date(takenAt).toISOString(),
+  System: ({ systemCode }) => systemCode,
+  Parameter: ({ parameter }) => parameter,
+  Value: ({ value }) => value,
+  Unit: ({ parameter }) => Object.keys(UNITS[parameter])[0] ?? '',
+  Method: ({ method }) => method,
+  By: ({ by }) => by,
+  Note: ({ note }) => note,
+};

@@ -1,0 +1,59 @@
+import { eq } from 'drizzle-orm';
+import { standingAfter } from '../../shared/domain/reservoir-state.ts';
+import { DomainError } from '../../shared/errors.ts';
+import { reservoirEvents, reservoirs } from '../db/schema/index.ts';
+import type { Write } from '../db/write.ts';
+import { eventsInOrder, lastEvent, type ReservoirEventRow, type ReservoirRow } from '../queries/reservoirs.ts';
+
+type NewEvent = Omit<typeof reservoirEvents.$inferInsert, 'id' | 'reservoirId' | 'by' | 'levelBeforeL'> & {
+  id?: string;
+  levelBeforeL?: number;
+};
+
+/** Writes one event of a reservoir and brings its row in step. */
+export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent): ReservoirEventRow {
+  assertInOrder(write, reservoir, event.at);
+  const row = write.tx
+    .insert(reservoirEvents)
+    .values({
+      levelBeforeL: reservoir.levelL,
+      ...event,
+      ...{ id: event.id ?? write.newId(), reservoirId: reservoir.id, by: write.actor.name },
+    })
+    .returning()
+    .get();
+  bringInStep(write, reservoir);
+  write.audit({ action: `reservoir.${row.kind}`, entity: 'reservoir', entityId: reservoir.id, after: row });
+  return row;
+}
+
+/** Takes one event away and brings the reservoir back to what held before it. */
+export function removeEvent(write: Write, reservoir: ReservoirRow, event: ReservoirEventRow): void {
+  write.tx.delete(reservoirEvents).where(eq(reservoirEvents.id, event.id)).run();
+  bringInStep(write, reservoir);
+  write.audit({ action: 'reservoir.undo', entity: 'reservoir', entityId: reservoir.id, before: event });
+}
+
+/** @throws {DomainError} `input.invalid` at the field for more than the reservoir holds */
+export function assertFits(reservoir: ReservoirRow, levelL: number, field: string): void {
+  if (levelL <= reservoir.volumeL) return;
+  const message = `${reservoir.code} holds ${reservoir.volumeL} L. Enter less.`;
+  throw new DomainError('input.invalid', message, { fields: [{ path: field, message }] });
+}
+
+function bringInStep(write: Write, reservoir: ReservoirRow): void {
+  const standing = standingAfter(eventsInOrder(write.tx, reservoir.id), reservoir.volumeL);
+  write.tx
+    .update(reservoirs)
+    .set({ ...standing, version: reservoir.version + 1 })
+    .where(eq(reservoirs.id, reservoir.id))
+    .run();
+}
+
+/** What was drawn is told from one event to the next, so an event can't be slipped in before others. */
+function assertInOrder(write: Write, reservoir: ReservoirRow, at: number): void {
+  const last = lastEvent(write.tx, reservoir.id);
+  if (!last || last.at <= at) return;
+  const message = `Something later is logged for ${reservoir.code} already. Take that back first, or choose a later time.`;
+  throw new DomainError('rule.refused', message, { fields: [{ path: 'at', message }] });
+}
