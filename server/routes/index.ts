@@ -10,13 +10,17 @@ import { auditRoutes } from './audit-routes.ts';
 import { farmRoutes } from './farm-routes.ts';
 import { peopleRoutes } from './people-routes.ts';
 import { sessionRoutes } from './session-routes.ts';
+import { stockRoutes } from './stock-routes.ts';
+import { costRoutes } from './cost-routes.ts';
 import { supplyRoutes } from './supply-routes.ts';
 
 /** Every resource's routes, in one list. */
 export function registerRoutes(api: Api): void {
   labelRoutes(api);
   sessionRoutes(api);
+  stockRoutes(api);
   supplyRoutes(api);
+  costRoutes(api);
   accountRoutes(api);
   peopleRoutes(api);
   farmRoutes(api);
