@@ -1,10 +1,11 @@
 import express, { type Express } from 'express';
-import { pinoHttp } from 'pino-http';
 import { Api } from './http/api.ts';
 import { serveClient } from './http/client-pages.ts';
 import { errorHandler, unknownRoute } from './http/error-handler.ts';
 import { loadCaller, refuseForgedWrites } from './http/guards.ts';
 import { openApiDocument } from './http/openapi.ts';
+import { limitGuessing } from './http/rate-limits.ts';
+import { requestLog } from './http/request-log.ts';
 import { nonce, securityHeaders } from './http/security-headers.ts';
 import { sessionMiddleware } from './http/session.ts';
 import { registerRoutes } from './routes/index.ts';
@@ -18,24 +19,13 @@ export function createApp(deps: Deps, sessionSecret: string): { app: Express; ap
   app.set('trust proxy', deps.config.trustProxy);
   app.set('etag', false);
 
-  app.use(
-    pinoHttp({
-      logger: deps.log,
-      genReqId: () => deps.newId(),
-      redact: [
-        'req.headers.cookie',
-        'req.headers.authorization',
-        'req.headers["x-csrf-token"]',
-        'res.headers["set-cookie"]',
-      ],
-      autoLogging: { ignore: (request) => request.url?.startsWith('/assets/') ?? false },
-    }),
-  );
+  app.use(requestLog(deps));
   app.use(nonce, securityHeaders(deps.config.publicUrl.startsWith('https:')));
 
   // Webhooks are signed over their raw bytes and have no session.
   app.use('/api/webhooks', express.raw({ type: '*/*', limit: '1mb' }));
   app.use(express.json({ limit: '1mb' }));
+  app.use(['/api/session', '/api/setup', '/api/password-resets', '/api/invitations', '/api/account'], limitGuessing());
   app.use('/api', sessionMiddleware(deps, sessionSecret), loadCaller(deps));
   app.use(/^\/api\/(?!webhooks\/)/, refuseForgedWrites());
 

@@ -41,6 +41,8 @@ function sendProblem(response: Response, error: DomainError, requestId: string):
     fields: [...error.fields],
     details: { ...error.details },
   };
+  const { retryAfterSeconds } = error.details;
+  if (typeof retryAfterSeconds === 'number') response.setHeader('Retry-After', String(retryAfterSeconds));
   response.status(status).type('application/problem+json').send(JSON.stringify(body));
 }
 

@@ -26,10 +26,15 @@ async function attempt(deps: Deps, row: typeof outboxMails.$inferSelect) {
   const attempts = row.attempts + 1;
   try {
     await deps.mail.send({ to: row.toAddress, ...(await renderMail(deps, row)) });
-    return { attempts, sentAt: deps.clock.now(), lastError: null };
+    return { attempts, sentAt: deps.clock.now(), lastError: null, data: withoutToken(row.data) };
   } catch (error) {
     const message = error instanceof Error ? error.message : 'unknown';
     deps.log.warn({ mail: row.id, attempts }, 'mail not sent yet');
     return { attempts, lastError: message, nextAttemptAt: deps.clock.now() + FIRST_RETRY * 2 ** row.attempts };
   }
+}
+
+/** Links to sign in by are secrets: once their mail is out, only their hash is kept. */
+function withoutToken({ token: _token, ...rest }: Record<string, unknown>): Record<string, unknown> {
+  return rest;
 }

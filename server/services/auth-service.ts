@@ -1,6 +1,7 @@
 import { and, eq, isNull } from 'drizzle-orm';
 import { DomainError } from '../../shared/errors.ts';
-import { inWrite, SYSTEM } from '../db/write.ts';
+import type { Db } from '../db/client.ts';
+import { type Actor, inWrite, SYSTEM } from '../db/write.ts';
 import { users } from '../db/schema/index.ts';
 import type { Deps } from '../deps.ts';
 import { isPassword } from './passwords.ts';
@@ -15,7 +16,7 @@ export type UserRow = typeof users.$inferSelect;
  */
 export async function signIn(deps: Deps, attempt: SignInTry & { password: string }): Promise<UserRow> {
   inWrite(deps, SYSTEM, (write) => countTry(write, attempt));
-  const user = findActiveUser(deps, attempt.email);
+  const user = findActiveUser(deps.db, attempt.email);
   if (!(await isPassword(user?.passwordHash ?? null, attempt.password)) || !user) {
     throw new DomainError(
       'sign_in.refused',
@@ -31,7 +32,7 @@ export async function signIn(deps: Deps, attempt: SignInTry & { password: string
 
 /** @throws {DomainError} `record.not_found` unless the farm is a demo and this one of its people */
 export function signInAsDemo(deps: Deps, email: string): UserRow {
-  const user = deps.config.demo ? findActiveUser(deps, email) : null;
+  const user = deps.config.demo ? findActiveUser(deps.db, email) : null;
   if (!user?.demo) throw new DomainError('record.not_found', 'There is no such demo person. Sign in with a password.');
   inWrite(deps, actorOf(user), (write) => {
     write.audit({ action: 'user.signed_in', entity: 'user', entityId: user.id });
@@ -39,11 +40,12 @@ export function signInAsDemo(deps: Deps, email: string): UserRow {
   return user;
 }
 
-export function actorOf(user: UserRow) {
+export function actorOf(user: UserRow): Actor {
   return { userId: user.id, name: user.name, role: user.role, storeId: user.storeId };
 }
 
-function findActiveUser({ db }: Deps, email: string): UserRow | null {
+/** The person with this e-mail, unless disabled. */
+export function findActiveUser(db: Db, email: string): UserRow | null {
   return (
     db
       .select()

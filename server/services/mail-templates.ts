@@ -1,19 +1,23 @@
-import type { outboxMails } from '../db/schema/index.ts';
+import { outboxMails } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
-import { outboxMails as outbox } from '../db/schema/index.ts';
 import type { Deps } from '../deps.ts';
 import type { Mail } from '../outside/mail-transport.ts';
+import { invitationMail } from './mails/invitation-mail.ts';
+import { passwordResetMail } from './mails/password-reset-mail.ts';
 
 export type MailBody = Omit<Mail, 'to'>;
 type Template = (deps: Deps, data: Record<string, unknown>) => MailBody | Promise<MailBody>;
 
 /** Every mail the product sends, by template name. Each area's mails live in `server/services/mails/`. */
-const TEMPLATES: Record<string, Template> = {};
+const TEMPLATES: Record<string, Template> = {
+  invitation: invitationMail,
+  'password-reset': passwordResetMail,
+};
 
 /** Queues a mail in the transaction that causes it. */
 export function queueMail(write: Write, template: string, to: string, data: Record<string, unknown>): void {
   write.tx
-    .insert(outbox)
+    .insert(outboxMails)
     .values({ id: write.newId(), template, toAddress: to, data, createdAt: write.now, nextAttemptAt: write.now })
     .run();
 }

@@ -38,6 +38,7 @@ export const SignIn = z.strictObject({
   email: emailAddress,
   password: z.string().min(1, 'Enter your password.').max(200),
 });
+export type SignIn = z.infer<typeof SignIn>;
 export const SetUpFarm = z.strictObject({
   farmName: shortText,
   timeZone: z.string().min(1, 'Choose a time zone.').max(60),
@@ -46,17 +47,22 @@ export const SetUpFarm = z.strictObject({
   email: emailAddress,
   password,
 });
+export type SetUpFarm = z.infer<typeof SetUpFarm>;
 export const RequestReset = z.strictObject({ email: emailAddress });
 const token = z.string().min(20, 'This link is not complete.').max(200);
 export const ResetPassword = z.strictObject({ token, password });
+export type ResetPassword = z.infer<typeof ResetPassword>;
 export const AcceptInvitation = z.strictObject({ token, name: shortText, password });
+export type AcceptInvitation = z.infer<typeof AcceptInvitation>;
 export const InvitationInfo = z.object({
   email: z.string(),
   role: z.enum(ROLES),
   farmName: z.string(),
   storeName: z.string().nullable(),
 });
+export type InvitationInfo = z.infer<typeof InvitationInfo>;
 export const ChangePassword = z.strictObject({ current: z.string().min(1, 'Enter your password.').max(200), password });
+export type ChangePassword = z.infer<typeof ChangePassword>;
 export const DemoSignIn = z.strictObject({ email: emailAddress });
 
 export const sessionEndpoints = {
