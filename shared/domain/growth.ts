@@ -81,7 +81,7 @@ export function saleableDay(basis: SizeBasis, minMm: number, healDays: number): 
   if (missing > 0 && !(basis.mmPerWeek > 0)) return null;
   const days = (missing / basis.mmPerWeek) * 7;
   if (missing > 0) return days > LONGEST_DAYS ? null : addDays(lastKnown, Math.ceil(trimmed(days)));
-  return firstDayBetween(basis, minMm, healed, lastKnown);
+  return dayOnTheWay(basis, minMm);
 }
 
 /** Whether the cut has skinned over by a day. */
@@ -89,11 +89,11 @@ export function isHealed(cutDay: Day, healDays: number, day: Day): boolean {
   return daysBetween(cutDay, day) >= healDays;
 }
 
-/** The size was reached on the way to the measurement. */
-function firstDayBetween(basis: SizeBasis, minMm: number, from: Day, to: Day): Day {
-  let day = from;
-  while (day < to && sizeEstimate(basis, day) < minMm) day = addDays(day, 1);
-  return day;
+/** The day on the straight line from the cut to the measurement; only for a size that lies between the two. */
+function dayOnTheWay({ startMm, cutDay, measured }: SizeBasis, minMm: number): Day {
+  if (!measured) return cutDay;
+  const part = (minMm - startMm) / (measured.mm - startMm);
+  return addDays(cutDay, Math.ceil(trimmed(part * daysBetween(cutDay, measured.day))));
 }
 
 /** Takes away the last bits of rounding, so that exactly 21 days stay 21. */

@@ -82,7 +82,7 @@ describe('glyphs of near codes', () => {
         fc.pre(near !== code);
         expect(differingFeatures(glyphOf(code), glyphOf(near))).toBeGreaterThanOrEqual(2);
       }),
-      { numRuns: 3000 },
+      { numRuns: 500 },
     );
   });
 
@@ -93,7 +93,7 @@ describe('glyphs of near codes', () => {
         fc.pre(near !== code);
         expect(differingFeatures(glyphOf(code), glyphOf(near))).toBeGreaterThanOrEqual(2);
       }),
-      { numRuns: 3000 },
+      { numRuns: 500 },
     );
   });
 
@@ -105,7 +105,7 @@ describe('glyphs of near codes', () => {
         const [one, other] = [glyphOf(code + a), glyphOf(code + b)];
         expect(differingFeatures(one, other) >= 2 || hueDistance(one, other) >= 25).toBe(true);
       }),
-      { numRuns: 3000 },
+      { numRuns: 500 },
     );
   });
 

@@ -6,7 +6,7 @@ import { domainErrorOf } from '../../support/domain-error.ts';
 
 const sum = (parts: readonly number[]) => parts.reduce((all, part) => all + BigInt(part), 0n);
 const weights = fc
-  .array(fc.oneof(fc.integer({ min: 0, max: 1000 }), fc.double({ min: 0, max: 1e6, noNaN: true })), {
+  .array(fc.oneof(fc.integer({ min: 0, max: 1000 }), fc.double({ min: 1e-6, max: 1e6, noNaN: true })), {
     minLength: 1,
     maxLength: 30,
   })
