@@ -44,12 +44,15 @@ END;
 CREATE TRIGGER stock_movement_post AFTER INSERT ON stock_movement
 BEGIN
   UPDATE ledger_gate SET open = 1 WHERE id = 1;
+  -- Rows start at zero: an upsert would have its first value checked even where the row exists.
   INSERT INTO stock_balance (batch_id, account_id, pieces, is_source)
-    SELECT NEW.batch_id, id, -NEW.pieces, is_source FROM stock_account WHERE id = NEW.from_account_id
-    ON CONFLICT (batch_id, account_id) DO UPDATE SET pieces = pieces + excluded.pieces;
-  INSERT INTO stock_balance (batch_id, account_id, pieces, is_source)
-    SELECT NEW.batch_id, id, NEW.pieces, is_source FROM stock_account WHERE id = NEW.to_account_id
-    ON CONFLICT (batch_id, account_id) DO UPDATE SET pieces = pieces + excluded.pieces;
+    SELECT NEW.batch_id, id, 0, is_source FROM stock_account
+    WHERE id IN (NEW.from_account_id, NEW.to_account_id)
+    ON CONFLICT (batch_id, account_id) DO NOTHING;
+  UPDATE stock_balance SET pieces = pieces - NEW.pieces
+    WHERE batch_id = NEW.batch_id AND account_id = NEW.from_account_id;
+  UPDATE stock_balance SET pieces = pieces + NEW.pieces
+    WHERE batch_id = NEW.batch_id AND account_id = NEW.to_account_id;
   UPDATE plug SET account_id = NEW.to_account_id, position = NEW.to_position WHERE code = NEW.plug_code;
   UPDATE ledger_gate SET open = 0, posted_id = NEW.id WHERE id = 1;
 END;
