@@ -41,7 +41,7 @@ export default defineConfig({
           server: { deps: { inline: ['vuetify'] } },
         },
       },
-      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'] } },
+      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 30_000 } },
       {
         extends: true,
         test: {

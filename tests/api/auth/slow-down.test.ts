@@ -60,7 +60,8 @@ describe('slowing down who guesses', () => {
 
   it('when one address tries many accounts, it must wait whatever account comes next', async () => {
     const farm = await startFarm();
-    await Promise.all(Array.from({ length: 20 }, (_, person) => failTimes(farm, 1, `person-${person}@example.com`)));
+    for (const name of ['owner', 'sales', 'viewer', 'buyer-0', 'buyer-1'])
+      await failTimes(farm, 4, `${name}@example.com`);
 
     expect((await tryToSignIn(farm, 'grower@example.com', TEST_PASSWORD)).status).toBe(429);
   });
@@ -87,7 +88,10 @@ describe('slowing down who guesses', () => {
   it('when one address sends hundreds of requests to guessable routes, it is cut off', async () => {
     const farm = await startFarm();
     const ask = () => farm.anyone().get('/api/invitations/a-link-that-nobody-was-sent');
-    for (let time = 0; time < 300; time += 1) expect((await ask()).status).toBe(410);
+    for (let round = 0; round < 10; round += 1) {
+      const replies = await Promise.all(Array.from({ length: 30 }, ask));
+      expect(new Set(replies.map(({ status }) => status))).toEqual(new Set([410]));
+    }
 
     const reply = await ask();
 
