@@ -130,7 +130,7 @@ it('when the list is read page by page, every reading comes once, newest first',
   const viewer = await farm.as('viewer');
 
   const seen: { id: string; takenAt: number }[] = [];
-  for (let cursor: string | null = ''; cursor !== null; ) {
+  for (let cursor: string | null = ''; cursor !== null;) {
     const reply = await viewer.get(`/api/readings?limit=5${cursor ? `&cursor=${cursor}` : ''}`);
     expect(reply.body.total).toBe(12);
     seen.push(...reply.body.items);
