@@ -2,7 +2,11 @@ import { lt } from 'drizzle-orm';
 import { idempotencyKeys } from '../db/schema/index.ts';
 import type { Deps } from '../deps.ts';
 import { deleteExpiredSessions } from '../http/session.ts';
+import { closeCheckouts } from './close-checkouts.ts';
+import { expireHolds } from './expire-holds.ts';
 import { sendDueMails } from './send-due-mails.ts';
+import { sendRefunds } from './send-refunds.ts';
+import { shareCosts } from './share-costs.ts';
 
 const SECOND = 1000;
 const DAY = 86_400_000;
@@ -15,8 +19,12 @@ interface Job {
 
 const JOBS: readonly Job[] = [
   { name: 'send mails', everyMs: 2 * SECOND, run: sendDueMails },
+  { name: 'expire holds', everyMs: 15 * SECOND, run: expireHolds },
+  { name: 'close checkouts', everyMs: 15 * SECOND, run: closeCheckouts },
+  { name: 'send refunds', everyMs: 3 * SECOND, run: sendRefunds },
   { name: 'delete expired sessions', everyMs: 3600 * SECOND, run: deleteExpiredSessions },
   { name: 'forget old request keys', everyMs: 3600 * SECOND, run: forgetOldRequestKeys },
+  { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },
 ];
 
 /** Starts the recurring work. @returns a stop that waits for what is running */

@@ -2,8 +2,10 @@ import { and, gt, inArray } from 'drizzle-orm';
 import type { SupplyUse } from '../../shared/contracts/supplies.ts';
 import { MS_PER_DAY, startOfDay, type Day } from '../../shared/domain/days.ts';
 import type { ItemKind } from '../../shared/domain/supply-items.ts';
+import { limeForDemand } from '../../shared/domain/supplies.ts';
 import type { Db } from '../db/client.ts';
 import { consumptions } from '../db/schema/index.ts';
+import { alkalinityTakenPerDay } from './lime-demand.ts';
 import { limewaterUse, type LimewaterUse } from './limewater-use.ts';
 
 /** The short window serves what is taken often; the long one what is taken now and then. */
@@ -40,12 +42,15 @@ export function supplyForecast(
   const since = now - LONG_WINDOW_DAYS * MS_PER_DAY;
   const taken = takenSince(db, items, since);
   const mixes = items.some(({ kind }) => isMixed(kind)) ? limewaterUse(db, now, SHORT_WINDOW_DAYS) : [];
+  const demandMeq = items.some(({ kind }) => kind === 'lime') ? alkalinityTakenPerDay(db, now) : null;
   return new Map(
     items.map((item) => {
       const own = taken.filter(({ itemId }) => itemId === item.id);
       const history = item.firstReceipt === null ? 0 : (now - startOfDay(item.firstReceipt, timeZone)) / MS_PER_DAY;
       const byTakes = fromTakes(own, history, now);
-      return [item.id, { ...byTakes, ...(isMixed(item.kind) ? fromLimewater(own, mixes) : {}) }];
+      const demandPerDay =
+        item.kind === 'lime' && demandMeq !== null ? limeForDemand(demandMeq, item.strength ?? 1) : null;
+      return [item.id, { ...byTakes, ...(isMixed(item.kind) ? fromLimewater(own, mixes) : {}), demandPerDay }];
     }),
   );
 }

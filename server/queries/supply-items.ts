@@ -7,11 +7,12 @@ import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { items, lots, suppliers } from '../db/schema/index.ts';
 import { farmOf } from './farm.ts';
+import { likePattern } from './like-pattern.ts';
 import { supplyForecast } from './supply-forecast.ts';
 
 /** All supplies that match, the most urgent first. */
 export function listItems(db: Db, query: ListItems, now: number): Item[] {
-  const pattern = query.search ? `%${query.search.replace(/[\\%_]/g, '\\$&')}%` : null;
+  const pattern = query.search ? likePattern(query.search) : null;
   const rows = itemsWithStock(db)
     .where(
       and(

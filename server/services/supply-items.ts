@@ -7,6 +7,7 @@ import { items, lots, suppliers } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
 import { supplyItem } from '../queries/supply-items.ts';
 import { supplierById } from '../queries/suppliers.ts';
+import { definedOnly } from './defined-only.ts';
 import { assertVersion } from './edit-check.ts';
 
 type ItemRow = typeof items.$inferSelect;
@@ -37,7 +38,7 @@ export function createItem(write: Write, input: CreateItem): string {
 export function editItem(write: Write, itemId: string, ifMatch: number, input: EditItem): void {
   const before = itemRow(write, itemId);
   assertVersion(before, ifMatch, supplyItem(write.tx, itemId, write.now));
-  const { retired, ...fields } = withoutUndefined(input);
+  const { retired, ...fields } = definedOnly(input);
   const after = { ...before, ...fields };
   assertFits(after);
   assertKindStays(write, before, after);
@@ -70,7 +71,7 @@ export function editSupplier(write: Write, supplierId: string, ifMatch: number, 
   assertVersion(before, ifMatch, before);
   const row = write.tx
     .update(suppliers)
-    .set({ ...withoutUndefined(input), version: before.version + 1 })
+    .set({ ...definedOnly(input), version: before.version + 1 })
     .where(eq(suppliers.id, supplierId))
     .returning()
     .get();
@@ -109,12 +110,4 @@ function assertSupplier(write: Write, supplierId: string | null): void {
   throw new DomainError('input.invalid', 'Choose a supplier from the list.', {
     fields: [{ path: 'supplierId', message: 'Choose a supplier from the list.' }],
   });
-}
-
-type Given<T> = { [Key in keyof T]?: Exclude<T[Key], undefined> };
-
-/** Only what was given: a key that is there without a value changes nothing. */
-function withoutUndefined<T extends object>(fields: T): Given<T> {
-  // The filter takes out exactly the values that the type takes out.
-  return Object.fromEntries(Object.entries(fields).filter(([, value]) => value !== undefined)) as Given<T>;
 }
