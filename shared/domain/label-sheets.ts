@@ -31,9 +31,10 @@ export type LabelSheetId = (typeof LABEL_SHEET_IDS)[number];
 const PLUG_LABEL = 12.7;
 /** The farm's own grid for plug labels: room for a punch between them, and more than 14 mm to each edge of A4. */
 const PLUG_GRID = {
-  ...{ paper: 'A4', width: PLUG_LABEL, height: PLUG_LABEL, columns: 12, rows: 18 },
+  paper: 'A4',
+  ...{ width: PLUG_LABEL, height: PLUG_LABEL, columns: 12, rows: 18 },
   ...{ left: 16.15, top: 14.65, pitchX: 15, pitchY: 15, cutLines: true },
-} as const;
+} as const satisfies Partial<LabelSheet>;
 
 /**
  * The sheets that labels can be printed on.

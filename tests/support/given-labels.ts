@@ -19,9 +19,8 @@ export function givenLabelledBatch(
 ): LabelledBatch {
   return farm.write((write) => {
     const { tx, newId, now } = write;
-    const [systemId, tankId, rackId, lineId, colonyId, cutId, batchId] = Array.from({ length: 7 }, newId) as [
-      ...(Record<0 | 1 | 2 | 3 | 4 | 5 | 6, string> & string[]),
-    ];
+    const [systemId, tankId, rackId, lineId] = [newId(), newId(), newId(), newId()];
+    const [colonyId, cutId, batchId] = [newId(), newId(), newId()];
     const rackCode = `R-${lineCode}`;
     const batchCode = `${lineCode}-2609-1`;
     const row = { createdAt: now };
