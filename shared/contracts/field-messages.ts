@@ -10,9 +10,8 @@ export function fieldMessage(issue: RawIssue): string | undefined {
     case 'invalid_value':
       return 'Choose one of the offered values.';
     case 'too_small':
-      return issue.origin === 'string'
-        ? `Use at least ${String(issue.minimum)} characters.`
-        : `Use ${String(issue.minimum)} or more.`;
+      if (issue.origin !== 'string') return `Use ${String(issue.minimum)} or more.`;
+      return issue.minimum === 1 ? 'Fill this in.' : `Use at least ${String(issue.minimum)} characters.`;
     case 'too_big':
       return issue.origin === 'string'
         ? `Use at most ${String(issue.maximum)} characters.`

@@ -21,11 +21,18 @@ export interface Form<Values> {
   /** Counts refused attempts, so that AppForm can move focus at each. */
   readonly refusals: number;
   /** Name and message for a field: `v-bind="form.field('email')"`. */
-  field: (path: string) => { name: string; errorMessages: string[] };
+  field: (path: string) => FieldBinding;
   /** True when it went through. A second call while one is under way does nothing. */
   submit: () => Promise<boolean>;
   /** Back to the initial values, or to others. */
   reset: (values?: Values) => void;
+}
+
+/** Attributes of one field; `data-field` is where AppForm looks for the first one to mend. */
+export interface FieldBinding {
+  name: string;
+  errorMessages: string[];
+  'data-field': string;
 }
 
 export interface SubmitContext {
@@ -98,9 +105,9 @@ export function useForm<Schema extends z.ZodType>(
     refusals.value += 1;
   }
 
-  function field(path: string): { name: string; errorMessages: string[] } {
+  function field(path: string): FieldBinding {
     const message = errors.value[path];
-    return { name: path, errorMessages: message === undefined ? [] : [message] };
+    return { name: path, 'data-field': path, errorMessages: message === undefined ? [] : [message] };
   }
 
   function reset(next?: Values): void {
