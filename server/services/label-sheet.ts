@@ -11,6 +11,7 @@ import {
   placesFor,
 } from '../../shared/domain/label-sheets.ts';
 import { qrRuns } from '../../shared/domain/qr-runs.ts';
+import { pdfBytes } from './pdf-bytes.ts';
 
 const POINTS_PER_MM = 72 / 25.4;
 const MONO_FILE = createRequire(import.meta.url).resolve(
@@ -40,7 +41,7 @@ export async function renderLabelSheet(run: LabelRun): Promise<Buffer> {
     margin: 0,
     info: { Title: `Labels: ${run.title}`, Creator: 'Limestead' },
   });
-  const finished = collect(doc);
+  const finished = pdfBytes(doc);
   keepTrueSize(doc);
   doc.registerFont('mono', MONO_FILE);
 
@@ -109,13 +110,4 @@ function keepTrueSize(doc: PDFKit.PDFDocument): void {
   // pdfkit has no option for it; the document's catalogue is where PDF keeps it (ISO 32000-1, table 150).
   const { _root: root } = doc as unknown as { _root: { data: Record<string, unknown> } };
   root.data.ViewerPreferences = doc.ref({ PrintScaling: 'None' });
-}
-
-function collect(doc: PDFKit.PDFDocument): Promise<Buffer> {
-  return new Promise((resolve, reject) => {
-    const chunks: Buffer[] = [];
-    doc.on('data', (chunk: Buffer) => chunks.push(chunk));
-    doc.on('end', () => resolve(Buffer.concat(chunks)));
-    doc.on('error', reject);
-  });
 }

@@ -3,6 +3,13 @@ import type { Write } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import type { Mail } from '../outside/mail-transport.ts';
 import { invitationMail } from './mails/invitation-mail.ts';
+import {
+  orderCancelledMail,
+  orderPaidMail,
+  orderPlacedMail,
+  orderRefundedMail,
+  orderShippedMail,
+} from './mails/order-mails.ts';
 import { passwordResetMail } from './mails/password-reset-mail.ts';
 
 export type MailBody = Omit<Mail, 'to'>;
@@ -11,6 +18,11 @@ type Template = (deps: Deps, data: Record<string, unknown>) => MailBody | Promis
 /** Every mail the product sends, by template name. Each area's mails live in `server/services/mails/`. */
 const TEMPLATES: Record<string, Template> = {
   invitation: invitationMail,
+  'order-cancelled': orderCancelledMail,
+  'order-paid': orderPaidMail,
+  'order-placed': orderPlacedMail,
+  'order-refunded': orderRefundedMail,
+  'order-shipped': orderShippedMail,
   'password-reset': passwordResetMail,
 };
 

@@ -41,7 +41,10 @@ export const PlaceOrder = z.strictObject({
     )
     .min(1, 'Choose something to order first.')
     .max(50, 'At most 50 lines in one order.')
-    .refine((lines) => new Set(lines.map(({ listingId }) => listingId)).size === lines.length, 'Order each offer once.'),
+    .refine(
+      (lines) => new Set(lines.map(({ listingId }) => listingId)).size === lines.length,
+      'Order each offer once.',
+    ),
   shipOn: calendarDay.nullable().default(null),
   note: noteText.default(''),
 });
