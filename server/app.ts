@@ -28,7 +28,8 @@ export function createApp(deps: Deps, sessionSecret: string): { app: Express; ap
   app.use(['/api/session', '/api/setup', '/api/password-resets', '/api/invitations', '/api/account'], limitGuessing());
   app.use('/api/public', limitGuessing());
   app.use('/api', sessionMiddleware(deps, sessionSecret), loadCaller(deps));
-  app.use(/^\/api\/(?!webhooks\/)/, refuseForgedWrites());
+  // Routes match in any case, so this must too; a match that ends in a slash would be no prefix for Express.
+  app.use(/^\/api(?!\/webhooks\/)/i, refuseForgedWrites());
 
   const api = new Api(app, deps);
   healthRoutes(api);

@@ -4,10 +4,10 @@ import { fileURLToPath } from 'node:url';
 import express, { type Express } from 'express';
 import { nonceOf } from './security-headers.ts';
 
-const distFolder = fileURLToPath(new URL('../../dist', import.meta.url));
+const builtClient = fileURLToPath(new URL('../../dist', import.meta.url));
 
 /** Serves the built client: hashed files forever, and its one page, with the response's nonce, for every other path. */
-export function serveClient(app: Express): void {
+export function serveClient(app: Express, distFolder: string = builtClient): void {
   const indexFile = path.join(distFolder, 'index.html');
   if (!existsSync(indexFile)) return;
   const page = readFileSync(indexFile, 'utf8');
