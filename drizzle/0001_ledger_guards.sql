@@ -12,6 +12,7 @@ BEGIN
   -- INSERT OR REPLACE would take the old row away without asking the delete trigger.
   SELECT RAISE(ABORT, 'Movements are never edited. Reverse it instead.')
   WHERE EXISTS (SELECT 1 FROM stock_movement WHERE id = NEW.id);
+  SELECT RAISE(ABORT, 'Pieces are whole.') WHERE NEW.pieces <> CAST(NEW.pieces AS INTEGER);
   SELECT RAISE(ABORT, 'stock.already_reversed')
   WHERE NEW.reverses_id IS NOT NULL
     AND EXISTS (SELECT 1 FROM stock_movement WHERE reverses_id = NEW.reverses_id);
