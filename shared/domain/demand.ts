@@ -60,6 +60,9 @@ export const DEFAULT_WINDOW_DAYS = 14;
 const FEWEST_READINGS = 3;
 const SHORTEST_DAYS = 2;
 
+/** Farms that test once a week have two or three tests in a fortnight: a thin window is widened so far. */
+const WIDENED = 2;
+
 /**
  * Alkalinity demand of a system over a window, from its tests and all that was added between them.
  *
@@ -69,7 +72,7 @@ const SHORTEST_DAYS = 2;
  * themselves, or larger where the readings scatter more than the tests should.
  *
  * @param until end of the window, epoch ms
- * @param windowDays length of the window
+ * @param windowDays length of the window; where it holds fewer than three tests, twice as long
  */
 export function estimateDemand(
   inputs: DemandInputs,
@@ -77,9 +80,7 @@ export function estimateDemand(
   windowDays: number = DEFAULT_WINDOW_DAYS,
 ): DemandEstimate {
   const windowFrom = until - windowDays * MS_PER_DAY;
-  const readings = inputs.readings
-    .filter(({ at, meqL, sd }) => at >= windowFrom && at <= until && sd > 0 && Number.isFinite(meqL))
-    .sort((a, b) => a.at - b.at);
+  const readings = readingsOf(inputs, until, windowDays);
   const first = readings[0];
   const from = first?.at ?? windowFrom;
   const to = readings.at(-1)?.at ?? until;
@@ -94,6 +95,16 @@ export function estimateDemand(
   const rows = levelRows(readings, inputs);
   const fit = fitRows(rows);
   return { ...basis, enough: true, ...fit, points: rows.map((row) => pointOf(row, fit, from)) };
+}
+
+/** The usable readings of the window in order of time, or of the widened one where the window holds too few. */
+function readingsOf({ readings }: DemandInputs, until: number, windowDays: number): AlkalinityReading[] {
+  const within = (days: number) =>
+    readings.filter(
+      ({ at, meqL, sd }) => at >= until - days * MS_PER_DAY && at <= until && sd > 0 && Number.isFinite(meqL),
+    );
+  const usual = within(windowDays);
+  return (usual.length < FEWEST_READINGS ? within(windowDays * WIDENED) : usual).sort((a, b) => a.at - b.at);
 }
 
 /**

@@ -1,31 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { MS_PER_DAY } from '../../../shared/domain/days.ts';
-import {
-  demandHistory,
-  estimateDemand,
-  type AlkalinityReading,
-  type DemandEstimate,
-  type DemandInputs,
-  type WaterChange,
-} from '../../../shared/domain/demand.ts';
-import type { SupplyInterval } from '../../../shared/domain/reservoir-use.ts';
-import reference from '../../reference/demand.json' with { type: 'json' };
-
-const day = (count: number) => count * MS_PER_DAY;
-const reading = (at: number, meqL: number, sd = 0.05): AlkalinityReading => ({ at: day(at), meqL, sd });
-const steady = (from: number, to: number, perDay: number): SupplyInterval => ({
-  ...{ from: day(from), to: day(to), meqL: perDay * (to - from) },
-});
-const inputs = (changes: Partial<DemandInputs>): DemandInputs => ({
-  ...{ readings: [], supply: [], waterChanges: [] },
-  ...changes,
-});
-
-function known(estimate: DemandEstimate): Extract<DemandEstimate, { enough: true }> {
-  if (!estimate.enough) throw new Error(`Expected an estimate, but: ${estimate.reason}`);
-  return estimate;
-}
+import { estimateDemand, type AlkalinityReading, type WaterChange } from '../../../shared/domain/demand.ts';
+import { day, inputs, known, reading, steady } from '../../support/demand-data.ts';
 
 /** Exact levels of a system under a steady demand, by tiny steps of the plain bookkeeping. */
 function levels(start: number, demand: number, supplyPerDay: number, changes: WaterChange[], days: number[]) {
@@ -163,13 +140,35 @@ describe('demand of an exact system', () => {
   });
 });
 
+describe('the window', () => {
+  // Falls 0.3 a day until day 10 and 0.1 a day after.
+  const readings = [0, 2, 4, 6, 8, 10, 12, 14, 16, 18, 20].map((at) =>
+    reading(at, 6 - 0.3 * Math.min(at, 10) - 0.1 * Math.max(0, at - 10)),
+  );
+
+  it('when it holds enough tests, leaves older ones out', () => {
+    const estimate = known(estimateDemand(inputs({ readings }), day(20), 10));
+    expect(estimate).toMatchObject({ from: day(10), to: day(20), readings: 6 });
+    expect(estimate.demandMeqLPerDay).toBeCloseTo(0.1, 12);
+  });
+
+  it('when it holds too few, is twice as long', () => {
+    const estimate = known(estimateDemand(inputs({ readings }), day(20), 3));
+    expect(estimate).toMatchObject({ from: day(14), to: day(20), readings: 4 });
+  });
+
+  it('leaves out tests from after its end', () => {
+    expect(known(estimateDemand(inputs({ readings }), day(8), 8)).demandMeqLPerDay).toBeCloseTo(0.3, 12);
+  });
+});
+
 describe('not enough data', () => {
   it.each([
     ['no readings', [], 'too_few_readings'],
     ['two readings', [reading(0, 3), reading(9, 2)], 'too_few_readings'],
     ['three in a day and a half', [reading(8, 3), reading(9, 3), reading(9.5, 3)], 'too_short'],
     ['three at one instant', [reading(9, 3), reading(9, 3), reading(9, 3)], 'too_short'],
-    ['three, two of them before the window', [reading(-9, 3), reading(-6, 3), reading(9, 3)], 'too_few_readings'],
+    ['three, two of them long ago', [reading(-30, 3), reading(-26, 3), reading(9, 3)], 'too_few_readings'],
     ['three, one of them no number', [reading(1, 3), reading(5, Number.NaN), reading(9, 3)], 'too_few_readings'],
     ['three, one of them without an error', [reading(1, 3), reading(5, 3, 0), reading(9, 3)], 'too_few_readings'],
   ])('with %s, says so', (_, readings, reason) => {
@@ -195,85 +194,5 @@ describe('not enough data', () => {
         expect([from, to, supplyMeqLPerDay, ...more].every(Number.isFinite)).toBe(true);
       }),
     );
-  });
-});
-
-describe('demand of simulated systems with known truth', () => {
-  const series = reference.series.map((system) => ({
-    ...system,
-    data: inputs({
-      readings: system.readings.map(([at = 0, meqL = 0]) => reading(at, meqL, system.testSd)),
-      supply: system.supply.map(([from = 0, to = 0, perDay = 0]) => steady(from, to, perDay)),
-      waterChanges: system.waterChanges.map(([at = 0, fraction = 0, alkalinityMeqL = 0]) => ({
-        ...{ at: day(at), fraction, alkalinityMeqL },
-      })),
-    }),
-  }));
-
-  type Series = (typeof series)[number];
-
-  /** True mean demand between two instants. */
-  function truthBetween({ truth }: Series, from: number, to: number): number {
-    const inside = truth
-      .filter(([at = 0]) => day(at) >= from - day(1) && day(at) <= to)
-      .map(([, demand = 0]) => demand);
-    return inside.reduce((sum, each) => sum + each, 0) / inside.length;
-  }
-
-  const rms = (errors: readonly number[]) =>
-    Math.sqrt(errors.reduce((sum, each) => sum + each ** 2, 0) / errors.length);
-
-  function historyErrors(system: Series, windowDays: number): number[] {
-    return demandHistory(system.data, day(windowDays), day(300), windowDays).map(
-      ({ from, to, demandMeqLPerDay }) => demandMeqLPerDay - truthBetween(system, from, to),
-    );
-  }
-
-  /** What two tests alone say: fall of the level plus supply between them. */
-  function plainErrors(system: Series): number[] {
-    const { readings, supply, waterChanges } = system.data;
-    return readings.slice(1).flatMap((next, index) => {
-      const last = readings[index];
-      if (!last || waterChanges.some(({ at }) => at >= last.at && at <= next.at)) return [];
-      const pair = inputs({ readings: [last, next], supply });
-      const basis = estimateDemand(pair, next.at, (next.at - last.at) / MS_PER_DAY + 1);
-      const fall = (last.meqL - next.meqL) / ((next.at - last.at) / MS_PER_DAY);
-      return [fall + basis.supplyMeqLPerDay - truthBetween(system, last.at, next.at)];
-    });
-  }
-
-  it.each(series.filter(({ testEveryDays }) => testEveryDays === 1))(
-    'seed $seed ($regime): a two-week window errs less than half of plain differences of tests',
-    (system) => {
-      const errors = historyErrors(system, 14);
-      expect(errors.length).toBeGreaterThan(30);
-      expect(rms(errors)).toBeLessThan(rms(plainErrors(system)) / 2);
-      expect(rms(errors)).toBeLessThan(0.06);
-    },
-  );
-
-  it('seed 103, tested weekly: four weeks of tests come within 0.03 meq/L a day', () => {
-    const weekly = series.find(({ seed }) => seed === 103);
-    expect(weekly && rms(historyErrors(weekly, 28))).toBeLessThan(0.03);
-  });
-
-  it('the 95 % interval covers the true mean about as often as it says', () => {
-    const covered = series.flatMap((system) =>
-      demandHistory(system.data, day(28), day(300), system.testEveryDays === 1 ? 14 : 28).map(
-        ({ from, to, low, high }) => {
-          const truth = truthBetween(system, from, to);
-          return truth >= low && truth <= high;
-        },
-      ),
-    );
-    expect(covered.filter(Boolean).length / covered.length).toBeGreaterThan(0.9);
-  });
-
-  it('gives one point a week, the newest at the end', () => {
-    const [first] = series;
-    const history = first ? demandHistory(first.data, day(20), day(48)) : [];
-    expect(history.map(({ to }) => Math.round(to / MS_PER_DAY))).toHaveLength(5);
-    expect(history.at(-1)?.to).toBeLessThanOrEqual(day(48));
-    expect(history.at(-1)?.to).toBeGreaterThan(day(40));
   });
 });
