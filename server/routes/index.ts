@@ -15,6 +15,7 @@ import { accountRoutes } from './account-routes.ts';
 import { auditRoutes } from './audit-routes.ts';
 import { farmRoutes } from './farm-routes.ts';
 import { peopleRoutes } from './people-routes.ts';
+import { todayRoutes } from './today-routes.ts';
 import { sessionRoutes } from './session-routes.ts';
 import { stockRoutes } from './stock-routes.ts';
 import { costRoutes } from './cost-routes.ts';
@@ -37,6 +38,7 @@ export function registerRoutes(api: Api): void {
   peopleRoutes(api);
   farmRoutes(api);
   auditRoutes(api);
+  todayRoutes(api);
   waterRoutes(api);
   systemRoutes(api);
   reservoirRoutes(api);
