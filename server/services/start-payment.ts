@@ -6,7 +6,7 @@ import type { Deps } from '../deps.ts';
 import type { CheckoutRequest } from '../outside/payment-service.ts';
 import { farmOf } from '../queries/farm.ts';
 import { SHORTEST_CHECKOUT_MS } from '../queries/order-settings.ts';
-import { orderLinesOf, ownOrderRow, type OrderRow } from '../queries/orders.ts';
+import { orderLinesOf, ownOrderRow, paymentsOf, type OrderRow } from '../queries/orders.ts';
 import { storeRow } from '../queries/stores.ts';
 
 /**
@@ -66,7 +66,7 @@ function checkoutRequest(write: Write, order: OrderRow, expiresAt: number, publi
     cancelUrl: `${page}?payment=left`,
     expiresAt,
     // The same page for the same time: a call whose answer was lost does not open a second one.
-    idempotencyKey: `checkout-${order.id}-${expiresAt}`,
+    idempotencyKey: `checkout-${order.id}-${paymentsOf(write.tx, order.id).length + 1}-${expiresAt}`,
   };
 }
 
