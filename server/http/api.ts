@@ -5,6 +5,7 @@ import { mayUse } from '../../shared/permissions.ts';
 import type { Db } from '../db/client.ts';
 import { inWrite, SYSTEM, type Write } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
+import type { FileAnswer } from '../file-answer.ts';
 import { callerOf, type Caller } from './caller.ts';
 import { answerOnce } from './idempotency.ts';
 import { parseInput } from './parse-input.ts';
@@ -19,14 +20,6 @@ export interface Input<E extends Endpoint> {
   /** Version that the editor saw, on endpoints that edit. */
   ifMatch: E['edits'] extends true ? number : undefined;
   upload: E['upload'] extends object ? Upload : undefined;
-}
-
-/** A download: whole, or written by `stream`. */
-export interface FileAnswer {
-  fileName: string;
-  contentType: string;
-  content: Buffer | string;
-  inline?: boolean;
 }
 
 type Answer<E extends Endpoint> = E['answer'] extends 'file' ? FileAnswer : ResponseOf<E>;

@@ -1,5 +1,5 @@
 import Papa from 'papaparse';
-import type { FileAnswer } from './api.ts';
+import type { FileAnswer } from '../file-answer.ts';
 
 /** One column of an export: its head and the value of a row. */
 export type CsvColumns<Row> = Readonly<Record<string, (row: Row) => string | number | null>>;

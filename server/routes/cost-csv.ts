@@ -1,6 +1,6 @@
 import type { CostOverview, COST_TABLES, LineCost, SystemMonth } from '../../shared/contracts/costs.ts';
 import { MICRO_PER_MAJOR } from '../../shared/domain/money.ts';
-import type { FileAnswer } from '../http/api.ts';
+import type { FileAnswer } from '../file-answer.ts';
 import { csvFile, type CsvColumns } from '../http/csv-file.ts';
 
 /** A table of costs as CSV, in the farm's currency. */

@@ -2,7 +2,7 @@ import type { Item, Lot, SUPPLY_TABLES, Use } from '../../shared/contracts/suppl
 import { MICRO_PER_MAJOR, minorDigits } from '../../shared/domain/money.ts';
 import type { Db } from '../db/client.ts';
 import { csvFile, type CsvColumns } from '../http/csv-file.ts';
-import type { FileAnswer } from '../http/api.ts';
+import type { FileAnswer } from '../file-answer.ts';
 import { farmOf } from '../queries/farm.ts';
 import { listItems } from '../queries/supply-items.ts';
 import { allLots, allUses } from '../queries/supply-lots.ts';

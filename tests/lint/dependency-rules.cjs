@@ -1,5 +1,10 @@
 /** What the linter can't see: cycles, re-exports, imports from .vue files. */
-const forbid = (name, from, to) => ({ name, severity: 'error', from: { path: from }, to: { path: to } });
+const forbid = (name, from, to, more = {}) => ({
+  name,
+  severity: 'error',
+  from: { path: from },
+  to: { path: to, ...more },
+});
 
 module.exports = {
   forbidden: [
@@ -17,6 +22,9 @@ module.exports = {
       'routes-do-not-touch-the-database',
       '^server/routes/(?!health)',
       '^server/db/(schema|client)|node_modules/drizzle-orm',
+      {
+        dependencyTypesNot: ['type-only'],
+      },
     ),
     forbid('services-do-not-know-http', '^server/(services|queries)/', '^server/(http|routes)/|node_modules/express'),
   ],

@@ -1,7 +1,7 @@
 import type { InvoiceContent } from '../../../shared/contracts/invoices.ts';
 import { DomainError } from '../../../shared/errors.ts';
 import type { Db } from '../../db/client.ts';
-import type { FileAnswer } from '../../http/api.ts';
+import type { FileAnswer } from '../../file-answer.ts';
 import { invoiceOf } from '../../queries/orders.ts';
 import { amountText, moneyText } from '../money-text.ts';
 import { MARGIN, PAGE, Paper, RIGHT } from './paper.ts';

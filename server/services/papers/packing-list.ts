@@ -2,7 +2,7 @@ import { dayOf } from '../../../shared/domain/days.ts';
 import { gradeByCode } from '../../../shared/domain/growth.ts';
 import { formatPlugCode } from '../../../shared/domain/plug-code.ts';
 import type { Db } from '../../db/client.ts';
-import type { FileAnswer } from '../../http/api.ts';
+import type { FileAnswer } from '../../file-answer.ts';
 import { farmOf } from '../../queries/farm.ts';
 import { orderLinesOf, orderRow, pickedPlugs } from '../../queries/orders.ts';
 import { progressOf } from '../../queries/pick-plan.ts';
