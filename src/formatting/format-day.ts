@@ -20,6 +20,12 @@ export function formatLongDay(day: Day): string {
   return `${weekdayName(day)}, ${String(Number(date))} ${LONG_MONTHS[Number(month) - 1] ?? ''}`;
 }
 
+/** "February 2026", from 'YYYY-MM'. */
+export function formatMonth(month: string): string {
+  const [year = '', number = ''] = month.split('-');
+  return `${LONG_MONTHS[Number(number) - 1] ?? ''} ${year}`.trim();
+}
+
 /** "today", "tomorrow", "Thursday", else the day: how people name days near them. */
 export function nearDay(day: Day, today: Day): string {
   const away = daysBetween(today, day);
