@@ -151,6 +151,16 @@ describe('vinegar in a mix', () => {
     expect(sour.vinegarHelps).toBe(false);
   });
 
+  // Water alone holds 59.72 g; 400 mL add room for 10.7 g. 65 g is between the two: all dissolves, thanks to the vinegar.
+  it.each([
+    [59, false],
+    [60, true],
+    [65, true],
+  ])('with %i g of lime in 40 L, helps: %s', (limeG, helps) => {
+    const mix = mixLimewater(aMix({ limeG, vinegarMl: 400 }));
+    expect(mix).toMatchObject({ vinegarHelps: helps, shortOf: 'lime', undissolvedG: 0 });
+  });
+
   // 160 mL of 5 % in 40 L: 8 g, 0.13322 mol, 3.3305 meq/L of acetate that comes only when bacteria have oxidised it.
   it('holds back the part that comes as acetate', () => {
     const mix = mixLimewater(aMix({ vinegarMl: 160 }));
