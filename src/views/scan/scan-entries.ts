@@ -14,7 +14,8 @@ export interface ScanEntry {
   sameAs: string | null;
   to?: RouteLocationRaw;
   undo?: () => Promise<unknown>;
-  retry?: () => Promise<void>;
+  /** Set where no answer came: sends the same act again, which counts once. */
+  retry: (() => Promise<void>) | null;
   /** The code that was probably meant. */
   suggestion?: string;
 }

@@ -19,9 +19,9 @@ export function useScanEntries(onOutcome: (went: boolean) => void): {
   let lastId = 0;
   let queue: Promise<void> = Promise.resolve();
 
-  function add(entry: Omit<ScanEntry, 'id'>): number {
+  function add(entry: Omit<ScanEntry, 'id' | 'retry'>): number {
     lastId += 1;
-    entries.value = [{ id: lastId, ...entry }, ...entries.value].slice(0, MOST_ENTRIES);
+    entries.value = [{ id: lastId, retry: null, ...entry }, ...entries.value].slice(0, MOST_ENTRIES);
     return lastId;
   }
 
@@ -52,20 +52,12 @@ export function useScanEntries(onOutcome: (went: boolean) => void): {
     } catch (thrown) {
       const error = toApiError(thrown);
       const retry = async () => {
-        withoutRetry(id);
+        change(id, { state: 'working', detail: 'Sending …', retry: null });
         await send(id, act);
       };
-      change(id, { state: 'refused', detail: error.detail, ...(error.isUnreachable ? { retry } : {}) });
+      change(id, { state: 'refused', detail: error.detail, retry: error.isUnreachable ? retry : null });
       onOutcome(false);
     }
-  }
-
-  function withoutRetry(id: number): void {
-    entries.value = entries.value.map((entry) => {
-      if (entry.id !== id) return entry;
-      const { retry: _used, ...rest } = entry;
-      return { ...rest, state: 'working', detail: 'Sending …' };
-    });
   }
 
   async function undo(entry: ScanEntry): Promise<void> {
