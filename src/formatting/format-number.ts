@@ -23,8 +23,6 @@ export function decimalsForError(error: number): number {
   if (!(error > 0) || !Number.isFinite(error)) return 0;
   const exponent = Math.floor(Math.log10(error));
   const lead = Number((error / 10 ** exponent).toFixed(1));
-  // 0.96 rounds up to 1.0: it is then an error that starts with 1 one place higher.
-  if (lead >= 9.5) return clampDecimals(-exponent);
   return clampDecimals(lead < 2 ? 1 - exponent : -exponent);
 }
 
