@@ -73,11 +73,12 @@ function takenSince(db: Db, items: readonly ForecastItem[], since: number): Take
 function fromTakes(taken: readonly Taken[], historyDays: number, now: number): SupplyUse {
   const within = (days: number) => taken.filter(({ at }) => at > now - days * MS_PER_DAY && at <= now);
   const isOften = countTakes(within(SHORT_WINDOW_DAYS)) >= OFTEN;
-  const windowDays = Math.floor(Math.min(isOften ? SHORT_WINDOW_DAYS : LONG_WINDOW_DAYS, historyDays));
+  // Begun days count whole, so that a use right after the first delivery is in it.
+  const windowDays = Math.min(isOften ? SHORT_WINDOW_DAYS : LONG_WINDOW_DAYS, Math.ceil(historyDays));
   const uses = within(windowDays);
   const sum = uses.reduce((total, { quantity }) => total + quantity, 0);
   const known = { windowDays, taken: sum, takes: countTakes(uses), systems: [], demandPerDay: null };
-  if (windowDays < FEWEST_DAYS) return { ...known, basis: 'none', perDay: null, sdPerDay: 0 };
+  if (historyDays < FEWEST_DAYS) return { ...known, basis: 'none', perDay: null, sdPerDay: 0 };
   return { ...known, basis: 'consumption', perDay: sum / windowDays, sdPerDay: dailySpread(uses, windowDays, now) };
 }
 

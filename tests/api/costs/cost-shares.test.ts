@@ -2,6 +2,7 @@ import { expect, it } from 'vitest';
 import { costMonths, costShares } from '../../../server/db/schema/index.ts';
 import { batchCost, plugCost } from '../../../server/queries/batch-cost.ts';
 import { bringCostsUpToDate } from '../../../server/services/cost-shares.ts';
+import { givePlugs } from '../../../server/services/remove-plugs.ts';
 import { undoAct } from '../../../server/services/undo-stock.ts';
 import { givenCut, givenLoss, givenPlaced, givenRack } from '../../support/given-stock.ts';
 import { givenGlue, givenItem, givenLot, givenUse } from '../../support/given-supplies.ts';
@@ -73,6 +74,19 @@ it('when pieces are lost, the survivors carry their cost and the lost plug has n
   expect(batchCost(farm.db, cut.batchId)).toMatchObject({ living: 3, totalMicro: 1_200_000, perLivingMicro: 400_000 });
   expect(plugCost(farm.db, alive)).toMatchObject({ costMicro: 400_000, limeMicro: 400_000 });
   expect(plugCost(farm.db, lost)).toMatchObject({ costMicro: null, limeMicro: null });
+});
+
+it('when a piece is given away, it takes its share along and the rest carry no more than theirs', async () => {
+  const farm = await startFarm();
+  const { systemId, rackId } = givenBench(farm);
+  const cut = givenCut(farm, { pieces: 4, target: { kind: 'rack', rackId } });
+  givenLimeUse(farm, systemId, 120);
+  farm.write((write) => givePlugs(write, { codes: [cut.plugs[0]?.code ?? ''], to: 'A school' }));
+
+  refresh(farm);
+
+  expect(batchCost(farm.db, cut.batchId)).toMatchObject({ living: 3, leftAlive: 1, perLivingMicro: 300_000 });
+  expect(plugCost(farm.db, cut.plugs[0]?.code ?? '')).toMatchObject({ costMicro: 300_000 });
 });
 
 it('when plugs move to another system, each system shares with them for its own days', async () => {
