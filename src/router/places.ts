@@ -13,7 +13,7 @@ export const PLACES = [
   { name: 'orders', label: 'Orders', access: 'orders.read' },
   { name: 'costs', label: 'Costs', access: 'costs.read' },
   { name: 'plan', label: 'Plan', access: 'stock.work' },
-  { name: 'settings', label: 'Settings', access: 'farm.configure' },
+  { name: 'settings', label: 'Settings', access: 'audit.read' },
   { name: 'shop', label: 'Availability', access: 'shop.read' },
   { name: 'shop-orders', label: 'Orders', access: 'shop.read' },
   { name: 'shop-claims', label: 'Claims', access: 'shop.read' },

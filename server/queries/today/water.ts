@@ -110,7 +110,9 @@ function testDue(context: TodayContext, system: SystemRow, latest: Alkalinity | 
     tone: 'ochre',
     group: 'today',
     title: [`Test alkalinity in system ${system.code}`],
-    detail: [days === null ? `It was not tested in the last ${LOOK_BACK_DAYS} days.` : `The last test was ${days} days ago.`],
+    detail: [
+      days === null ? `It was not tested in the last ${LOOK_BACK_DAYS} days.` : `The last test was ${days} days ago.`,
+    ],
     act: actOf(context, 'water.log', 'Test', `/water/log?system=${system.id}`, `/water/systems/${system.id}`),
   };
 }

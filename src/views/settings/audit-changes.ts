@@ -1,0 +1,28 @@
+/** One value that a change touched, as text; null where there was or is none. */
+export interface FieldChange {
+  field: string;
+  before: string | null;
+  after: string | null;
+}
+
+/** What differs between a record before and after, field by field; nested fields by dotted names. */
+export function changesBetween(before: unknown, after: unknown): FieldChange[] {
+  const old = flattened(before);
+  const fresh = flattened(after);
+  return [...new Set([...old.keys(), ...fresh.keys()])]
+    .map((field) => ({ field, before: old.get(field) ?? null, after: fresh.get(field) ?? null }))
+    .filter((change) => change.before !== change.after);
+}
+
+/** "user.signed_in" as "user signed in". */
+export function actionWords(action: string): string {
+  return action.replaceAll(/[._]/g, ' ');
+}
+
+function flattened(value: unknown, path = ''): Map<string, string> {
+  if (value === null || value === undefined) return new Map();
+  if (typeof value !== 'object') return new Map([[path === '' ? 'value' : path, String(value)]]);
+  return new Map(
+    Object.entries(value).flatMap(([key, part]) => [...flattened(part, path === '' ? key : `${path}.${key}`)]),
+  );
+}
