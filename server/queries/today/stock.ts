@@ -74,7 +74,7 @@ function ageWords(ageMs: number): string {
 
 /** The page of what is withheld; the record names it by its code. */
 function placeOf(db: Db, { scope, of }: Withheld): string {
-  if (scope === 'plug') return `/p/${of}`;
+  if (scope === 'plug') return `/stock/plugs/${of}`;
   const table = scope === 'batch' ? batches : scope === 'rack' ? racks : systems;
   const id = db.select({ id: table.id }).from(table).where(eq(table.code, of)).get()?.id ?? '';
   return { batch: `/stock/batches/${id}`, rack: `/stock/racks/${id}`, system: `/water/systems/${id}` }[scope];
@@ -91,6 +91,6 @@ function mother({ colony, lineAlive, lineHeld, takenIn28Days }: CuttingChoice): 
     group: 'soon',
     title: [`Cut ${colony.line.tradeName} from ${colony.code}`],
     detail: [`Rested. Stores took ${takenIn28Days} in 28 days and wait for ${lineHeld}; ${lineAlive} are alive.`],
-    act: { label: 'Start', to: `/cutting/new?colony=${colony.id}` },
+    act: { label: 'Start', to: `/cutting/log?colonyId=${colony.id}` },
   };
 }

@@ -95,7 +95,7 @@ function falling(context: TodayContext, system: SystemRow, latest: Alkalinity, l
     group: 'today',
     title: [`System ${system.code}: alkalinity falls, now `, { quantity: 'alkalinity', value: latest.value }],
     detail: [
-      days === 1 ? 'It leaves its band within a day' : `It leaves its band in about ${days} days`,
+      days === 1 ? 'It leaves its band in about a day' : `It leaves its band in about ${days} days`,
       ...changeWords(latest),
       '.',
     ],
