@@ -92,8 +92,9 @@ function joined(db: Db) {
 }
 
 function toReading({ reading, systemCode }: ReadingWithSystem): Reading {
-  const { createdAt: _, parameter, ...shown } = reading;
-  return { ...shown, parameter: parameterOf(parameter), systemCode };
+  const { id, systemId, value, method, note, takenAt, by, importId, version } = reading;
+  const parameter = parameterOf(reading.parameter);
+  return { id, systemId, systemCode, parameter, value, method, note, takenAt, by, importId, version };
 }
 
 /** The table only ever gets codes of the list; the column's type is plain text. */

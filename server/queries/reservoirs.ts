@@ -94,12 +94,12 @@ function toReservoir(
   { reservoir, system }: { reservoir: ReservoirRow; system: typeof systems.$inferSelect },
   now: number,
 ): Reservoir {
-  const { createdAt: _, retiredAt: __, ...shown } = reservoir;
+  const { id, code, systemId, volumeL, levelL, alkalinityMeqL, readyAt, version } = reservoir;
   const last = lastEvent(db, reservoir.id);
   const perDay = litresPerDay(onlineUse(db, reservoir.id, now).intervals, now);
   const isOnline = reservoir.state === 'online' && last !== undefined;
   return {
-    ...shown,
+    ...{ id, code, systemId, volumeL, levelL, alkalinityMeqL, readyAt, version },
     systemCode: system.code,
     state: stateAt(reservoir, now),
     levelAt: last?.at ?? null,

@@ -31,9 +31,13 @@ export function bandsOf(db: Db, systemId: string): TargetBand[] {
 }
 
 export function toSystem(db: Db, row: SystemRow): System {
-  const { retiredAt: _, ...shown } = row;
   const tankRows = db.select().from(tanks).where(eq(tanks.systemId, row.id)).orderBy(asc(tanks.code)).all();
-  return { ...shown, bands: bandsOf(db, row.id), tanks: tankRows.map(toTank) };
+  return { ...systemFacts(row), bands: bandsOf(db, row.id), tanks: tankRows.map(toTank) };
+}
+
+/** What a system is, without what belongs to it. */
+export function systemFacts({ id, code, name, kind, netVolumeL, note, createdAt, version }: SystemRow) {
+  return { id, code, name, kind, netVolumeL, note, createdAt, version };
 }
 
 export function toTank({ id, systemId, code, name }: typeof tanks.$inferSelect): Tank {

@@ -6,7 +6,7 @@ import { racks, stockAccounts, stockBalances, systems, tanks } from '../db/schem
 import { currentDemand } from './demand.ts';
 import { latestReadings } from './readings.ts';
 import { listReservoirs } from './reservoirs.ts';
-import { bandsOf, systemRow, type SystemRow } from './systems.ts';
+import { bandsOf, systemFacts, systemRow, type SystemRow } from './systems.ts';
 
 /** Every system at a glance, in the order of their codes. */
 export function waterOverview(db: Db, now: number): SystemGlance[] {
@@ -19,10 +19,9 @@ export function systemGlance(db: Db, systemId: string, now: number): SystemGlanc
 }
 
 function glanceOf(db: Db, row: SystemRow, now: number): SystemGlance {
-  const { retiredAt: _, ...system } = row;
   const held = listReservoirs(db, now, row.id);
   return {
-    system,
+    system: systemFacts(row),
     latest: latestValues(db, row.id),
     demand: currentDemand(db, row, now),
     online: held.find(({ state }) => state === 'online') ?? null,

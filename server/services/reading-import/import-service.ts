@@ -1,4 +1,4 @@
-import { eq } from 'drizzle-orm';
+import { eq, sql } from 'drizzle-orm';
 import type { ImportMapping, ImportPreview, ReadingImport } from '../../../shared/contracts/reading-imports.ts';
 import { DomainError } from '../../../shared/errors.ts';
 import type { Db } from '../../db/client.ts';
@@ -19,8 +19,6 @@ const SAMPLE_ROWS = 5;
 const FIRST_VALUES = 20;
 const PROBLEMS_SHOWN = 100;
 const CLOCK_SLACK_MS = 5 * 60_000;
-/** Rows of one INSERT: 100 rows of 12 columns stay far below SQLite's limit of parameters. */
-const ROWS_AT_ONCE = 100;
 
 /** What an import would do, and nothing of it: the file comes again with the commit. */
 export function previewImport(
@@ -54,9 +52,7 @@ export function commitImport(write: Write, file: ImportFile, mapping: ImportMapp
     })
     .returning()
     .get();
-  for (let start = 0; start < fresh.length; start += ROWS_AT_ONCE) {
-    storeValues(write, row.id, fresh.slice(start, start + ROWS_AT_ONCE));
-  }
+  storeValues(write, row.id, fresh);
   write.audit({ action: 'reading_import.commit', entity: 'reading_import', entityId: row.id, after: row });
   return row;
 }
@@ -86,12 +82,18 @@ function sift(db: Db, table: CsvTable, mapping: ImportMapping, now: number): Sif
   return leaveOutKnown(db, rows);
 }
 
+/** One statement, prepared once: an import can bring hundreds of thousands of values. */
 function storeValues(write: Write, importId: string, values: readonly ImportValue[]): void {
-  const rows = values.map(({ systemId, parameter, value, method, note, takenAt }) => ({
-    ...{ id: write.newId(), systemId, parameter, value, method, note, takenAt, importId },
-    ...{ by: write.actor.name, createdAt: write.now },
-  }));
-  write.tx.insert(readings).values(rows).run();
+  const given = (name: keyof ImportValue | 'id') => sql.placeholder(name);
+  const insert = write.tx
+    .insert(readings)
+    .values({
+      ...{ id: given('id'), systemId: given('systemId'), parameter: given('parameter'), value: given('value') },
+      ...{ method: given('method'), note: given('note'), takenAt: given('takenAt') },
+      ...{ importId, by: write.actor.name, createdAt: write.now },
+    })
+    .prepare();
+  for (const value of values) insert.run({ id: write.newId(), ...value });
 }
 
 /** @throws {DomainError} `input.invalid` where a mapping belongs to another file, or names one meaning twice */

@@ -1,3 +1,63 @@
 import type { RouteRecordRaw } from 'vue-router';
 
-export const waterRoutes: RouteRecordRaw[] = [];
+export const waterRoutes: RouteRecordRaw[] = [
+  {
+    path: '/water',
+    name: 'water',
+    component: () => import('@/views/water/WaterView.vue'),
+    meta: { title: 'Water', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/systems/new',
+    name: 'system-new',
+    component: () => import('@/views/water/SystemFormView.vue'),
+    meta: { title: 'New system', access: 'water.configure', place: 'water' },
+  },
+  {
+    path: '/water/systems/:systemId',
+    name: 'system',
+    component: () => import('@/views/water/SystemView.vue'),
+    props: true,
+    meta: { title: 'System', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/systems/:systemId/edit',
+    name: 'system-edit',
+    component: () => import('@/views/water/SystemFormView.vue'),
+    props: true,
+    meta: { title: 'Change system', access: 'water.configure', place: 'water' },
+  },
+  {
+    path: '/water/log',
+    name: 'log-readings',
+    component: () => import('@/views/water/LogReadingsView.vue'),
+    props: ({ query }) => ({ systemId: query.system }),
+    meta: { title: 'Log readings', access: 'water.log', place: 'water' },
+  },
+  {
+    path: '/water/mix',
+    name: 'mix-limewater',
+    component: () => import('@/views/water/MixLimewaterView.vue'),
+    props: ({ query }) => ({ systemId: query.system, reservoirId: query.reservoir }),
+    meta: { title: 'Mix limewater', access: 'water.log', place: 'water' },
+  },
+  {
+    path: '/water/readings',
+    name: 'readings',
+    component: () => import('@/views/water/ReadingListView.vue'),
+    meta: { title: 'Readings', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/import',
+    name: 'reading-import',
+    component: () => import('@/views/water/ReadingImportView.vue'),
+    meta: { title: 'Import readings', access: 'water.log', place: 'water' },
+  },
+  {
+    path: '/water/reservoirs/:reservoirId',
+    name: 'reservoir',
+    component: () => import('@/views/water/ReservoirView.vue'),
+    props: true,
+    meta: { title: 'Reservoir', access: 'water.read', place: 'water' },
+  },
+];

@@ -1,0 +1,66 @@
+import { keepPreviousData, useQuery, useQueryClient } from '@tanstack/vue-query';
+import { type MaybeRefOrGetter, computed, toValue } from 'vue';
+import { waterEndpoints } from '@shared/contracts/water.ts';
+import { callApi } from '@/api/call-api.ts';
+
+/** All keys of the water start alike, so that one call makes the whole of it fresh. */
+export const waterKeys = {
+  all: ['water'] as const,
+  overview: () => ['water', 'overview'] as const,
+  glance: (systemId: string) => ['water', 'glance', systemId] as const,
+  demand: (systemId: string, days: number) => ['water', 'demand', systemId, days] as const,
+  additions: (systemId: string) => ['water', 'additions', systemId] as const,
+  items: () => ['water', 'items'] as const,
+};
+
+export function useWaterOverview() {
+  return useQuery({
+    queryKey: waterKeys.overview(),
+    queryFn: ({ signal }) => callApi(waterEndpoints.overview, { signal }),
+    select: ({ items }) => items,
+  });
+}
+
+export function useSystemGlance(systemId: MaybeRefOrGetter<string>) {
+  return useQuery({
+    queryKey: computed(() => waterKeys.glance(toValue(systemId))),
+    queryFn: ({ signal }) => callApi(waterEndpoints.glance, { params: { id: toValue(systemId) }, signal }),
+  });
+}
+
+export function useSystemDemand(systemId: MaybeRefOrGetter<string>, days: MaybeRefOrGetter<number>) {
+  return useQuery({
+    queryKey: computed(() => waterKeys.demand(toValue(systemId), toValue(days))),
+    queryFn: ({ signal }) =>
+      callApi(waterEndpoints.demand, { params: { id: toValue(systemId) }, query: { days: toValue(days) }, signal }),
+    placeholderData: keepPreviousData,
+  });
+}
+
+export function useAdditions(systemId: MaybeRefOrGetter<string>) {
+  return useQuery({
+    queryKey: computed(() => waterKeys.additions(toValue(systemId))),
+    queryFn: ({ signal }) => callApi(waterEndpoints.additions, { params: { id: toValue(systemId) }, signal }),
+    select: ({ items }) => items,
+  });
+}
+
+export function useWaterItems() {
+  return useQuery({
+    queryKey: waterKeys.items(),
+    queryFn: ({ signal }) => callApi(waterEndpoints.items, { signal }),
+    select: ({ items }) => items,
+  });
+}
+
+/**
+ * Runs an act and makes every page fresh after it: what is done to the water shows in supplies, costs and Today too.
+ */
+export function useAct(): <T>(act: Promise<T>) => Promise<T> {
+  const client = useQueryClient();
+  return async (act) => {
+    const answer = await act;
+    void client.invalidateQueries();
+    return answer;
+  };
+}
