@@ -50,10 +50,10 @@ export function suppliesSentence(items: readonly Item[], today: Day): Sentence {
   const next = running.reduce<Item | undefined>(sooner, undefined);
   if (!next)
     return plain('Not enough was used yet to say how long things last. Log mixes, cuts and counts as they happen.');
-  const lasts = { before: `${next.name} runs out first, in `, number: daysWords(next.advice.daysLeft) };
+  const lasts = { before: `First to run out: ${next.name}, in `, number: daysWords(next.advice.daysLeft) };
   if (next.state === 'order_soon') return { ...lasts, after: `. ${orderWords(next, today)}` };
   const soon = items.find(({ state }) => state === 'order_soon');
-  if (soon) return { ...lasts, after: `. ${soon.name} needs longer to come: ${lowerFirst(orderWords(soon, today))}` };
+  if (soon) return { ...lasts, after: `. ${soon.name} takes longer to come: ${lowerFirst(orderWords(soon, today))}` };
   return { ...lasts, after: '. Nothing needs to be ordered this week.' };
 }
 
@@ -87,12 +87,12 @@ function urgentSentence(urgent: readonly Item[]): Sentence {
     others.length > 0 ? ` ${plural(others.length, 'other supply', 'other supplies')} can't wait either.` : '';
   if (first.state === 'out') {
     const order = first.advice.orderPacks > 0 ? `Order ${packs(first)} today.` : 'Receive a delivery or retire it.';
-    return { before: `${first.name} is `, number: 'used up', after: `. ${order}${more}` };
+    return { before: `${first.name}: `, number: 'none left', after: `. ${order}${more}` };
   }
   return {
-    before: `${first.name} lasts `,
-    number: daysWords(first.advice.daysLeft),
-    after: ` and takes ${plural(first.leadTimeDays, 'day')} to come. Order ${packs(first)} today.${more}`,
+    before: `${first.name}: `,
+    number: `${daysWords(first.advice.daysLeft)} left`,
+    after: `, and a delivery takes ${plural(first.leadTimeDays, 'day')}. Order ${packs(first)} today.${more}`,
   };
 }
 
