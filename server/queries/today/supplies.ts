@@ -34,9 +34,10 @@ function titleOf({ name, state, advice }: Item): TodayText {
   return [`Order ${name} by `, { day: advice.orderByDay }];
 }
 
-function lastsWords({ advice, use, unit }: Item): TodayText {
+function lastsWords({ advice, use, unit, state }: Item): TodayText {
   if (advice.daysLeft === null || use.perDay === null) return ['Nothing is on hand'];
   const perDay = Number(use.perDay.toPrecision(3));
+  if (state === 'out') return [`It goes at ${perDay} ${unit} a day`];
   return [`${daysWord(Math.floor(advice.daysLeft))} left at ${perDay} ${unit} a day`];
 }
 
