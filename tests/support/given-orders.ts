@@ -1,4 +1,5 @@
 import type { PaymentService, CheckoutRequest, RefundRequest } from '../../server/outside/payment-service.ts';
+import { availableByBatch } from '../../server/queries/availability.ts';
 import { inWrite, type Actor, type Write } from '../../server/db/write.ts';
 import { confirmPayment } from '../../server/services/confirm-payment.ts';
 import { createListing } from '../../server/services/listing-service.ts';
@@ -8,7 +9,8 @@ import { placeOrder } from '../../server/services/place-order.ts';
 import { startPayment } from '../../server/services/start-payment.ts';
 import type { LogCut } from '../../shared/contracts/stock.ts';
 import type { ShopOrder } from '../../shared/contracts/shop.ts';
-import { DomainError } from '../../shared/errors.ts';
+import { dayOf } from '../../shared/domain/days.ts';
+import type { DomainError } from '../../shared/errors.ts';
 import { givenColony, givenLine, givenSaleableBatch } from './given-stock.ts';
 import type { TestFarm } from './start-farm.ts';
 
@@ -22,7 +24,7 @@ export interface Offered {
   codes: string[];
 }
 
-/** A line with one saleable batch of large frags, offered at a price. */
+/** A line with one saleable batch, offered at a price in the grade that it has on the farm's day: usually large. */
 export function givenOffer(
   farm: TestFarm,
   fields: { code?: string; tradeName?: string; pieces?: number; priceMinor?: number } = {},
@@ -31,7 +33,9 @@ export function givenOffer(
   const lineId = givenLine(farm, { ...(code ? { code } : {}), ...(tradeName ? { tradeName } : {}) });
   const colonyId = givenColony(farm, { lineId });
   const batch = givenSaleableBatch(farm, { colonyId, pieces });
-  const listing = farm.write((write) => createListing(write, { lineId, grade: 'large', priceMinor }));
+  const day = dayOf(farm.deps.clock.now(), 'Europe/Lisbon');
+  const grade = availableByBatch(farm.db, { lineId, day })[0]?.grade ?? 'large';
+  const listing = farm.write((write) => createListing(write, { lineId, grade, priceMinor }));
   const { batchId, batchCode, plugs } = batch;
   return { lineId, colonyId, listingId: listing.id, batchId, batchCode, codes: plugs.map((plug) => plug.code) };
 }
