@@ -11,7 +11,7 @@ export default defineConfig({
   resolve: { alias: { '@shared': folder('shared'), '@': folder('src') } },
   // The server puts a fresh nonce in place of this mark in every page that it sends.
   html: { cspNonce: '__CSP_NONCE__' },
-  server: { proxy: { '/api': server, '/p': server } },
+  server: { proxy: { '/api': server } },
   build: {
     outDir: 'dist',
     target: 'es2022',

@@ -1,5 +1,5 @@
 import { type Ref, type ShallowRef, onScopeDispose, ref, shallowRef } from 'vue';
-import { type BarcodeReader, makeBarcodeReader } from '@/scanning/barcode-reader.ts';
+import type { BarcodeReader } from '@/scanning/barcode-reader.ts';
 import { makeRepeatFilter } from '@/scanning/repeat-filter.ts';
 
 /** What the camera does, or why it can't. */
@@ -39,7 +39,7 @@ export function useBarcodeScanner({ onCode }: { onCode: (text: string) => void }
     state.value = 'starting';
     const thisRun = ++run;
     try {
-      const [reader, opened] = await Promise.all([makeBarcodeReader(), openCamera()]);
+      const [reader, opened] = await Promise.all([loadReader(), openCamera()]);
       if (thisRun !== run || !video.value) {
         closeStream(opened);
         return;
@@ -95,6 +95,12 @@ export function useBarcodeScanner({ onCode }: { onCode: (text: string) => void }
 
   onScopeDispose(stop);
   return { video, state, hasLamp, lampIsOn, start, stop, switchLamp };
+}
+
+/** Fetched when a camera starts: nobody who types needs its engine. */
+async function loadReader(): Promise<BarcodeReader> {
+  const { makeBarcodeReader } = await import('@/scanning/barcode-reader.ts');
+  return makeBarcodeReader();
 }
 
 function openCamera(): Promise<MediaStream> {
