@@ -127,9 +127,18 @@ function colonyPlaces(db: Db, matches: SQL | undefined) {
 }
 
 function toColony({ colony, line, cuts: cutCount, ...place }: ColonyPlace, today: Day): Colony {
-  const { lineId: _line, rackId: _rack, ...fields } = colony;
   return {
-    ...fields,
+    id: colony.id,
+    code: colony.code,
+    sizeMm: colony.sizeMm,
+    health: colony.health,
+    restDays: colony.restDays,
+    lastCutOn: colony.lastCutOn,
+    acquiredOn: colony.acquiredOn,
+    acquiredFrom: colony.acquiredFrom,
+    createdAt: colony.createdAt,
+    retiredAt: colony.retiredAt,
+    version: colony.version,
     line: toLineRef(line),
     rack: toRackRef(place),
     nextCutFrom: nextCutFrom(colony.lastCutOn, colony.restDays),

@@ -14,13 +14,13 @@ interface Sums {
 /** Mean and spread of what was measured in the systems that a plug stood in, while it stood there; canonical units. */
 export function waterLived(db: Db, stays: readonly Stay[], now: number): PlugPage['water'] {
   const spans = stays.flatMap(({ systemId, from, to }) =>
-    systemId === null ? [] : [{ systemId, from, to: to ?? now }],
+    systemId === null ? [] : [{ systemId, from, to: to ?? now + 1 }],
   );
   const rows = db.all<Sums>(sql`
     SELECT r.parameter, count(*) AS readings, sum(r.value) AS sum, sum(r.value * r.value) AS squares
     FROM json_each(${JSON.stringify(spans)}) AS span
     JOIN reading AS r ON r.system_id = json_extract(span.value, '$.systemId')
-      AND r.taken_at >= json_extract(span.value, '$.from') AND r.taken_at <= json_extract(span.value, '$.to')
+      AND r.taken_at >= json_extract(span.value, '$.from') AND r.taken_at < json_extract(span.value, '$.to')
     GROUP BY r.parameter`);
   const found = new Map(rows.map((row) => [row.parameter, row]));
   return PARAMETERS.flatMap(({ code }) => {

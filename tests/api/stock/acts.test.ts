@@ -1,6 +1,6 @@
 import { eq } from 'drizzle-orm';
 import { beforeEach, describe, expect, it } from 'vitest';
-import { auditLog, plugs, sizeReadings, stockMovements, withholds } from '../../../server/db/schema/index.ts';
+import { auditLog, plugs, stockMovements, withholds } from '../../../server/db/schema/index.ts';
 import { rackPlace } from '../../../server/queries/places.ts';
 import {
   givenCut,
@@ -263,46 +263,6 @@ describe('acts on plugs', () => {
       const reply = await postOnce(grower, '/api/stock/withholds', { reason: 'Pest', ...body });
 
       expect(reply.status).toBe(400);
-    });
-  });
-
-  describe('measuring', () => {
-    it('when a sample of a batch is measured, its mean is the size from then on, and growth goes on from it', async () => {
-      farm.wait(14 * DAY_MS);
-      const client = await farm.as('grower');
-
-      const reply = await postOnce(client, '/api/stock/measurements', { batchId, sizesMm: [30, 31, 35] });
-
-      expect(reply.body.meanMm).toBe(32);
-      expect((await client.get(`/api/batches/${batchId}`)).body.size).toMatchObject({
-        mm: 32,
-        measuredOn: '2026-03-16',
-      });
-      farm.wait(7 * DAY_MS);
-      const later = await (await farm.as('grower')).get(`/api/batches/${batchId}`);
-      expect(later.body.size.mm).toBeCloseTo(33.8, 9);
-    });
-
-    it('when one plug is measured, its own page shows it, and taking it back leaves the expected size', async () => {
-      const made = await postOnce(grower, '/api/stock/measurements', { plugCode: first(), sizesMm: [42] });
-      expect((await grower.get(`/api/plugs/${first()}`)).body.size).toMatchObject({ mm: 42, grade: 'large' });
-
-      await grower.delete(`/api/stock/measurements/${made.body.ids[0]}`);
-
-      expect((await grower.get(`/api/plugs/${first()}`)).body.size).toMatchObject({ mm: 25, grade: 'frag' });
-      expect(farm.db.select().from(sizeReadings).all()).toEqual([]);
-    });
-
-    it.each([
-      ['no size', { sizesMm: [] }],
-      ['zero', { sizesMm: [0] }],
-      ['text', { sizesMm: ['12'] }],
-      ['a time before the cut', { sizesMm: [20], at: Date.parse('2026-02-20T12:00:00Z') }],
-    ])('when %s is given, refuses', async (_what, body) => {
-      const reply = await postOnce(grower, '/api/stock/measurements', { batchId, ...body });
-
-      expect(reply.status).toBe(400);
-      expect(farm.db.select().from(sizeReadings).all()).toEqual([]);
     });
   });
 });
