@@ -9,14 +9,18 @@ export interface FieldChange {
 export function changesBetween(before: unknown, after: unknown): FieldChange[] {
   const old = flattened(before);
   const fresh = flattened(after);
-  return [...new Set([...old.keys(), ...fresh.keys()])]
-    .map((field) => ({ field, before: old.get(field) ?? null, after: fresh.get(field) ?? null }))
-    .filter((change) => change.before !== change.after);
+  return (
+    [...new Set([...old.keys(), ...fresh.keys()])]
+      .map((field) => ({ field, before: old.get(field) ?? null, after: fresh.get(field) ?? null }))
+      // The count of edits changes with every edit and tells nothing.
+      .filter((change) => change.field !== 'version' && change.before !== change.after)
+  );
 }
 
-/** "user.signed_in" as "user signed in". */
+/** "user.signed_in" as "User signed in". */
 export function actionWords(action: string): string {
-  return action.replaceAll(/[._]/g, ' ');
+  const words = action.replaceAll(/[._]/g, ' ');
+  return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
 function flattened(value: unknown, path = ''): Map<string, string> {
@@ -25,4 +29,10 @@ function flattened(value: unknown, path = ''): Map<string, string> {
   return new Map(
     Object.entries(value).flatMap(([key, part]) => [...flattened(part, path === '' ? key : `${path}.${key}`)]),
   );
+}
+
+/** What people call the record: its code, number, name or address; empty where the log holds none of them. */
+export function recordName(before: unknown, after: unknown): string {
+  const known = flattened(after ?? before);
+  return known.get('code') ?? known.get('number') ?? known.get('name') ?? known.get('email') ?? '';
 }
