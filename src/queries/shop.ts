@@ -1,6 +1,6 @@
 import { keepPreviousData, useInfiniteQuery, useQuery, useQueryClient } from '@tanstack/vue-query';
 import { type MaybeRefOrGetter, computed, toValue } from 'vue';
-import { type PlaceOrder, shopEndpoints } from '@shared/contracts/shop.ts';
+import { type PlaceOrder, shopEndpoints, type ShopOrder } from '@shared/contracts/shop.ts';
 import { callApi } from '@/api/call-api.ts';
 
 const shopKeys = {
@@ -28,12 +28,12 @@ export function useShopOrders() {
   });
 }
 
-/** One order of the own store. `pollMs`: asks again until it is null. */
-export function useShopOrder(id: MaybeRefOrGetter<string>, pollMs: MaybeRefOrGetter<number | null> = null) {
+/** One order of the own store. `poll` says after how many milliseconds to ask again, for the order as it is. */
+export function useShopOrder(id: MaybeRefOrGetter<string>, poll: (order: ShopOrder) => number | false = () => false) {
   return useQuery({
     queryKey: computed(() => shopKeys.order(toValue(id))),
     queryFn: ({ signal }) => callApi(shopEndpoints.show, { params: { id: toValue(id) }, signal }),
-    refetchInterval: () => toValue(pollMs) ?? false,
+    refetchInterval: ({ state }) => (state.data ? poll(state.data) : false),
   });
 }
 
