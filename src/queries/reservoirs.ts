@@ -3,6 +3,8 @@ import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { reservoirEndpoints } from '@shared/contracts/reservoirs.ts';
 import { callApi } from '@/api/call-api.ts';
 
+const EVENTS_AT_ONCE = 15;
+
 const reservoirKeys = {
   list: (systemId: string | undefined) => ['water', 'reservoirs', systemId ?? 'all'] as const,
   one: (reservoirId: string) => ['water', 'reservoir', reservoirId] as const,
@@ -34,7 +36,7 @@ export function useReservoirEvents(reservoirId: MaybeRefOrGetter<string>) {
     queryFn: ({ pageParam, signal }) =>
       callApi(reservoirEndpoints.events, {
         params: { id: toValue(reservoirId) },
-        query: pageParam === null ? {} : { cursor: pageParam },
+        query: { limit: EVENTS_AT_ONCE, ...(pageParam === null ? {} : { cursor: pageParam }) },
         signal,
       }),
     initialPageParam: null as string | null,
