@@ -1,7 +1,9 @@
 import { lt } from 'drizzle-orm';
 import { idempotencyKeys } from '../db/schema/index.ts';
+import { inWrite, SYSTEM } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import { deleteExpiredSessions } from '../http/session.ts';
+import { forgetOldTries } from '../services/sign-in-slowdown.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
 import { sendDueMails } from './send-due-mails.ts';
@@ -24,6 +26,7 @@ const JOBS: readonly Job[] = [
   { name: 'send refunds', everyMs: 3 * SECOND, run: sendRefunds },
   { name: 'delete expired sessions', everyMs: 3600 * SECOND, run: deleteExpiredSessions },
   { name: 'forget old request keys', everyMs: 3600 * SECOND, run: forgetOldRequestKeys },
+  { name: 'forget old sign-in tries', everyMs: 3600 * SECOND, run: (deps) => inWrite(deps, SYSTEM, forgetOldTries) },
   { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },
 ];
 
