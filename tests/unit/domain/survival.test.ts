@@ -67,6 +67,6 @@ describe('survivalCurve', () => {
   });
 });
 
-function near(value: number | undefined): unknown {
+function near(value: number | null | undefined): unknown {
   return expect.closeTo(value ?? NaN, 10);
 }
