@@ -41,9 +41,18 @@ export function plugLife(
     ...withholdPins(db, plug.code),
   ];
   return {
-    segments: stays.flatMap((stay) => segmentsOf(stay, healedAt)),
+    segments: joined(stays.flatMap((stay) => segmentsOf(stay, healedAt))),
     pins: pins.sort((a, b) => a.at - b.at),
   };
+}
+
+/** A move within a system does not break the line. */
+function joined(segments: readonly Segment[]): Segment[] {
+  return segments.reduce<Segment[]>((line, segment) => {
+    const last = line.at(-1);
+    const goesOn = last !== undefined && last.kind === segment.kind && last.label === segment.label;
+    return goesOn ? [...line.slice(0, -1), { ...last, to: segment.to }] : [...line, segment];
+  }, []);
 }
 
 /** A stay that healing ended in is two segments. */
