@@ -1,5 +1,5 @@
 import { eq } from 'drizzle-orm';
-import { standingAfter } from '../../shared/domain/reservoir-state.ts';
+import { standingAfter, type ReservoirStanding } from '../../shared/domain/reservoir-state.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { reservoirEvents, reservoirs } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
@@ -22,7 +22,8 @@ export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent)
     })
     .returning()
     .get();
-  bringInStep(write, reservoir);
+  // It is the newest event, so what stands follows from the row alone, however long the history.
+  stand(write, reservoir, standingAfter([row], reservoir.volumeL, reservoir));
   write.audit({ action: `reservoir.${row.kind}`, entity: 'reservoir', entityId: reservoir.id, after: row });
   return row;
 }
@@ -30,7 +31,7 @@ export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent)
 /** Takes one event away and brings the reservoir back to what held before it. */
 export function removeEvent(write: Write, reservoir: ReservoirRow, event: ReservoirEventRow): void {
   write.tx.delete(reservoirEvents).where(eq(reservoirEvents.id, event.id)).run();
-  bringInStep(write, reservoir);
+  stand(write, reservoir, standingAfter(eventsInOrder(write.tx, reservoir.id), reservoir.volumeL));
   write.audit({ action: 'reservoir.undo', entity: 'reservoir', entityId: reservoir.id, before: event });
 }
 
@@ -41,11 +42,14 @@ export function assertFits(reservoir: ReservoirRow, levelL: number, field: strin
   throw new DomainError('input.invalid', message, { fields: [{ path: field, message }] });
 }
 
-function bringInStep(write: Write, reservoir: ReservoirRow): void {
-  const standing = standingAfter(eventsInOrder(write.tx, reservoir.id), reservoir.volumeL);
+function stand(
+  write: Write,
+  reservoir: ReservoirRow,
+  { state, levelL, alkalinityMeqL, readyAt }: ReservoirStanding,
+): void {
   write.tx
     .update(reservoirs)
-    .set({ ...standing, version: reservoir.version + 1 })
+    .set({ state, levelL, alkalinityMeqL, readyAt, version: reservoir.version + 1 })
     .where(eq(reservoirs.id, reservoir.id))
     .run();
 }

@@ -23,11 +23,19 @@ export const SETTLING_MS = 2 * 3_600_000;
 /** Below this part of its volume a reservoir that comes off is spent: the rest is sludge (common practice, no source). */
 const SPENT_BELOW = 0.1;
 
+const EMPTY: ReservoirStanding = { state: 'standby', levelL: 0, alkalinityMeqL: 0, readyAt: null };
+
 /**
  * How a reservoir stands after everything that happened to it, in order. An empty history is an empty reservoir.
+ *
+ * @param before how it stood before these steps; an empty reservoir when left out
  */
-export function standingAfter(steps: readonly ReservoirStep[], volumeL: number): ReservoirStanding {
-  let standing: ReservoirStanding = { state: 'standby', levelL: 0, alkalinityMeqL: 0, readyAt: null };
+export function standingAfter(
+  steps: readonly ReservoirStep[],
+  volumeL: number,
+  before: ReservoirStanding = EMPTY,
+): ReservoirStanding {
+  let standing: ReservoirStanding = { ...before };
   for (const step of steps) {
     const { levelL, alkalinityMeqL } = step;
     standing = { ...standing, levelL, alkalinityMeqL };
