@@ -1,4 +1,5 @@
 import express, { type Express } from 'express';
+import { useFieldMessages } from '../shared/contracts/field-messages.ts';
 import { Api } from './http/api.ts';
 import { serveClient } from './http/client-pages.ts';
 import { errorHandler, unknownRoute } from './http/error-handler.ts';
@@ -14,6 +15,7 @@ import type { Deps } from './deps.ts';
 
 /** Builds the whole application on what it is given; it does not listen. */
 export function createApp(deps: Deps, sessionSecret: string): { app: Express; api: Api } {
+  useFieldMessages();
   const app = express();
   app.disable('x-powered-by');
   app.set('trust proxy', deps.config.trustProxy);

@@ -1,4 +1,4 @@
-import { and, eq, sql, type SQL } from 'drizzle-orm';
+import { eq, sql, type SQL } from 'drizzle-orm';
 import { z } from 'zod';
 import type { Page } from '../../shared/contracts/common.ts';
 import type { Batch, ListBatches } from '../../shared/contracts/stock.ts';
@@ -58,9 +58,9 @@ export function toBatch({ batch, line, cut, colonyCode, size, counts, available 
   };
 }
 
-/** Every plug of a batch with where it is: 'rack', 'bench', 'order' or how it left. */
+/** Every plug of a batch with where it is: 'rack', 'bench', 'order' or how it left. @throws {DomainError} `record.not_found` */
 export function listBatchPlugs(db: Db, batchId: string) {
-  return db
+  const rows = db
     .select({
       code: plugs.code,
       number: plugs.number,
@@ -72,9 +72,11 @@ export function listBatchPlugs(db: Db, batchId: string) {
     .innerJoin(batches, eq(batches.id, plugs.batchId))
     .leftJoin(stockAccounts, eq(stockAccounts.id, plugs.accountId))
     .leftJoin(racks, eq(racks.id, stockAccounts.rackId))
-    .where(and(eq(plugs.batchId, batchId)))
+    .where(eq(plugs.batchId, batchId))
     .orderBy(plugs.number)
     .all();
+  // A batch has as many plugs as pieces, so never none.
+  return rows.length > 0 ? rows : missing();
 }
 
 function candidates(db: Db, query: ListBatches): Candidate[] {

@@ -7,6 +7,8 @@ export function fieldMessage(issue: RawIssue): string | undefined {
   switch (issue.code) {
     case 'invalid_type':
       return wrongType(issue.expected, issue.input);
+    case 'invalid_union':
+      return 'Check this value.';
     case 'invalid_value':
       return 'Choose one of the offered values.';
     case 'too_small':

@@ -14,7 +14,7 @@ export const SYSTEM_KIND_LABELS: Record<SystemKind, string> = {
 
 export const parameterCode = z.enum(PARAMETER_CODES, 'Choose one of the parameters.');
 /** Litres that a farm could have. */
-export const litres = z.number().positive('Above zero.').max(10_000_000, 'At most 10,000,000 L.');
+export const litres = z.number().min(0.001, 'At least 0.001 L.').max(10_000_000, 'At most 10,000,000 L.');
 
 /** Where a parameter should stay, in its canonical unit. */
 export const TargetBand = z.strictObject({ parameter: parameterCode, low: z.number(), high: z.number() });
