@@ -45,6 +45,15 @@ export default defineConfig({
       {
         extends: true,
         test: {
+          name: 'simulation',
+          include: ['tests/simulation/**/*.test.ts'],
+          testTimeout: 300_000,
+          hookTimeout: 300_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
           name: 'browser',
           include: ['tests/browser/**/*.test.ts'],
           globalSetup: ['tests/browser/global-setup.ts'],

@@ -18,7 +18,7 @@ const TISSUE: Record<GrowthFormCode, { area: number; rate: number }> = {
 };
 
 /** The inside of a mother is shaded and grows slowly. */
-const MOTHER_PART = 0.45;
+const MOTHER_PART = 0.8;
 /** Coralline algae and what precipitates on pumps and walls, meq/L a day. */
 const WALLS = 0.02;
 

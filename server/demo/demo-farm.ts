@@ -33,8 +33,7 @@ import { planWater, startLimewater } from './water-days.ts';
 import { waterTests } from './water-tests.ts';
 import { timeOn, type World } from './world.ts';
 
-/** Eighteen months. */
-const HISTORY_DAYS = 546;
+const EIGHTEEN_MONTHS = 546;
 
 export interface DemoFarmOptions {
   /** Where the database is written; what was there is lost. */
@@ -43,6 +42,8 @@ export interface DemoFarmOptions {
   now: number;
   /** The same seed and end give the same farm, but for the salt of the password's hash. */
   seed: number;
+  /** Length of the history; eighteen months when left out. A short one lacks what happened before it. */
+  days?: number;
   log?: (line: string) => void;
 }
 
@@ -52,7 +53,8 @@ export interface DemoFarmOptions {
  *
  * @returns what was really so, for estimates to be compared with
  */
-export async function makeDemoFarm({ file, now, seed, log = () => undefined }: DemoFarmOptions): Promise<DemoTruth> {
+export async function makeDemoFarm(options: DemoFarmOptions): Promise<DemoTruth> {
+  const { file, now, seed, days = EIGHTEEN_MONTHS, log = () => undefined } = options;
   // Made in memory and written at once in the end: it is faster, and an interruption leaves nothing half made.
   const { db, sqlite } = openDatabase(':memory:');
   cacheStatements(sqlite);
@@ -71,7 +73,7 @@ export async function makeDemoFarm({ file, now, seed, log = () => undefined }: D
   try {
     await migrateDatabase(db, sqlite, ':memory:', now);
     const passwordHash = await hashPassword(DEMO_PASSWORD);
-    const world = furnish(deps, clock, passwordHash, { now, seed, chance });
+    const world = furnish(deps, clock, passwordHash, { now, seed, chance, length: days });
     live(world, log);
     finish(world, clock);
     writeFileSync(file, sqlite.serialize());
@@ -94,10 +96,10 @@ function furnish(
   deps: Deps,
   clock: { at: number },
   passwordHash: string,
-  { now, seed, chance }: Pick<World, 'now' | 'chance'> & { seed: number },
+  { now, seed, chance, length }: Pick<World, 'now' | 'chance'> & { seed: number; length: number },
 ): World {
   const lastDay = dayOf(now - LAST_HOURS, FARM.timeZone);
-  const firstDay = addDays(lastDay, -HISTORY_DAYS);
+  const firstDay = addDays(lastDay, -length);
   const days = eachDay(firstDay, addDays(lastDay, -1));
   clock.at = timeOn(firstDay, 7 * 60);
   return deps.sqlite.transaction(() => {

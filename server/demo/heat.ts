@@ -5,7 +5,7 @@ export const HEAT_SYSTEM = 'C';
 export const HEAT_FROM = 236;
 export const HEAT_DAYS = 4;
 /** Part of the pieces that it killed within the days after. */
-export const HEAT_LOSSES = 0.12;
+export const HEAT_LOSSES = 0.2;
 /** How much calcification fell, and the days that it took to come back. */
 const SLACK = 0.45;
 const RECOVERY_DAYS = 28;

@@ -10,7 +10,7 @@ import { offersNow, order, pack, pay, pick, settleRefundsLater } from './sales.t
 import { lose, place, type StockWork } from './stock-days.ts';
 import { lookAtLevel, startDay } from './water-days.ts';
 import type { WaterTests } from './water-tests.ts';
-import type { DemoPlug, DemoRack, World } from './world.ts';
+import { timeOn, type DemoPlug, type DemoRack, type World } from './world.ts';
 
 const MINUTE = 60_000;
 const HOUR = 60 * MINUTE;
@@ -164,8 +164,10 @@ function planLastRound(world: World, { tests, stock, chance }: Cast): void {
   });
 }
 
+/** Puts an act so long before the end on the agenda; a shorter history than that goes without it. */
 function put(world: World, before: number, actor: Actor, act: (write: Write) => void): void {
-  world.agenda.put(Math.round(world.now - before), actor, act);
+  const at = Math.round(world.now - before);
+  if (at > timeOn(world.truth.firstDay, 12 * 60)) world.agenda.put(at, actor, act);
 }
 
 function buyerOf({ buyers }: World, index: number): Actor {

@@ -22,7 +22,8 @@ export function reviewSupplies(world: World, write: Write, index: number, day: D
   for (const item of Object.values(world.items)) {
     const toEnd = daysToEnd(world, index);
     if (item.ordered || (item.key === 'lime' && toEnd < LAST_LIME_DAYS + item.leadTimeDays + 7)) continue;
-    const perDay = usedPerDay(world, item, write.now) ?? item.usePerDay;
+    // A quiet season is no reason to run out in the next one.
+    const perDay = Math.max(usedPerDay(world, item, write.now) ?? 0, item.usePerDay);
     const onHand = onHandOf(world, item);
     if (onHand > perDay * (item.leadTimeDays + item.safetyDays + 7)) continue;
     item.ordered = true;
