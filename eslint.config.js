@@ -60,7 +60,7 @@ export default ts.config(
       'vue/require-default-prop': 'off',
     },
   },
-  { files: ['**/*.{js,mjs}'], languageOptions: { globals: globals.node } },
+  { files: ['**/*.{js,mjs,cjs}'], languageOptions: { globals: globals.node } },
   noImports(
     ['shared/**/*.ts'],
     [

@@ -1,6 +1,5 @@
 import type { Request } from 'express';
 import type { Role } from '../../shared/permissions.ts';
-import { DomainError } from '../../shared/errors.ts';
 import type { Actor } from '../db/write.ts';
 
 /** The signed-in person of a request, loaded fresh from the database for each one. */
@@ -18,11 +17,4 @@ export function setCaller(request: Request, caller: Caller): void {
 
 export function callerOf(request: Request): Caller | null {
   return callers.get(request) ?? null;
-}
-
-/** @throws {DomainError} `session.required` where nobody is signed in */
-export function requireCaller(request: Request): Caller {
-  const caller = callerOf(request);
-  if (!caller) throw new DomainError('session.required', 'Sign in to go on.');
-  return caller;
 }

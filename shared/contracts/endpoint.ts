@@ -27,17 +27,12 @@ export interface Endpoint {
 }
 
 type Parsed<S> = S extends z.ZodType ? z.output<S> : undefined;
-type Given<S> = S extends z.ZodType ? z.input<S> : undefined;
 
 export type ParamsOf<E extends Endpoint> = Parsed<E['params']>;
 export type QueryOf<E extends Endpoint> = Parsed<E['query']>;
 export type BodyOf<E extends Endpoint> = Parsed<E['body']>;
 /** What a handler returns and a client receives. */
 export type ResponseOf<E extends Endpoint> = E['response'] extends z.ZodType ? z.output<E['response']> : void;
-/** What a client may send: defaults left out. */
-export type GivenParams<E extends Endpoint> = Given<E['params']>;
-export type GivenQuery<E extends Endpoint> = Given<E['query']>;
-export type GivenBody<E extends Endpoint> = Given<E['body']>;
 
 /** Fills `:name` parts of an endpoint's path. */
 export function pathOf(endpoint: Endpoint, params: Readonly<Record<string, unknown>> = {}): string {

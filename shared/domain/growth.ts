@@ -1,7 +1,7 @@
 import { DomainError } from '../errors.ts';
 import { addDays, daysBetween, type Day } from './days.ts';
 
-export { GROWTH_FORMS, type GrowthForm, type GrowthFormCode } from './growth-forms.ts';
+export { GROWTH_FORMS, type GrowthFormCode } from './growth-forms.ts';
 
 /** A size that is more than ten years away is never reached. */
 const LONGEST_DAYS = 3652;

@@ -1,6 +1,6 @@
 import { DomainError } from '../errors.ts';
 
-export { LOSS_CAUSES, LOSS_SEEN, type LossCause, type LossSeen } from './losses.ts';
+export { LOSS_CAUSES, LOSS_SEEN } from './losses.ts';
 
 export const ACCOUNT_KINDS = ['cut', 'rack', 'order', 'sold', 'lost', 'culled', 'recut', 'given', 'count'] as const;
 

@@ -3,7 +3,7 @@ import { MS_PER_DAY } from './days.ts';
 import { CALCIUM_HYDROXIDE_G_PER_MOL } from './limewater.ts';
 import { assertPurity } from './ranges.ts';
 
-export { reorderAdvice, safetyStock, type ReorderAdvice, type ReorderInputs } from './reorder.ts';
+export { reorderAdvice, safetyStock, type ReorderInputs } from './reorder.ts';
 
 /** What is left of a received lot and what that rest has cost. */
 export interface SupplyLot {

@@ -18,7 +18,6 @@ export const ITEM_UNITS = ['g', 'mL', 'piece'] as const;
 export type ItemUnit = (typeof ITEM_UNITS)[number];
 
 export const USE_CAUSES = ['refill', 'dose', 'water_change', 'cut', 'packing', 'count'] as const;
-export type UseCause = (typeof USE_CAUSES)[number];
 
 /** How urgent a supply is: `out`, `order_now` (the last day to order is here), `order_soon` (within a week), else `ok`. */
 export const SUPPLY_STATES = ['ok', 'order_soon', 'order_now', 'out'] as const;

@@ -11,13 +11,13 @@ export interface SeriesPoint {
  * @param points in order of time
  * @param most how many may come back; 2 or more
  */
-export function thinSeries(points: readonly SeriesPoint[], most: number): SeriesPoint[] {
+export function thinSeries<Point extends SeriesPoint>(points: readonly Point[], most: number): Point[] {
   const first = points[0];
   const last = points.at(-1);
   if (points.length <= most || !first || !last) return [...points];
   const parts = Math.floor(most / 2);
   const width = (last.at - first.at) / parts || 1;
-  const extremes = new Map<number, { low: SeriesPoint; high: SeriesPoint }>();
+  const extremes = new Map<number, { low: Point; high: Point }>();
   for (const point of points) {
     const part = Math.min(parts - 1, Math.floor((point.at - first.at) / width));
     const known = extremes.get(part);

@@ -3,7 +3,7 @@ import { LENGTH, LIQUID, MASS, VOLUME } from './units/amounts.ts';
 import type { Unit } from './units/linear.ts';
 import { ALKALINITY, MAJOR_ION, NITRATE, PH, PHOSPHATE, SALINITY, TEMPERATURE } from './units/water.ts';
 
-export { CACO3_MG_PER_MEQ, MEQ_PER_DKH } from './units/water.ts';
+export { MEQ_PER_DKH } from './units/water.ts';
 export { PARAMETERS, PARAMETER_CODES, type Parameter, type ParameterCode } from './units/parameters.ts';
 export type { Unit } from './units/linear.ts';
 
@@ -24,9 +24,6 @@ export const UNITS = {
 } as const satisfies Record<string, Record<string, Unit>>;
 
 export type Quantity = keyof typeof UNITS;
-
-/** The names of the units of one quantity, such as 'meq/L' | 'dKH' | 'ppm'. */
-export type UnitOf<Q extends Quantity> = keyof (typeof UNITS)[Q] & string;
 
 /** The names of a quantity's units, canonical first. */
 export function unitsOf(quantity: Quantity): string[] {

@@ -5,7 +5,7 @@ import { multiple, type Unit } from './linear.ts';
 export const MEQ_PER_DKH = 20 / 56.077;
 
 /** Grams of calcium carbonate in one equivalent, so mg/L as CaCO₃ for each meq/L (CIAAW weights, 100.086 / 2). */
-export const CACO3_MG_PER_MEQ = 50.043;
+const CACO3_MG_PER_MEQ = 50.043;
 
 export const ALKALINITY = {
   'meq/L': multiple('meq/L', 1, 2),
