@@ -48,7 +48,7 @@ export function readingWriter(
   );
   const audit = sqlite.prepare(
     `INSERT INTO audit_log (at, actor_id, actor_name, action, entity, entity_id, after)
-     VALUES (?, ?, ?, 'reading.log', 'reading', ?, ?)`,
+     VALUES (?, ?, ?, 'reading.logged', 'reading', ?, ?)`,
   );
   return (reading, by, systemCode) => {
     const row = { id: newId(), ...reading, by: by.name };

@@ -87,7 +87,9 @@ function rackMoves(db: Db, rackIds: readonly string[]): Map<string, RackMove[]> 
       fromSystemId: sql<string>`json_extract(${auditLog.before}, '$.systemId')`,
     })
     .from(auditLog)
-    .where(and(eq(auditLog.entity, 'rack'), eq(auditLog.action, 'rack.move'), inArray(auditLog.entityId, [...rackIds])))
+    .where(
+      and(eq(auditLog.entity, 'rack'), eq(auditLog.action, 'rack.moved'), inArray(auditLog.entityId, [...rackIds])),
+    )
     .orderBy(asc(auditLog.id))
     .all();
   for (const { rackId, ...move } of rows) moves.set(rackId, [...(moves.get(rackId) ?? []), move]);

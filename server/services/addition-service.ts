@@ -30,7 +30,7 @@ export function logWaterChange(write: Write, { saltItemId, at: givenAt, ...input
     useSupply(write, { itemId: salt.id, quantity: input.saltG, ...cause });
   }
   const after = changeAsAddition(row);
-  write.audit({ action: 'water_change.log', entity: 'water_change', entityId: row.id, after: row });
+  write.audit({ action: 'water_change.logged', entity: 'water_change', entityId: row.id, after: row });
   return after;
 }
 
@@ -39,7 +39,7 @@ export function undoWaterChange(write: Write, changeId: string): void {
   if (!before) throw gone();
   returnSupply(write, 'water_change', changeId, INSTEAD);
   write.tx.delete(waterChanges).where(eq(waterChanges.id, changeId)).run();
-  write.audit({ action: 'water_change.undo', entity: 'water_change', entityId: changeId, before });
+  write.audit({ action: 'water_change.undone', entity: 'water_change', entityId: changeId, before });
 }
 
 /** Logs a dose of a supplement; what it brings as alkalinity follows from the strength of the item. */
@@ -57,7 +57,7 @@ export function logDose(write: Write, { at: givenAt, ...input }: LogDose): Addit
     .get();
   const cause = { cause: 'dose', causeId: row.id, systemId: system.id, at } as const;
   useSupply(write, { itemId: item.id, quantity: input.amount, ...cause });
-  write.audit({ action: 'dose.log', entity: 'dose', entityId: row.id, after: row });
+  write.audit({ action: 'dose.logged', entity: 'dose', entityId: row.id, after: row });
   return doseAsAddition(row, item, system);
 }
 
@@ -66,7 +66,7 @@ export function undoDose(write: Write, doseId: string): void {
   if (!before) throw gone();
   returnSupply(write, 'dose', doseId, INSTEAD);
   write.tx.delete(doses).where(eq(doses.id, doseId)).run();
-  write.audit({ action: 'dose.undo', entity: 'dose', entityId: doseId, before });
+  write.audit({ action: 'dose.undone', entity: 'dose', entityId: doseId, before });
 }
 
 function gone(): DomainError {

@@ -71,7 +71,7 @@ function closeOrder(write: Write, order: OrderRow, reason: string, refundedMinor
     .run();
   queueMail(write, 'order-cancelled', storeRow(write.tx, order.storeId).email, { orderId: order.id, refundedMinor });
   write.audit({
-    action: 'order.cancel',
+    action: 'order.cancelled',
     entity: 'order',
     entityId: order.id,
     before: { state: order.state },

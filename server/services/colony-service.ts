@@ -22,7 +22,7 @@ export function createColony(write: Write, input: CreateColony): Colony {
     .values({ id: write.newId(), ...input, restDays: input.restDays ?? paceOf(line).restDays, createdAt: write.now })
     .returning()
     .get();
-  write.audit({ action: 'colony.create', entity: 'colony', entityId: row.id, after: row });
+  write.audit({ action: 'colony.created', entity: 'colony', entityId: row.id, after: row });
   return showColony(write.tx, row.id, write.now);
 }
 
@@ -44,7 +44,7 @@ export function editColony(write: Write, id: string, ifMatch: number, input: Edi
     .where(eq(colonies.id, id))
     .returning()
     .get();
-  write.audit({ action: 'colony.edit', entity: 'colony', entityId: id, before, after });
+  write.audit({ action: 'colony.changed', entity: 'colony', entityId: id, before, after });
   return showColony(write.tx, id, write.now);
 }
 

@@ -96,7 +96,7 @@ function noteOtherAmount(write: Write, payment: PaymentRow, checkout: PaidChecko
     .where(eq(payments.id, payment.id))
     .run();
   write.audit({
-    action: 'payment.other_amount',
+    action: 'payment.amount_differed',
     entity: 'order',
     entityId: payment.orderId,
     before: { amountMinor: payment.amountMinor, currency: payment.currency },

@@ -13,7 +13,7 @@ export function createLine(write: Write, input: CreateLine): Line {
     .values({ id: write.newId(), ...input, createdAt: write.now })
     .returning()
     .get();
-  write.audit({ action: 'line.create', entity: 'line', entityId: row.id, after: row });
+  write.audit({ action: 'line.created', entity: 'line', entityId: row.id, after: row });
   return toLine(row);
 }
 
@@ -32,6 +32,6 @@ export function editLine(write: Write, id: string, ifMatch: number, input: EditL
     .where(eq(lines.id, id))
     .returning()
     .get();
-  write.audit({ action: 'line.edit', entity: 'line', entityId: id, before, after });
+  write.audit({ action: 'line.changed', entity: 'line', entityId: id, before, after });
   return toLine(after);
 }

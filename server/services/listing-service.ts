@@ -31,7 +31,7 @@ export function createListing(write: Write, input: CreateListing): Listing {
     .returning()
     .get();
   const after = shown(write, row.id);
-  write.audit({ action: 'listing.create', entity: 'listing', entityId: row.id, after });
+  write.audit({ action: 'listing.created', entity: 'listing', entityId: row.id, after });
   return after;
 }
 
@@ -46,7 +46,7 @@ export function editListing(write: Write, id: string, ifMatch: number, edit: Edi
     .where(eq(listings.id, id))
     .run();
   const after = shown(write, id);
-  write.audit({ action: 'listing.edit', entity: 'listing', entityId: id, before, after });
+  write.audit({ action: 'listing.changed', entity: 'listing', entityId: id, before, after });
   return after;
 }
 

@@ -71,7 +71,7 @@ export function logCut(write: Write, input: LogCut): LoggedCut {
   markCut(write, colony, input.cutOn);
 
   write.audit({
-    action: 'cut.log',
+    action: 'cut.logged',
     entity: 'cut',
     entityId: cut.id,
     after: { ...input, batchCode: batch.code, colonyCode: colony.code },

@@ -39,7 +39,7 @@ export function measureStock(write: Write, input: Measure): { ids: string[]; mea
       .run();
     return id;
   });
-  write.audit({ action: 'stock.measure', entity: 'batch', entityId: batch.id, after: { ...input, ids } });
+  write.audit({ action: 'stock.measured', entity: 'batch', entityId: batch.id, after: { ...input, ids } });
   return { ids, meanMm: input.sizesMm.reduce((sum, mm) => sum + mm, 0) / input.sizesMm.length };
 }
 
@@ -51,5 +51,5 @@ export function undoMeasurement(write: Write, id: string): void {
     throw new DomainError('rule.refused', 'This is more than a day old. Ask the owner to take it back.');
   }
   write.tx.delete(sizeReadings).where(eq(sizeReadings.id, id)).run();
-  write.audit({ action: 'stock.measure_undo', entity: 'batch', entityId: reading.batchId, before: reading });
+  write.audit({ action: 'stock.measurement_undone', entity: 'batch', entityId: reading.batchId, before: reading });
 }

@@ -36,7 +36,7 @@ export function packOrder(write: Write, orderId: string, { boxes, acceptMissing 
     .where(eq(orders.id, orderId))
     .run();
   write.audit({
-    action: 'order.pack',
+    action: 'order.packed',
     entity: 'order',
     entityId: orderId,
     before: { state: order.state },

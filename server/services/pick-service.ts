@@ -58,7 +58,7 @@ export function pickPlug(write: Write, orderId: string, code: string): PickDone 
     .get();
   startPicking(write, order);
   write.audit({
-    action: 'order.pick',
+    action: 'order.plug_picked',
     entity: 'order',
     entityId: orderId,
     before: { rackCode: plug.rackCode, position: plug.position },
@@ -90,7 +90,7 @@ export function undoPick(write: Write, orderId: string, pickId: string): PickPla
   write.tx.update(picks).set({ undoneAt: write.now }).where(eq(picks.id, pickId)).run();
   holdAgain(write, found.line, found.batchId, found.pick.holdId);
   write.audit({
-    action: 'order.unpick',
+    action: 'order.plug_put_back',
     entity: 'order',
     entityId: orderId,
     before: { code: found.pick.plugCode, pickId },

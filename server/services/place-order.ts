@@ -65,7 +65,7 @@ export function placeOrder(write: Write, storeId: string | null, input: PlaceOrd
   for (const each of wanted) holdPieces(write, order.id, each);
   queueMail(write, 'order-placed', store.email, { orderId: order.id });
   write.audit({
-    action: 'order.place',
+    action: 'order.placed',
     entity: 'order',
     entityId: order.id,
     after: { number: order.number, store: store.code, totalMinor: order.totalMinor, pieces: input.lines },

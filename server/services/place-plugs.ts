@@ -41,7 +41,7 @@ export function placePlugs(write: Write, input: PlacePlugs): StockActDone {
     })),
   );
   write.audit({
-    action: 'stock.place',
+    action: 'stock.placed',
     entity: 'stock_act',
     entityId: groupId,
     before: found.map(({ code, rackCode, position }) => ({ code, rackCode, position })),

@@ -19,7 +19,7 @@ export function createRack(write: Write, input: CreateRack): Rack {
     .values({ id: write.newId(), ...input, createdAt: write.now })
     .returning()
     .get();
-  write.audit({ action: 'rack.create', entity: 'rack', entityId: row.id, after: row });
+  write.audit({ action: 'rack.created', entity: 'rack', entityId: row.id, after: row });
   return showRack(write.tx, row.id);
 }
 
@@ -52,7 +52,7 @@ export function editRack(write: Write, id: string, ifMatch: number, input: EditR
     .where(eq(racks.id, id))
     .returning()
     .get();
-  write.audit({ action: 'rack.edit', entity: 'rack', entityId: id, before, after });
+  write.audit({ action: 'rack.changed', entity: 'rack', entityId: id, before, after });
   return showRack(write.tx, id);
 }
 
@@ -73,7 +73,7 @@ export function moveRack(write: Write, id: string, { tankId }: MoveRack): Rack {
     .where(eq(racks.id, id))
     .run();
   write.audit({
-    action: 'rack.move',
+    action: 'rack.moved',
     entity: 'rack',
     entityId: id,
     before: { tankId: tank.id, systemId: system.id },

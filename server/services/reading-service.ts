@@ -30,7 +30,7 @@ export function logReadings(write: Write, input: LogReadings): Reading[] {
     return showReading(write.tx, readingId);
   });
   for (const after of logged) {
-    write.audit({ action: 'reading.log', entity: 'reading', entityId: after.id, after });
+    write.audit({ action: 'reading.logged', entity: 'reading', entityId: after.id, after });
   }
   return logged;
 }
@@ -53,7 +53,7 @@ export function editReading(write: Write, readingId: string, ifMatch: number, ed
       .run();
   });
   const after = showReading(write.tx, readingId);
-  write.audit({ action: 'reading.edit', entity: 'reading', entityId: readingId, before, after });
+  write.audit({ action: 'reading.changed', entity: 'reading', entityId: readingId, before, after });
   return after;
 }
 
@@ -61,7 +61,7 @@ export function editReading(write: Write, readingId: string, ifMatch: number, ed
 export function removeReading(write: Write, readingId: string): void {
   const before = showReading(write.tx, readingId);
   write.tx.delete(readings).where(eq(readings.id, readingId)).run();
-  write.audit({ action: 'reading.remove', entity: 'reading', entityId: readingId, before });
+  write.audit({ action: 'reading.removed', entity: 'reading', entityId: readingId, before });
 }
 
 function canonicalValues(given: LogReadings['values']) {

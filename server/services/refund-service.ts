@@ -60,7 +60,7 @@ export function addRefund(write: Write, payment: PaymentRow, amountMinor: number
     .returning()
     .get();
   write.audit({
-    action: 'refund.create',
+    action: 'refund.started',
     entity: 'order',
     entityId: payment.orderId,
     after: { refundId: row.id, amountMinor, reason },

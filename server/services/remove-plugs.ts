@@ -15,6 +15,8 @@ interface Removal {
   at: number | undefined;
 }
 
+const DONE_WORDS: Record<Removal['kind'], string> = { loss: 'lost', cull: 'culled', give: 'given' };
+
 /** Plugs that died or disappeared, with what was seen and the likely cause. */
 export function recordLoss(write: Write, { codes, seen, cause, note, at }: RecordLoss): StockActDone {
   return removePlugs(write, { codes, kind: 'loss', to: { kind: 'lost', cause }, seen, note, at });
@@ -51,7 +53,7 @@ function removePlugs(write: Write, removal: Removal): StockActDone {
     })),
   );
   write.audit({
-    action: `stock.${kind}`,
+    action: `stock.${DONE_WORDS[kind]}`,
     entity: 'stock_act',
     entityId: groupId,
     before: found.map(({ code, rackCode, position }) => ({ code, rackCode, position })),

@@ -10,6 +10,13 @@ type NewEvent = Omit<typeof reservoirEvents.$inferInsert, 'id' | 'reservoirId' |
   levelBeforeL?: number;
 };
 
+const DONE_WORDS: Record<ReservoirEventRow['kind'], string> = {
+  refill: 'refilled',
+  level: 'level_read',
+  online: 'put_online',
+  offline: 'taken_offline',
+};
+
 /** Writes one event of a reservoir and brings its row in step. */
 export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent): ReservoirEventRow {
   assertInOrder(write, reservoir, event.at);
@@ -24,7 +31,7 @@ export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent)
     .get();
   // It is the newest event, so what stands follows from the row alone, however long the history.
   stand(write, reservoir, standingAfter([row], reservoir.volumeL, reservoir));
-  write.audit({ action: `reservoir.${row.kind}`, entity: 'reservoir', entityId: reservoir.id, after: row });
+  write.audit({ action: `reservoir.${DONE_WORDS[row.kind]}`, entity: 'reservoir', entityId: reservoir.id, after: row });
   return row;
 }
 
@@ -32,7 +39,7 @@ export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent)
 export function removeEvent(write: Write, reservoir: ReservoirRow, event: ReservoirEventRow): void {
   write.tx.delete(reservoirEvents).where(eq(reservoirEvents.id, event.id)).run();
   stand(write, reservoir, standingAfter(eventsInOrder(write.tx, reservoir.id), reservoir.volumeL));
-  write.audit({ action: 'reservoir.undo', entity: 'reservoir', entityId: reservoir.id, before: event });
+  write.audit({ action: 'reservoir.event_undone', entity: 'reservoir', entityId: reservoir.id, before: event });
 }
 
 /** @throws {DomainError} `input.invalid` at the field for more than the reservoir holds */

@@ -25,7 +25,7 @@ export function createReservoir(write: Write, input: CreateReservoir): Reservoir
     .values({ id: reservoirId, ...input, createdAt: write.now })
     .run();
   const after = showReservoir(write.tx, reservoirId, write.now);
-  write.audit({ action: 'reservoir.create', entity: 'reservoir', entityId: reservoirId, after });
+  write.audit({ action: 'reservoir.created', entity: 'reservoir', entityId: reservoirId, after });
   return after;
 }
 
@@ -40,7 +40,7 @@ export function editReservoir(write: Write, reservoirId: string, ifMatch: number
     .where(eq(reservoirs.id, reservoirId))
     .run();
   const after = showReservoir(write.tx, reservoirId, write.now);
-  write.audit({ action: 'reservoir.edit', entity: 'reservoir', entityId: reservoirId, before, after });
+  write.audit({ action: 'reservoir.changed', entity: 'reservoir', entityId: reservoirId, before, after });
   return after;
 }
 

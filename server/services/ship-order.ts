@@ -31,7 +31,7 @@ export function shipOrder(write: Write, orderId: string, { carrier, tracking }: 
   const invoice = issueInvoice(write, order);
   queueMail(write, 'order-shipped', storeRow(write.tx, order.storeId).email, { orderId });
   write.audit({
-    action: 'order.ship',
+    action: 'order.shipped',
     entity: 'order',
     entityId: orderId,
     before: { state: before.state },

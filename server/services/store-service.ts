@@ -14,7 +14,7 @@ export function createStore(write: Write, input: CreateStore): Store {
     .returning()
     .get();
   const after = toStore(row);
-  write.audit({ action: 'store.create', entity: 'store', entityId: row.id, after });
+  write.audit({ action: 'store.created', entity: 'store', entityId: row.id, after });
   return after;
 }
 
@@ -34,6 +34,6 @@ export function editStore(write: Write, id: string, ifMatch: number, { retired, 
     .returning()
     .get();
   const after = toStore(changed);
-  write.audit({ action: 'store.edit', entity: 'store', entityId: id, before, after });
+  write.audit({ action: 'store.changed', entity: 'store', entityId: id, before, after });
   return after;
 }

@@ -26,7 +26,7 @@ export function createItem(write: Write, input: CreateItem): string {
     })
     .returning()
     .get();
-  write.audit({ action: 'item.create', entity: 'item', entityId: row.id, after: row });
+  write.audit({ action: 'item.created', entity: 'item', entityId: row.id, after: row });
   return row.id;
 }
 
@@ -51,7 +51,7 @@ export function editItem(write: Write, itemId: string, ifMatch: number, input: E
     .where(eq(items.id, itemId))
     .returning()
     .get();
-  write.audit({ action: 'item.edit', entity: 'item', entityId: itemId, before, after: row });
+  write.audit({ action: 'item.changed', entity: 'item', entityId: itemId, before, after: row });
 }
 
 /** Adds a supplier. @returns its id */
@@ -61,7 +61,7 @@ export function createSupplier(write: Write, input: CreateSupplier): string {
     .values({ id: write.newId(), ...input, createdAt: write.now })
     .returning()
     .get();
-  write.audit({ action: 'supplier.create', entity: 'supplier', entityId: row.id, after: row });
+  write.audit({ action: 'supplier.created', entity: 'supplier', entityId: row.id, after: row });
   return row.id;
 }
 
@@ -75,7 +75,7 @@ export function editSupplier(write: Write, supplierId: string, ifMatch: number, 
     .where(eq(suppliers.id, supplierId))
     .returning()
     .get();
-  write.audit({ action: 'supplier.edit', entity: 'supplier', entityId: supplierId, before, after: row });
+  write.audit({ action: 'supplier.changed', entity: 'supplier', entityId: supplierId, before, after: row });
 }
 
 /** @throws {DomainError} `record.not_found` */

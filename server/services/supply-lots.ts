@@ -41,7 +41,7 @@ export function receive(write: Write, input: Receive): string {
     costMinor: input.costMinor,
     costMicro: microFromMinor(input.costMinor, farm.currency),
   });
-  write.audit({ action: 'lot.receive', entity: 'lot', entityId: row.id, after: row });
+  write.audit({ action: 'lot.received', entity: 'lot', entityId: row.id, after: row });
   return row.id;
 }
 
@@ -57,7 +57,7 @@ export function undoReceipt(write: Write, lotId: string): void {
     throw new DomainError('record.in_use', 'Some of this lot was used already. Correct what is on hand by a count.');
   }
   write.tx.delete(lots).where(eq(lots.id, lotId)).run();
-  write.audit({ action: 'lot.undo_receive', entity: 'lot', entityId: lotId, before: lot });
+  write.audit({ action: 'lot.receipt_undone', entity: 'lot', entityId: lotId, before: lot });
 }
 
 /**
@@ -84,7 +84,7 @@ export function countItem(write: Write, input: CountItem): string {
     const found = { itemId: item.id, code: FOUND_LOT, receivedOn, expiresOn: null };
     addLot(write, { ...found, quantity: difference, costMinor: 0, costMicro: 0 });
   }
-  write.audit({ action: 'item.count', entity: 'item', entityId: item.id, before: { onHand: expected }, after: row });
+  write.audit({ action: 'item.counted', entity: 'item', entityId: item.id, before: { onHand: expected }, after: row });
   return row.id;
 }
 

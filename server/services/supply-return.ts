@@ -28,7 +28,7 @@ export function returnSupply(write: Write, cause: ConsumptionRow['cause'], cause
       .where(eq(lots.id, lotId))
       .run();
   }
-  if (taken.length > 0) write.audit({ action: 'supply.return', entity: cause, entityId: causeId, before: taken });
+  if (taken.length > 0) write.audit({ action: 'supply.returned', entity: cause, entityId: causeId, before: taken });
 }
 
 function assertNotCountedSince({ tx }: Write, ofAct: ReturnType<typeof and>, instead: string): void {

@@ -16,7 +16,7 @@ export function createSystem(write: Write, { bands, ...fields }: CreateSystem): 
     .get();
   writeBands(write, row.id, bands);
   const after = toSystem(write.tx, row);
-  write.audit({ action: 'system.create', entity: 'system', entityId: row.id, after });
+  write.audit({ action: 'system.created', entity: 'system', entityId: row.id, after });
   return after;
 }
 
@@ -35,7 +35,7 @@ export function editSystem(write: Write, systemId: string, ifMatch: number, edit
     .where(eq(systems.id, systemId))
     .run();
   const after = showSystem(write.tx, systemId);
-  write.audit({ action: 'system.edit', entity: 'system', entityId: systemId, before, after });
+  write.audit({ action: 'system.changed', entity: 'system', entityId: systemId, before, after });
   return after;
 }
 
@@ -47,7 +47,7 @@ export function createTank(write: Write, input: CreateTank): Tank {
     .returning()
     .get();
   const after = toTank(row);
-  write.audit({ action: 'tank.create', entity: 'tank', entityId: row.id, after });
+  write.audit({ action: 'tank.created', entity: 'tank', entityId: row.id, after });
   return after;
 }
 

@@ -25,7 +25,7 @@ export function undoAct(write: Write, groupId: string, note: string): { pieces: 
   if (act.kind === 'cut') return undoCut(write, cutOfBatch(write, act.batchId), note);
   assertInTime(write, act.recordedAt);
   const rows = reverseGroup(write, groupId, note);
-  write.audit({ action: 'stock.undo', entity: 'stock_act', entityId: groupId, after: { note, pieces: rows.length } });
+  write.audit({ action: 'stock.undone', entity: 'stock_act', entityId: groupId, after: { note, pieces: rows.length } });
   return { pieces: rows.length };
 }
 
@@ -53,7 +53,7 @@ export function undoCut(write: Write, cutId: string, note: string): { pieces: nu
   returnSupply(write, 'cut', cut.id, 'Record the plugs as culled instead.');
   write.tx.update(cuts).set({ undoneAt: write.now }).where(eq(cuts.id, cut.id)).run();
   restoreLastCut(write, cut);
-  write.audit({ action: 'cut.undo', entity: 'cut', entityId: cut.id, before: cut, after: { note } });
+  write.audit({ action: 'cut.undone', entity: 'cut', entityId: cut.id, before: cut, after: { note } });
   return { pieces: batch.pieces };
 }
 

@@ -21,7 +21,7 @@ export function withholdStock(write: Write, input: Withhold): Withheld {
     })
     .returning()
     .get();
-  write.audit({ action: 'stock.withhold', entity: 'withhold', entityId: row.id, after: row });
+  write.audit({ action: 'stock.withheld', entity: 'withhold', entityId: row.id, after: row });
   return shown(write, row.id);
 }
 
@@ -35,7 +35,7 @@ export function releaseStock(write: Write, id: string): Withheld {
     .where(and(eq(withholds.id, id), isNull(withholds.endedAt)))
     .run();
   const after = shown(write, id);
-  write.audit({ action: 'stock.release', entity: 'withhold', entityId: id, before, after });
+  write.audit({ action: 'stock.released', entity: 'withhold', entityId: id, before, after });
   return after;
 }
 

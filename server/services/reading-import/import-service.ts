@@ -53,7 +53,7 @@ export function commitImport(write: Write, file: ImportFile, mapping: ImportMapp
     .returning()
     .get();
   storeValues(write, row.id, fresh);
-  write.audit({ action: 'reading_import.commit', entity: 'reading_import', entityId: row.id, after: row });
+  write.audit({ action: 'reading_import.committed', entity: 'reading_import', entityId: row.id, after: row });
   return row;
 }
 
@@ -63,7 +63,7 @@ export function undoImport(write: Write, importId: string): void {
   if (!before) throw new DomainError('record.not_found', 'This import is gone. Someone took it back.');
   write.tx.delete(readings).where(eq(readings.importId, importId)).run();
   write.tx.delete(readingImports).where(eq(readingImports.id, importId)).run();
-  write.audit({ action: 'reading_import.undo', entity: 'reading_import', entityId: importId, before });
+  write.audit({ action: 'reading_import.undone', entity: 'reading_import', entityId: importId, before });
 }
 
 function sift(db: Db, table: CsvTable, mapping: ImportMapping, now: number): Sifted {

@@ -47,7 +47,10 @@ describe('a store orders', () => {
     expect(farm.db.select().from(outboxMails).all()).toMatchObject([
       { template: 'order-placed', toAddress: 'store-1@example.com', data: { orderId: order.id } },
     ]);
-    expect(farm.db.select().from(auditLog).all().at(-1)).toMatchObject({ action: 'order.place', actorName: 'Buyer 1' });
+    expect(farm.db.select().from(auditLog).all().at(-1)).toMatchObject({
+      action: 'order.placed',
+      actorName: 'Buyer 1',
+    });
   });
 
   it('when the farm charges tax, adds it to the sum at the rate of the day', async () => {

@@ -173,7 +173,7 @@ describe('acts on plugs', () => {
       expect(codes.map((code) => placeOf(code)?.position)).toEqual(['A-1', 'A-2', 'A-3', 'A-4', 'A-5']);
       const again = await postOnce(grower, `/api/stock/acts/${groupId}/undo`, {});
       expect([again.status, again.body.code]).toEqual([409, 'stock.already_reversed']);
-      expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'stock.undo')).all()).toHaveLength(1);
+      expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'stock.undone')).all()).toHaveLength(1);
     });
 
     it('when another plug stands at the old position, refuses and undoes nothing', async () => {

@@ -57,7 +57,7 @@ describe('logging a cut', () => {
         .map(({ pieces }) => pieces)
         .sort(),
     ).toEqual([-22, 22]);
-    expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'cut.log')).all()).toHaveLength(1);
+    expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'cut.logged')).all()).toHaveLength(1);
   });
 
   it('when the same line is cut again in the week, counts the batch on; another line starts at one', async () => {

@@ -26,7 +26,7 @@ it('when a grower adds a supply, it is stored, audited and answered with nothing
   expect(reply.body.use).toMatchObject({ perDay: null, basis: 'none' });
   expect(farm.db.select().from(items).all()).toMatchObject([{ code: 'LIME-20', strength: 0.96, supplierId: null }]);
   expect(farm.db.select().from(auditLog).where(eq(auditLog.entity, 'item')).all()).toMatchObject([
-    { action: 'item.create', actorName: 'Test grower', entityId: reply.body.id },
+    { action: 'item.created', actorName: 'Test grower', entityId: reply.body.id },
   ]);
 });
 

@@ -100,7 +100,7 @@ it('when a reading is corrected, the audit log holds both values; a stale correc
   const [audited] = farm.db
     .select()
     .from(auditLog)
-    .where(and(eq(auditLog.entityId, readingId), eq(auditLog.action, 'reading.edit')))
+    .where(and(eq(auditLog.entityId, readingId), eq(auditLog.action, 'reading.changed')))
     .all();
   expect(audited).toMatchObject({ before: { version: 1 }, after: { value: 3 } });
 });
@@ -115,7 +115,7 @@ it('when a reading is taken back, it is gone and the audit log tells what it was
 
   expect([first.status, second.status]).toEqual([200, 404]);
   expect(farm.db.select().from(readings).all()).toEqual([]);
-  expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'reading.remove')).all()).toMatchObject([
+  expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'reading.removed')).all()).toMatchObject([
     { entityId: readingId, before: { parameter: 'alkalinity' } },
   ]);
 });

@@ -22,7 +22,7 @@ it('when a system is added, it is stored with its bands, its code in capitals, a
   expect(reply.body).toMatchObject({ code: 'B', netVolumeL: 3400, bands: SYSTEM_B.bands, tanks: [], version: 1 });
   expect(farm.db.select().from(targetBands).all()).toMatchObject([{ parameter: 'alkalinity', low: 2.8, high: 3.1 }]);
   expect(farm.db.select().from(auditLog).where(eq(auditLog.entity, 'system')).all()).toMatchObject([
-    { action: 'system.create', actorName: 'Test grower' },
+    { action: 'system.created', actorName: 'Test grower' },
   ]);
 });
 
