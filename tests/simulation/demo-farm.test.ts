@@ -80,13 +80,13 @@ describe('what the demo farm holds', () => {
 
   it('when something was done, the audit log has it at its own time and nothing is later than the end', () => {
     for (const [table, action] of [
-      ['cut', 'cut.log'],
-      ['reading', 'reading.log'],
-      ['water_change', 'water_change.log'],
-      ['dose', 'dose.log'],
-      ['lot', 'lot.receive'],
-      ['order', 'order.place'],
-      ['withhold', 'stock.withhold'],
+      ['cut', 'cut.logged'],
+      ['reading', 'reading.logged'],
+      ['water_change', 'water_change.logged'],
+      ['dose', 'dose.logged'],
+      ['lot', 'lot.received'],
+      ['order', 'order.placed'],
+      ['withhold', 'stock.withheld'],
     ] as const) {
       expect([action, count('audit_log', `action = '${action}'`)]).toEqual([action, count(table)]);
     }
