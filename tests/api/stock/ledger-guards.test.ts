@@ -82,12 +82,38 @@ describe('attempts to break the ledger from outside', () => {
     ['names a movement without being a reversal', { reverses_id: 1 }],
     ['gives a position off a rack', { to_position: 'A-5' }],
     ['names a batch that is not the plug’s', { batch_id: 'other' }],
+    ['takes a piece and leaves its plug behind', { plug_code: null, from_position: null }],
+    ['puts pieces back to the cut without a reversal', {}],
   ])('when a movement %s, the database refuses it', (_what, fields) => {
     expect(movement(fields)).toThrow();
 
     expect(checkLedger(farm.deps.sqlite).problems).toEqual([]);
     expect(one('SELECT count(*) FROM stock_movement')).toBe(3);
   });
+
+  it('when a piece that was lost comes back without a reversal, the database refuses it', () => {
+    givenLoss(farm, codes.slice(0, 1));
+    const back = { from_account_id: account('lost'), to_account_id: account('rack'), from_position: null };
+
+    expect(movement(back)).toThrow('only by a reversal');
+  });
+
+  it.each(['', 'OR IGNORE', 'OR REPLACE'])(
+    'when a plug is put where another stands (INSERT %s), the database refuses it and both stay',
+    (conflict) => {
+      const rackId = givenRack(farm);
+      givenPlaced(farm, codes.slice(0, 1), rackId, { position: 'B-2' });
+      const place = `INSERT ${conflict} INTO stock_movement
+        (group_id, kind, batch_id, plug_code, from_account_id, to_account_id, from_position, to_position, pieces, at, by, recorded_at)
+        SELECT 'x', 'move', p.batch_id, p.code, p.account_id, other.account_id, p.position, other.position, 1, 1, 'x', 1
+        FROM plug AS p, plug AS other WHERE p.code = '${codes[1]}' AND other.code = '${codes[0]}'`;
+
+      expect(run(place)).toThrow('Another plug already stands at that position.');
+
+      expect(checkLedger(farm.deps.sqlite).problems).toEqual([]);
+      expect(one(`SELECT position FROM plug WHERE code = '${codes[0]}'`)).toBe('B-2');
+    },
+  );
 
   it('when an act is undone twice, the second is refused by the database as well', () => {
     const groupId = givenLoss(farm, codes);
@@ -101,6 +127,17 @@ describe('attempts to break the ledger from outside', () => {
       .all();
 
     expect(movement({ ...original, kind: 'reversal' })).toThrow('stock.already_reversed');
+  });
+
+  it('when someone writes over an audit entry, the database refuses', () => {
+    const before = farm.deps.sqlite.prepare('SELECT * FROM audit_log').all();
+
+    expect(
+      run(`INSERT OR REPLACE INTO audit_log (id, at, actor_name, action, entity, entity_id)
+        SELECT id, at, 'Someone else', action, entity, entity_id FROM audit_log LIMIT 1`),
+    ).toThrow('The audit log is never edited.');
+
+    expect(farm.deps.sqlite.prepare('SELECT * FROM audit_log').all()).toEqual(before);
   });
 
   it('when balances were damaged with the guards off, the check names the damage and a rebuild mends it', () => {
