@@ -1,6 +1,5 @@
 import { randomInt, randomUUID } from 'node:crypto';
 import { mkdirSync } from 'node:fs';
-import type { Server } from 'node:http';
 import path from 'node:path';
 import { pino } from 'pino';
 import { createApp } from './app.ts';
@@ -12,8 +11,7 @@ import { startJobs } from './jobs/jobs.ts';
 import { smtpTransport } from './outside/mail-transport.ts';
 import { stripePayments } from './outside/payment-service.ts';
 import { readSecrets } from './secrets.ts';
-
-const SHUTDOWN_LIMIT = 10_000;
+import { shutDownOnSignals } from './shut-down.ts';
 
 async function main(): Promise<void> {
   const config = readConfig(process.env);
@@ -25,16 +23,15 @@ async function main(): Promise<void> {
     if (error) fail(error, config);
     deps.log.info(`Limestead answers at ${config.publicUrl}`);
   });
-  for (const signal of ['SIGINT', 'SIGTERM'] as const) {
-    process.once(signal, () => void shutDown(server, deps, stopJobs));
-  }
+  shutDownOnSignals({ server, log: deps.log, stopJobs, close: () => deps.sqlite.close() });
 }
 
 async function openFarm(config: Config): Promise<Deps> {
-  mkdirSync(config.dataDir, { recursive: true });
+  // Password hashes and customers' addresses are in there: for the farm's own account only.
+  mkdirSync(config.dataDir, { recursive: true, mode: 0o700 });
   const file = path.join(config.dataDir, 'limestead.sqlite');
   const { db, sqlite } = openDatabase(file);
-  await migrateDatabase(db, sqlite, file, Date.now());
+  await migrateDatabase(sqlite, file, Date.now());
   return {
     db,
     sqlite,
@@ -46,17 +43,6 @@ async function openFarm(config: Config): Promise<Deps> {
     mail: smtpTransport(config.smtpUrl, config.mailFrom),
     log: pino({ level: config.logLevel }),
   };
-}
-
-/** Stops taking requests, lets those under way finish, then closes the database. */
-async function shutDown(server: Server, deps: Deps, stopJobs: () => Promise<void>): Promise<void> {
-  deps.log.info('Finishing what is under way, then stopping.');
-  const limit = setTimeout(() => process.exit(1), SHUTDOWN_LIMIT);
-  server.closeIdleConnections();
-  await new Promise((resolve) => server.close(resolve));
-  await stopJobs();
-  deps.sqlite.close();
-  clearTimeout(limit);
 }
 
 function fail(error: Error, config: Config): never {

@@ -71,7 +71,7 @@ export async function makeDemoFarm(options: DemoFarmOptions): Promise<DemoTruth>
     },
   };
   try {
-    await migrateDatabase(db, sqlite, ':memory:', now);
+    await migrateDatabase(sqlite, ':memory:', now);
     const passwordHash = await hashPassword(DEMO_PASSWORD);
     const world = furnish(deps, clock, passwordHash, { now, seed, chance, length: days });
     live(world, log);

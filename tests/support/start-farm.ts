@@ -43,7 +43,7 @@ export async function startFarm(
   let ids = 0;
   const mails: Mail[] = [];
   const { db, sqlite } = openDatabase(':memory:');
-  await migrateDatabase(db, sqlite, ':memory:', now);
+  await migrateDatabase(sqlite, ':memory:', now);
   const refuse = () => Promise.reject(new Error('No payment service in this test.'));
   const deps: Deps = {
     db,
