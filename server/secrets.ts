@@ -5,7 +5,10 @@ import { z } from 'zod';
 
 const Secrets = z.object({ sessionSecret: z.string().min(32) });
 
-/** The farm's own secrets, made on first start into the data folder, readable by its owner only. */
+/**
+ * The farm's own secrets, made on first start into the data folder, readable by its owner only.
+ * @throws {Error} where the file is damaged
+ */
 export function readSecrets(dataDir: string): z.infer<typeof Secrets> {
   const file = path.join(dataDir, 'secrets.json');
   if (!existsSync(file)) {
@@ -14,5 +17,15 @@ export function readSecrets(dataDir: string): z.infer<typeof Secrets> {
       flag: 'wx',
     });
   }
-  return Secrets.parse(JSON.parse(readFileSync(file, 'utf8')));
+  const secrets = Secrets.safeParse(jsonOf(readFileSync(file, 'utf8')));
+  if (secrets.success) return secrets.data;
+  throw new Error(`${file} is damaged. Restore it, or delete it: a new one is made, and everybody signs in again.`);
+}
+
+function jsonOf(text: string): unknown {
+  try {
+    return JSON.parse(text);
+  } catch {
+    return undefined;
+  }
 }
