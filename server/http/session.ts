@@ -27,38 +27,55 @@ class DatabaseStore extends session.Store {
   }
 
   override get(sid: string, callback: (error: unknown, data?: SessionData | null) => void): void {
-    const row = this.deps.db.select().from(sessions).where(eq(sessions.sid, sid)).get();
-    const alive =
-      row && row.expiresAt > this.deps.clock.now() && row.createdAt + ABSOLUTE_TIMEOUT > this.deps.clock.now();
-    callback(null, alive ? (row.data as unknown as SessionData) : null);
+    answer(callback, () => {
+      const row = this.deps.db.select().from(sessions).where(eq(sessions.sid, sid)).get();
+      const now = this.deps.clock.now();
+      const alive = row && row.expiresAt > now && row.createdAt + ABSOLUTE_TIMEOUT > now;
+      return alive ? (row.data as unknown as SessionData) : null;
+    });
   }
 
-  override set(sid: string, data: SessionData, callback?: (error?: unknown) => void): void {
-    const now = this.deps.clock.now();
-    const fields = { userId: data.userId ?? null, data: { ...data }, expiresAt: now + IDLE_TIMEOUT };
-    this.deps.db
-      .insert(sessions)
-      .values({ sid, createdAt: now, ...fields })
-      .onConflictDoUpdate({ target: sessions.sid, set: fields })
-      .run();
-    callback?.();
+  override set(sid: string, data: SessionData, callback: (error?: unknown) => void = () => undefined): void {
+    answer(callback, () => {
+      const now = this.deps.clock.now();
+      const fields = { userId: data.userId ?? null, data: { ...data }, expiresAt: now + IDLE_TIMEOUT };
+      this.deps.db
+        .insert(sessions)
+        .values({ sid, createdAt: now, ...fields })
+        .onConflictDoUpdate({ target: sessions.sid, set: fields })
+        .run();
+    });
   }
 
-  override touch(sid: string, _data: SessionData, callback?: () => void): void {
-    const now = this.deps.clock.now();
-    this.deps.db
-      .update(sessions)
-      .set({ expiresAt: now + IDLE_TIMEOUT })
-      // Written at most once a minute, so that reading pages does not write to the disk each time.
-      .where(and(eq(sessions.sid, sid), lt(sessions.expiresAt, now + IDLE_TIMEOUT - 60_000)))
-      .run();
-    callback?.();
+  override touch(sid: string, _data: SessionData, callback: (error?: unknown) => void = () => undefined): void {
+    answer(callback, () => {
+      const now = this.deps.clock.now();
+      this.deps.db
+        .update(sessions)
+        .set({ expiresAt: now + IDLE_TIMEOUT })
+        // Written at most once a minute, so that reading pages does not write to the disk each time.
+        .where(and(eq(sessions.sid, sid), lt(sessions.expiresAt, now + IDLE_TIMEOUT - 60_000)))
+        .run();
+    });
   }
 
-  override destroy(sid: string, callback?: (error?: unknown) => void): void {
-    this.deps.db.delete(sessions).where(eq(sessions.sid, sid)).run();
-    callback?.();
+  override destroy(sid: string, callback: (error?: unknown) => void = () => undefined): void {
+    answer(callback, () => {
+      this.deps.db.delete(sessions).where(eq(sessions.sid, sid)).run();
+    });
   }
+}
+
+/** An error goes to the callback: thrown, it would leave a request that is being answered hanging. */
+function answer<T>(callback: (error: unknown, value?: T) => void, work: () => T): void {
+  let value: T;
+  try {
+    value = work();
+  } catch (error) {
+    callback(error);
+    return;
+  }
+  callback(null, value);
 }
 
 export function sessionMiddleware(deps: Deps, secret: string): RequestHandler {

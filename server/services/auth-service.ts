@@ -17,17 +17,21 @@ export type UserRow = typeof users.$inferSelect;
 export async function signIn(deps: Deps, attempt: SignInTry & { password: string }): Promise<UserRow> {
   inWrite(deps, SYSTEM, (write) => countTry(write, attempt));
   const user = findActiveUser(deps.db, attempt.email);
-  if (!(await isPassword(user?.passwordHash ?? null, attempt.password)) || !user) {
-    throw new DomainError(
-      'sign_in.refused',
-      'This e-mail and password do not go together. Try again, or ask for a link to set a new password.',
-    );
-  }
+  if (!(await isPassword(user?.passwordHash ?? null, attempt.password)) || !user) throw refused();
   inWrite(deps, actorOf(user), (write) => {
+    // Checking takes a moment, in which the password can be changed or the person disabled.
+    if (findActiveUser(write.tx, user.email)?.passwordHash !== user.passwordHash) throw refused();
     forgetTries(write, attempt);
     write.audit({ action: 'user.signed_in', entity: 'user', entityId: user.id });
   });
   return user;
+}
+
+function refused(): DomainError {
+  return new DomainError(
+    'sign_in.refused',
+    'This e-mail and password do not go together. Try again, or ask for a link to set a new password.',
+  );
 }
 
 /** @throws {DomainError} `record.not_found` unless the farm is a demo and this one of its people */

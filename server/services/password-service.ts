@@ -68,15 +68,22 @@ export async function changePassword(
   const attempt = { email: caller.email, address };
   inWrite(deps, caller, (write) => countTry(write, attempt));
   const user = findActiveUser(deps.db, caller.email);
-  if (!user || !(await isPassword(user.passwordHash, current))) {
-    throw new DomainError('input.invalid', 'Your current password is another one.', {
-      fields: [{ path: 'current', message: 'This is not your current password.' }],
-    });
-  }
+  if (!user || !(await isPassword(user.passwordHash, current))) throw notCurrent();
   inWrite(deps, caller, (write) => forgetTries(write, attempt));
   assertStrongPassword(password, knownOf(deps, user));
   const passwordHash = await hashPassword(password);
-  inWrite(deps, caller, (write) => setPassword(write, user, passwordHash, 'user.password_changed'));
+  inWrite(deps, caller, (write) => {
+    // A mailed link may have set another one meanwhile; the password known here must not undo that.
+    const now = findActiveUser(write.tx, user.email);
+    if (now?.passwordHash !== user.passwordHash) throw notCurrent();
+    setPassword(write, now, passwordHash, 'user.password_changed');
+  });
+}
+
+function notCurrent(): DomainError {
+  return new DomainError('input.invalid', 'Your current password is another one.', {
+    fields: [{ path: 'current', message: 'This is not your current password.' }],
+  });
 }
 
 function openResets(write: Write, email: string): number {

@@ -79,10 +79,35 @@ describe('error answers', () => {
     const farm = await startFarm();
     farm.deps.sqlite.close();
 
-    const reply = await farm.anyone().get(healthEndpoints.ready.path);
+    const reply = await farm.anyone().get('/api/session');
 
     expect([reply.status, reply.body.code]).toEqual([500, 'server.failed']);
     expect(JSON.stringify(reply.body)).not.toMatch(/sqlite|database|connection/i);
+  });
+
+  it('when the database is gone, the server is up but not ready, and requests of a session end', async () => {
+    const farm = await startFarm();
+    const owner = await farm.as('owner');
+    expect((await farm.anyone().get(healthEndpoints.ready.path)).status).toBe(200);
+    farm.deps.sqlite.close();
+
+    expect((await farm.anyone().get(healthEndpoints.health.path)).status).toBe(200);
+    const ready = await farm.anyone().get(healthEndpoints.ready.path);
+    expect([ready.status, ready.body.code]).toEqual([503, 'service.unavailable']);
+    expect((await owner.get('/api/people')).status).toBe(500);
+  });
+
+  it('when the disk fails while the session is noted at the end of an answer, the request ends all the same', async () => {
+    const farm = await startFarm();
+    const owner = await farm.as('owner');
+    farm.wait(120_000);
+    farm.deps.sqlite.exec(
+      `CREATE TEMP TRIGGER no_touch BEFORE UPDATE ON session BEGIN SELECT RAISE(FAIL, 'disk I/O error'); END`,
+    );
+
+    const reply = await owner.get('/api/farm');
+
+    expect([reply.status, reply.body.name]).toEqual([200, 'Test Farm']);
   });
 
   it('every code has the status of an error', () => {

@@ -46,7 +46,7 @@ describe('the request log', () => {
     const { farm, app, text } = await startLoggedFarm();
     farm.deps.sqlite.close();
 
-    const reply = await supertest(app).get('/api/ready');
+    const reply = await supertest(app).get('/api/session');
 
     expect(reply.status).toBe(500);
     expect(text()).toContain(reply.body.requestId);
