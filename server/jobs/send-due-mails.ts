@@ -1,18 +1,26 @@
-import { and, asc, eq, isNull, lt, lte } from 'drizzle-orm';
+import { and, asc, eq, gt, isNull, lte } from 'drizzle-orm';
 import { outboxMails } from '../db/schema/index.ts';
 import type { Deps } from '../deps.ts';
 import { renderMail } from '../services/mail-templates.ts';
 
-const MAX_ATTEMPTS = 10;
+const HOUR = 3_600_000;
 const FIRST_RETRY = 5000;
+/** A mail server may be away for a weekend; older news help nobody. */
+const GIVE_UP_AFTER = 72 * HOUR;
 
-/** Sends what the outbox holds; a failure is tried again later, each time after twice as long. */
+/** Sends what the outbox holds; a failure is tried again later, after twice as long each time up to an hour. */
 export async function sendDueMails(deps: Deps): Promise<void> {
   const now = deps.clock.now();
   const due = deps.db
     .select()
     .from(outboxMails)
-    .where(and(isNull(outboxMails.sentAt), lte(outboxMails.nextAttemptAt, now), lt(outboxMails.attempts, MAX_ATTEMPTS)))
+    .where(
+      and(
+        isNull(outboxMails.sentAt),
+        lte(outboxMails.nextAttemptAt, now),
+        gt(outboxMails.createdAt, now - GIVE_UP_AFTER),
+      ),
+    )
     .orderBy(asc(outboxMails.createdAt))
     .limit(20)
     .all();
@@ -25,12 +33,14 @@ export async function sendDueMails(deps: Deps): Promise<void> {
 async function attempt(deps: Deps, row: typeof outboxMails.$inferSelect) {
   const attempts = row.attempts + 1;
   try {
-    await deps.mail.send({ to: row.toAddress, ...(await renderMail(deps, row)) });
+    await deps.mail.send({ id: row.id, to: row.toAddress, ...(await renderMail(deps, row)) });
     return { attempts, sentAt: deps.clock.now(), lastError: null, data: withoutToken(row.data) };
   } catch (error) {
-    const message = error instanceof Error ? error.message : 'unknown';
-    deps.log.warn({ mail: row.id, attempts }, 'mail not sent yet');
-    return { attempts, lastError: message, nextAttemptAt: deps.clock.now() + FIRST_RETRY * 2 ** row.attempts };
+    const lastError = error instanceof Error ? error.message : 'unknown';
+    const nextAttemptAt = deps.clock.now() + Math.min(HOUR, FIRST_RETRY * 2 ** row.attempts);
+    if (nextAttemptAt < row.createdAt + GIVE_UP_AFTER) deps.log.warn({ mail: row.id, attempts }, 'mail not sent yet');
+    else deps.log.error({ mail: row.id, attempts, lastError }, 'mail given up');
+    return { attempts, lastError, nextAttemptAt };
   }
 }
 

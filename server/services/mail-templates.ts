@@ -12,7 +12,7 @@ import {
 } from './mails/order-mails.ts';
 import { passwordResetMail } from './mails/password-reset-mail.ts';
 
-export type MailBody = Omit<Mail, 'to'>;
+export type MailBody = Omit<Mail, 'id' | 'to'>;
 type Template = (deps: Deps, data: Record<string, unknown>) => MailBody | Promise<MailBody>;
 
 /** Every mail the product sends, by template name. Each area's mails live in `server/services/mails/`. */
