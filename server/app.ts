@@ -31,7 +31,7 @@ export function createApp(deps: Deps, sessionSecret: string): { app: Express; ap
   app.use('/api/public', limitGuessing());
   app.use('/api', sessionMiddleware(deps, sessionSecret), loadCaller(deps));
   // Routes match in any case, so this must too; a match that ends in a slash would be no prefix for Express.
-  app.use(/^\/api(?!\/webhooks\/)/i, refuseForgedWrites());
+  app.use(/^\/api(?!\/webhooks\/)/i, refuseForgedWrites(deps.config.publicUrl));
 
   const api = new Api(app, deps);
   healthRoutes(api);

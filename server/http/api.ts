@@ -7,7 +7,7 @@ import { inWrite, SYSTEM, type Write } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import type { FileAnswer } from '../file-answer.ts';
 import { callerOf, type Caller } from './caller.ts';
-import { answerOnce } from './idempotency.ts';
+import { answerOnce, requestKey } from './idempotency.ts';
 import { parseInput } from './parse-input.ts';
 import { receiveUpload, type Upload } from './upload.ts';
 
@@ -46,13 +46,14 @@ export class Api {
   write<E extends Endpoint>(endpoint: E, handler: (write: Write, input: Input<E>) => Answer<E>): void {
     this.register(endpoint, (request, input) =>
       inWrite(this.deps, input.caller ?? SYSTEM, (write) => {
-        const key = request.get('Idempotency-Key');
-        if (!endpoint.creates || !key || !input.caller) return handler(write, input);
+        const key = requestKey(request);
+        if (!endpoint.creates || key === null || !input.caller) return handler(write, input);
         const identity = {
           key,
           callerId: input.caller.userId,
           route: `${endpoint.method} ${endpoint.path}`,
           content: [input.params, input.query, input.body],
+          file: input.upload?.content ?? null,
         };
         return answerOnce(write, identity, 201, () => handler(write, input));
       }),

@@ -30,14 +30,16 @@ export function loadCaller({ db }: Deps): RequestHandler {
  * Refuses writes that another site's page could have sent: the browser's Origin must be ours, and a signed-in session
  * must send back its token. Without a session there is nothing to ride on but the sign-in itself, which Origin covers.
  */
-export function refuseForgedWrites(): RequestHandler {
+export function refuseForgedWrites(publicUrl: string): RequestHandler {
+  // A proxy may pass on its own Host; the farm's known address is ours in any case.
+  const publicHost = new URL(publicUrl).host;
   return (request, _response, next) => {
     if (SAFE_METHODS.includes(request.method)) {
       next();
       return;
     }
     const origin = request.get('Origin');
-    if (origin && hostOf(origin) !== request.get('Host')) throw forged();
+    if (origin && ![request.get('Host'), publicHost].includes(hostOf(origin) ?? '')) throw forged();
     const { userId, csrfToken } = request.session;
     if (userId && !sameText(csrfToken ?? '', request.get('X-CSRF-Token') ?? '')) throw forged();
     next();

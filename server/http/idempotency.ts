@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import { and, eq } from 'drizzle-orm';
+import type { Request } from 'express';
 import { DomainError } from '../../shared/errors.ts';
 import type { Write } from '../db/write.ts';
 import { idempotencyKeys } from '../db/schema/index.ts';
@@ -10,6 +11,19 @@ export interface RequestIdentity {
   route: string;
   /** Parsed params, query and body. */
   content: unknown;
+  /** The uploaded file's bytes. */
+  file: Buffer | null;
+}
+
+/**
+ * The key that a request came with; null without one.
+ * @throws {DomainError} `input.invalid` for one that is no key
+ */
+export function requestKey(request: Request): string | null {
+  const key = request.get('Idempotency-Key');
+  if (!key) return null;
+  if (/^[\x21-\x7e]{1,200}$/.test(key)) return key;
+  throw new DomainError('input.invalid', 'Send an Idempotency-Key of up to 200 plain characters, such as a UUID.');
 }
 
 /**
@@ -19,6 +33,7 @@ export interface RequestIdentity {
 export function answerOnce<T>(write: Write, request: RequestIdentity, status: number, make: () => T): T {
   const requestHash = createHash('sha256')
     .update(JSON.stringify([request.route, request.content]))
+    .update(request.file ?? '')
     .digest('hex');
   const earlier = write.tx
     .select()

@@ -58,6 +58,19 @@ describe('writes that another page could have forged', () => {
     expect(reply.status).toBe(201);
   });
 
+  it("when a proxy passes on its own Host, a page of the farm's known address is ours all the same", async () => {
+    const farm = await startFarm();
+    const owner = await farm.as('owner');
+
+    const reply = await owner
+      .post('/api/invitations')
+      .set('Host', '127.0.0.1:3000')
+      .set('Origin', 'http://farm.example.com')
+      .send(anInvitation);
+
+    expect(reply.status).toBe(201);
+  });
+
   it('when another site signs someone in, refuses', async () => {
     const farm = await startFarm();
 

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { idempotencyKeys, mailedTokens } from '../../../server/db/schema/index.ts';
 import { startFarm, type TestClient } from '../../support/start-farm.ts';
+import { givenSystem } from '../../support/given-water.ts';
 
 function invite(client: TestClient, email: string, key: string) {
   return client.post('/api/invitations').set('Idempotency-Key', key).send({ email, role: 'grower' });
@@ -61,6 +62,38 @@ describe('creating under an Idempotency-Key', () => {
     const reply = await invite(await farm.as('grower'), 'dana@example.com', 'key-1');
 
     expect(reply.body.email).toBe('dana@example.com');
+  });
+});
+
+describe('what counts as a key and as the same request', () => {
+  it.each(['x'.repeat(201), 'two words', 'schlüssel'])('when the key is "%s", asks for a plain one', async (key) => {
+    const farm = await startFarm();
+    const owner = await farm.as('owner');
+
+    const reply = await invite(owner, 'rui@example.com', key);
+
+    expect([reply.status, reply.body.code]).toEqual([400, 'input.invalid']);
+    expect(farm.db.select().from(mailedTokens).all()).toEqual([]);
+  });
+
+  it('when another file comes under the key of the first, refuses it instead of giving the first one’s answer', async () => {
+    const farm = await startFarm();
+    givenSystem(farm, { code: 'B' });
+    const grower = await farm.as('grower');
+    const request = (path: string, value: number) =>
+      grower.post(path).attach('file', Buffer.from(`Date;Time;Tank;Ca mg/L\n2026-03-01;08:00;B;${value}\n`), {
+        filename: 'log.csv',
+        contentType: 'text/csv',
+      });
+    const mapping = JSON.stringify((await request('/api/reading-imports/preview', 430)).body.mapping);
+    const send = (value: number) =>
+      request('/api/reading-imports', value).set('Idempotency-Key', 'key-1').field('mapping', mapping);
+
+    const first = await send(430);
+    const [again, other] = [await send(430), await send(440)];
+
+    expect([first.status, again.status, again.body.id]).toEqual([201, 201, first.body.id]);
+    expect([other.status, other.body.code]).toEqual([422, 'idempotency.mismatch']);
   });
 });
 
