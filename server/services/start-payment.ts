@@ -19,7 +19,10 @@ export async function startPayment(deps: Deps, caller: Actor, orderId: string): 
   const prepared = inWrite(deps, caller, (write) => prepare(write, orderId, deps.config.publicUrl));
   if ('url' in prepared) return prepared;
   const checkout = await deps.payments.createCheckout(prepared.request);
-  return inWrite(deps, caller, (write) => recordCheckout(write, prepared.request, checkout));
+  const recorded = inWrite(deps, caller, (write) => recordCheckout(write, prepared.request, checkout));
+  // The order may have ended while the payment service answered; a job then closes the page that was just recorded.
+  assertUnpaid(ownOrderRow(deps.db, caller.storeId, orderId), deps.clock.now());
+  return recorded;
 }
 
 function prepare(write: Write, orderId: string, publicUrl: string): { url: string } | { request: CheckoutRequest } {
@@ -92,7 +95,7 @@ function recordCheckout(
       .returning()
       .get();
     write.audit({
-      action: 'payment.start',
+      action: 'payment.started',
       entity: 'order',
       entityId: orderId,
       after: { paymentId: row.id, amountMinor: row.amountMinor },

@@ -245,6 +245,20 @@ describe('a store pays', () => {
     expect(paymentNow()?.state).toBe('expired');
   });
 
+  it('when the order is cancelled while its page is being made, is led nowhere and the page is closed', async () => {
+    farm.deps.payments.createCheckout = async (request) => {
+      const made = await service.createCheckout(request);
+      await buyer.post(`/api/shop/orders/${order.id}/cancel`).send().expect(200);
+      return made;
+    };
+
+    expect((await pay().expect(409)).body.code).toBe('order.wrong_state');
+    await closeCheckouts(farm.deps);
+
+    expect(service.expired).toEqual([sessionOf(order.id)]);
+    expect(paymentNow()?.state).toBe('expired');
+  });
+
   it('when a payment arrives for an order cancelled meanwhile, it goes back by itself', async () => {
     await pay();
     await buyer.post(`/api/shop/orders/${order.id}/cancel`).expect(200);
