@@ -10,7 +10,6 @@ import { pickPlug } from '../services/pick-service.ts';
 import { placeOrder } from '../services/place-order.ts';
 import { settleRefund } from '../services/refund-service.ts';
 import { shipOrder } from '../services/ship-order.ts';
-import { useSupply } from '../services/supply-use.ts';
 import { FARM } from './scenario/farm.ts';
 import { leave } from './stock-days.ts';
 import { needSupply } from './supply-days.ts';
@@ -94,17 +93,15 @@ function isForSale(rack: World['systems'][number]['racks'][number] | null): bool
 /** Closes the boxes; what is missing is paid back a little later. Cold days need heat packs. */
 export function pack(world: World, write: Write, orderId: string, pieces: number): void {
   const boxes = Math.ceil(pieces / PER_BOX);
-  packOrder(write, orderId, { boxes, acceptMissing: true });
   const { box, heatPack } = world.items;
   const month = Number(dayOf(write.now, FARM.timeZone).slice(5, 7));
   const packing = [
     { item: box, quantity: boxes },
-    { item: heatPack, quantity: month >= 11 || month <= 3 ? boxes * 2 : 0 },
+    ...(month >= 11 || month <= 3 ? [{ item: heatPack, quantity: boxes * 2 }] : []),
   ];
-  for (const { item, quantity } of packing) {
-    needSupply(world, write, item, quantity);
-    useSupply(write, { itemId: item.id, quantity, cause: 'packing', causeId: orderId, at: write.now });
-  }
+  for (const { item, quantity } of packing) needSupply(world, write, item, quantity);
+  const supplies = packing.map(({ item, quantity }) => ({ itemId: item.id, quantity }));
+  packOrder(write, orderId, { boxes, acceptMissing: true, supplies });
   settleRefundsLater(world, write, orderId);
 }
 

@@ -2,6 +2,7 @@ import { orderEndpoints, packingEndpoints } from '../../shared/contracts/orders.
 import type { Api } from '../http/api.ts';
 import { showOrder } from '../queries/order-page.ts';
 import { listOrders, orderStates } from '../queries/orders.ts';
+import { packingSupplies } from '../queries/packing-supplies.ts';
 import { pickPlan } from '../queries/pick-plan.ts';
 import { cancelOrder } from '../services/cancel-order.ts';
 import { packOrder } from '../services/pack-order.ts';
@@ -22,6 +23,7 @@ export function orderRoutes(api: Api): void {
   api.read(packingEndpoints.plan, (db, { params }) => pickPlan(db, params.id));
   api.write(packingEndpoints.pick, (write, { params, body }) => pickPlug(write, params.id, body.code));
   api.write(packingEndpoints.undoPick, (write, { params }) => undoPick(write, params.id, params.pickId));
+  api.read(packingEndpoints.supplies, (db) => ({ items: packingSupplies(db) }));
   api.write(packingEndpoints.pack, (write, { params, body }) => packOrder(write, params.id, body));
   api.write(packingEndpoints.ship, (write, { params, body }) => shipOrder(write, params.id, body));
   api.act(packingEndpoints.packingList, ({ params }) => packingListFile(api.deps.db, params.id));

@@ -27,6 +27,7 @@ export function changeFarm(write: Write, change: ChangeFarm, ifMatch: number): F
     email: change.email ?? before.email,
     phone: change.phone ?? before.phone,
     taxPercent: Math.round((change.taxPercent ?? before.taxPercent) * 100),
+    settings: { ...row.settings, holdMinutes: change.holdMinutes ?? before.holdMinutes },
   };
   assertTimeZone(settings.timeZone);
   assertCurrency(settings.currency);

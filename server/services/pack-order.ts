@@ -2,19 +2,21 @@ import { eq } from 'drizzle-orm';
 import type { OrderLine, OrderPage, PackOrder } from '../../shared/contracts/orders.ts';
 import { orderAmounts } from '../../shared/domain/order-amounts.ts';
 import { DomainError } from '../../shared/errors.ts';
-import { orderLines, orders } from '../db/schema/index.ts';
+import { items, orderLines, orders } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
 import { leftOf, showOrder } from '../queries/order-page.ts';
 import { orderLinesOf, orderRow, paymentsOf, refundsOf, type OrderRow } from '../queries/orders.ts';
 import { freeHolds } from './cancel-order.ts';
 import { addRefund } from './refund-service.ts';
+import { useSupply } from './supply-use.ts';
 
 /**
  * Closes the boxes of an order. What could not be picked is left out and paid back, when staff say so.
  *
- * @throws {DomainError} `order.wrong_state`; `rule.refused` with what is missing, unless that is accepted
+ * @throws {DomainError} `order.wrong_state`; `rule.refused` with what is missing, unless that is accepted;
+ *   `input.invalid` for what is no packing supply; `supply.not_enough`
  */
-export function packOrder(write: Write, orderId: string, { boxes, acceptMissing }: PackOrder): OrderPage {
+export function packOrder(write: Write, orderId: string, { boxes, acceptMissing, supplies }: PackOrder): OrderPage {
   const order = orderRow(write.tx, orderId);
   const wanted = orderLinesOf(write.tx, orderId);
   assertPackable(order, wanted);
@@ -30,6 +32,7 @@ export function packOrder(write: Write, orderId: string, { boxes, acceptMissing 
   }
   if (short.length > 0) refundMissing(write, order);
   freeHolds(write, orderId);
+  takePacking(write, orderId, supplies);
   write.tx
     .update(orders)
     .set({ state: 'packed', packedAt: write.now, boxes, version: order.version + 1 })
@@ -43,10 +46,23 @@ export function packOrder(write: Write, orderId: string, { boxes, acceptMissing 
     after: {
       state: 'packed',
       boxes,
+      supplies,
       missing: short.map(({ lineCode, quantity, picked }) => ({ lineCode, pieces: quantity - picked })),
     },
   });
   return showOrder(write.tx, orderId);
+}
+
+/** Boxes, heat packs and the like leave the shelf with the order that they go out with. */
+function takePacking(write: Write, orderId: string, supplies: PackOrder['supplies']): void {
+  for (const [index, { itemId, quantity }] of supplies.entries()) {
+    const item = write.tx.select({ kind: items.kind }).from(items).where(eq(items.id, itemId)).get();
+    if (item?.kind !== 'packing') {
+      const message = 'Choose one of the packing supplies.';
+      throw new DomainError('input.invalid', message, { fields: [{ path: `supplies.${index}.itemId`, message }] });
+    }
+    useSupply(write, { itemId, quantity, cause: 'packing', causeId: orderId, at: write.now });
+  }
 }
 
 /** Gives back the difference between the order and what is packed, tax included; never more than is left. */

@@ -2,6 +2,9 @@ import { z } from 'zod';
 import { currencyCode, emailAddress, shortText, version } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 
+/** How long an unpaid order may keep its pieces. The payment service keeps a checkout open for half an hour at least. */
+export const HOLD_MINUTES = { least: 31, most: 24 * 60 } as const;
+
 /** The farm's settings. Address, e-mail and tax stand on invoices. */
 export const FarmSettings = z.object({
   name: z.string(),
@@ -14,6 +17,8 @@ export const FarmSettings = z.object({
   phone: z.string(),
   /** Tax on sales, percent, with at most two decimals. */
   taxPercent: z.number(),
+  /** How long an unpaid order keeps its pieces, minutes. */
+  holdMinutes: z.int(),
   version,
 });
 export type FarmSettings = z.infer<typeof FarmSettings>;
@@ -30,6 +35,11 @@ export const ChangeFarm = z.strictObject({
     .min(0, 'Tax can not be negative.')
     .max(100, 'Tax can not be more than 100 %.')
     .multipleOf(0.01, 'At most two decimals.')
+    .optional(),
+  holdMinutes: z
+    .int('Enter whole minutes.')
+    .min(HOLD_MINUTES.least, `At least ${HOLD_MINUTES.least} minutes: the payment page stays open for half an hour.`)
+    .max(HOLD_MINUTES.most, 'At most 1440 minutes, which is a day.')
     .optional(),
 });
 export type ChangeFarm = z.infer<typeof ChangeFarm>;

@@ -16,6 +16,7 @@ const orderKeys = {
   stores: (search: string) => ['orders', 'stores', search] as const,
   store: (id: string) => ['orders', 'store', id] as const,
   listings: ['orders', 'listings'] as const,
+  packingSupplies: ['orders', 'packing-supplies'] as const,
 };
 
 /** Orders newest first, some at a time. */
@@ -63,6 +64,15 @@ export function useStore(id: MaybeRefOrGetter<string>) {
   return useQuery({
     queryKey: computed(() => orderKeys.store(toValue(id))),
     queryFn: ({ signal }) => callApi(storeEndpoints.show, { params: { id: toValue(id) }, signal }),
+  });
+}
+
+/** Packing supplies change with every order that is packed, so they are asked for afresh. */
+export function usePackingSupplies() {
+  return useQuery({
+    queryKey: orderKeys.packingSupplies,
+    queryFn: ({ signal }) => callApi(packingEndpoints.supplies, { signal }),
+    staleTime: 0,
   });
 }
 

@@ -94,7 +94,7 @@ export function givenPicked(farm: TestFarm, orderId: string, codes: readonly str
 }
 
 export function givenPacked(farm: TestFarm, orderId: string): void {
-  farm.write((write) => packOrder(write, orderId, { boxes: 1, acceptMissing: false }));
+  farm.write((write) => packOrder(write, orderId, { boxes: 1, acceptMissing: false, supplies: [] }));
 }
 
 /** The session that `fakePayments` opens for the n-th try to pay an order. */

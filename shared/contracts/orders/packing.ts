@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { id, idParams, instant } from '../common.ts';
 import type { Endpoint } from '../endpoint.ts';
+import { ITEM_UNITS } from '../../domain/supply-items.ts';
 import { grade, plugCodeText } from '../stock/values.ts';
 import { OrderPage } from './staff.ts';
 import { OrderLine, orderState } from './values.ts';
@@ -55,10 +56,30 @@ export const PickPlug = z.strictObject({ code: plugCodeText });
 export const PickDone = z.object({ pick: Pick, line: OrderLine, picked: z.int(), wanted: z.int() });
 export type PickDone = z.infer<typeof PickDone>;
 
+/** A packing supply, and how much of it the last packed order took for each box; null where it took none. */
+export const PackingSupply = z.object({
+  itemId: id,
+  name: z.string(),
+  unit: z.enum(ITEM_UNITS),
+  onHand: z.number(),
+  lastPerBox: z.number().nullable(),
+});
+export type PackingSupply = z.infer<typeof PackingSupply>;
+
 export const PackOrder = z.strictObject({
   boxes: z.int('Enter a whole number.').min(1, 'At least one box.').max(999),
   /** What could not be picked is left out and paid back. */
   acceptMissing: z.boolean().default(false),
+  /** Boxes, heat packs and the like that this order takes; each in the item's own unit. */
+  supplies: z
+    .array(
+      z.strictObject({
+        itemId: id,
+        quantity: z.number('Enter a number.').positive('Enter more than 0, or leave it out.').max(1_000_000),
+      }),
+    )
+    .max(20)
+    .default([]),
 });
 export type PackOrder = z.infer<typeof PackOrder>;
 
@@ -94,6 +115,13 @@ export const packingEndpoints = {
     summary: 'Put a picked plug back',
     params: z.strictObject({ id, pickId: id }),
     response: PickPlan,
+  },
+  supplies: {
+    method: 'get',
+    path: '/api/packing-supplies',
+    access: 'orders.work',
+    summary: 'Packing supplies on hand, with what the last order took',
+    response: z.object({ items: z.array(PackingSupply) }),
   },
   pack: {
     method: 'post',

@@ -75,7 +75,8 @@ describe('whatever is done in whatever order', () => {
               givenLoss(farm, [code]);
               lossCame = true;
             },
-            pack: () => farm.write((write) => packOrder(write, orderId, { boxes: 1, acceptMissing: true })),
+            pack: () =>
+              farm.write((write) => packOrder(write, orderId, { boxes: 1, acceptMissing: true, supplies: [] })),
             ship: () => farm.write((write) => shipOrder(write, orderId, { carrier: 'x', tracking: '' })),
           };
           refusedOrDone(acts[each.act]);

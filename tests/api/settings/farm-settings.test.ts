@@ -19,6 +19,7 @@ describe('settings of the farm', () => {
       email: 'Hello@Example.com',
       phone: '+1 555 0100',
       taxPercent: 19.6,
+      holdMinutes: 90,
     });
 
     expect(reply.body).toEqual({
@@ -30,6 +31,7 @@ describe('settings of the farm', () => {
       email: 'hello@example.com',
       phone: '+1 555 0100',
       taxPercent: 19.6,
+      holdMinutes: 90,
       version: 2,
     });
     expect((await owner.get('/api/farm')).body).toEqual(reply.body);
@@ -87,6 +89,9 @@ describe('settings of the farm', () => {
     ['a tax above all', { taxPercent: 100.01 }, 'taxPercent'],
     ['a tax with three decimals', { taxPercent: 7.125 }, 'taxPercent'],
     ['a tax in words', { taxPercent: '19' }, 'taxPercent'],
+    ['a hold shorter than the payment page', { holdMinutes: 30 }, 'holdMinutes'],
+    ['a hold of more than a day', { holdMinutes: 1441 }, 'holdMinutes'],
+    ['a hold of half minutes', { holdMinutes: 45.5 }, 'holdMinutes'],
     ['no name', { name: '' }, 'name'],
     ['an address like a book', { address: 'x'.repeat(501) }, 'address'],
     ['a broken e-mail', { email: 'farm' }, 'email'],

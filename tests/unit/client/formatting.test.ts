@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { formatClock, formatDay, formatInstant, formatLongDay, nearDay } from '../../../src/formatting/format-day.ts';
+import { formatMinutes } from '../../../src/formatting/format-duration.ts';
 import { formatMicro, formatMoney } from '../../../src/formatting/format-money.ts';
 import {
   decimalsForError,
@@ -59,15 +60,18 @@ describe('quantities', () => {
 
 describe('money', () => {
   it.each([
-    [120450, 'EUR', 'EUR\u00a01,204.50'],
-    [1204, 'JPY', 'JPY\u00a01,204'],
-    [1204, 'KWD', 'KWD\u00a01.204'],
+    [120450, 'EUR', '1,204.50\u2009EUR'],
+    [1204, 'JPY', '1,204\u2009JPY'],
+    [1204, 'KWD', '1.204\u2009KWD'],
     [null, 'EUR', '—'],
   ])('%s minor units of %s are %s', (minor, currency, text) => {
     expect(formatMoney(minor, currency)).toBe(text);
   });
 
-  it('a cost below ten minor units gets one more decimal', () => {
+  it('a cost below two minor units keeps two figures', () => {
+    expect(formatMicro(60_000, 'EUR')).toBe('0.06');
+    expect(formatMicro(430, 'EUR')).toBe('0.00043');
+    expect(formatMicro(0, 'EUR')).toBe('0.00');
     expect(formatMicro(14_000, 'EUR')).toBe('0.014');
     expect(formatMicro(4_610_000, 'EUR')).toBe('4.61');
   });
@@ -109,6 +113,16 @@ describe('words', () => {
       '0 frags',
       '1,412 batches',
     ]);
+  });
+
+  it.each([
+    [40, '40 minutes'],
+    [60, '1 hour'],
+    [90, '90 minutes'],
+    [150, '2 hours and 30 minutes'],
+    [720, '12 hours'],
+  ])('says a span of %i minutes as %s', (minutes, words) => {
+    expect(formatMinutes(minutes)).toBe(words);
   });
 
   it('joins with commas and a last and', () => {

@@ -1,3 +1,4 @@
+import { nameLines } from '../../../src/views/supplies/name-lines.ts';
 import { describe, expect, it } from 'vitest';
 import type { Item } from '@shared/contracts/supplies.ts';
 import { itemSentence, suppliesSentence } from '@/views/supplies/supply-words.ts';
@@ -109,14 +110,16 @@ describe('itemSentence', () => {
 
 describe('costSentence', () => {
   const money = (micro: number) => `${micro / 1_000_000} EUR`;
-  const none = { asOf: null, living: 0, perLivingMicro: null, limePerLivingMicro: null, lines: [], months: [] };
+  const parts = { limePerLivingMicro: null, vinegarPerLivingMicro: null, cutPerLivingMicro: null };
+  const carried = { ...parts, perLivingMicro: null, otherPerLivingMicro: null };
+  const none = { asOf: null, living: 0, ...carried, used: [], lines: [], months: [] };
 
   it('when no frag stands anywhere, says so', () => {
     expect(text(costSentence(none, money))).toContain('nothing to carry a cost');
   });
 
   it('when frags carry cost, names the mean, its lime and the dearest line', () => {
-    const line = { batches: 1, living: 5, totalMicro: 1, limePerLivingMicro: 0 };
+    const line = { batches: 1, living: 5, totalMicro: 1, ...carried };
     const lines = [
       { ...line, lineId: 'a', code: 'AAA', tradeName: 'Ember Plate', perLivingMicro: 620_000 },
       { ...line, lineId: 'b', code: 'BBB', tradeName: 'Wicket Green', perLivingMicro: 100_000 },
@@ -126,5 +129,26 @@ describe('costSentence', () => {
     ).toBe(
       'A living frag has cost 0.31 EUR of supplies so far, of it 0.014 EUR lime. Ember Plate costs most: 0.62 EUR.',
     );
+  });
+
+  it('when one kind of supply is most of what the systems use, names it', () => {
+    const used = [
+      { kind: 'salt' as const, costMicro: 714 },
+      { kind: 'lime' as const, costMicro: 286 },
+    ];
+    const costs = { ...none, living: 10, perLivingMicro: 310_000, limePerLivingMicro: 0, used };
+
+    expect(text(costSentence(costs, money))).toContain('Salt mix is 71\u2009% of what the systems use.');
+  });
+});
+
+describe('the name of a supply in a drawing', () => {
+  it.each([
+    ['Salt mix', ['Salt mix']],
+    ['Lime, calcium hydroxide 95 %', ['Lime, calcium', 'hydroxide 95 %']],
+    ['Calcium hydroxide of the purest kind', ['Calcium hydroxide', 'of the purest ki…']],
+    ['Unbreakablesupplement', ['Unbreakablesuppl…']],
+  ])('breaks %s between words and never drops letters without a sign', (name, lines) => {
+    expect(nameLines(name, 17)).toEqual(lines);
   });
 });
