@@ -7,7 +7,7 @@ import {
   supplyToSystem,
   type UseInterval,
 } from '../../shared/domain/reservoir-use.ts';
-import { PARAMETERS } from '../../shared/domain/units.ts';
+import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
 import { doses, waterChanges } from '../db/schema/index.ts';
 import { readingsBetween } from './readings.ts';
@@ -17,11 +17,10 @@ import type { SystemRow } from './systems.ts';
 /** After the last look at a level the usual use is taken for this long; beyond it nobody knows. */
 const ASSUMED_DAYS = 3;
 
-/** Standard deviation of one alkalinity test by a usual method, meq/L. */
-export const TEST_SD_MEQ_L = PARAMETERS.find(({ code }) => code === 'alkalinity')?.testSd ?? 0.05;
-
 export interface SystemSupply {
   demandInputs: DemandInputs;
+  /** The alkalinity tests with what was written down of their method, oldest first. */
+  tests: { at: number; value: number; method: string }[];
   limewater: SupplyInterval[];
   use: UseInterval[];
   assumed: UseInterval[];
@@ -29,7 +28,7 @@ export interface SystemSupply {
   waterChanges: (typeof waterChanges.$inferSelect)[];
   /** When use of limewater was first logged; null where the system has no limewater. */
   knownSince: number | null;
-  /** Strength of what is online, or was last; null where there is none. */
+  /** Strength of what is online; null where nothing is. */
   strengthMeqL: number | null;
 }
 
@@ -44,10 +43,10 @@ export function systemSupply(db: Db, system: SystemRow, from: number, now: numbe
   const changes = waterChangesBetween(db, system.id, from, now);
   const firsts = [...logged, ...assumed].map((interval) => interval.from);
   const knownSince = firsts.length > 0 ? Math.min(...firsts) : null;
-  const readings = readingsBetween(db, system.id, 'alkalinity', Math.max(from, knownSince ?? from), now);
+  const tests = readingsBetween(db, system.id, 'alkalinity', Math.max(from, knownSince ?? from), now);
   return {
     demandInputs: {
-      readings: readings.map(({ at, value }) => ({ at, meqL: value, sd: TEST_SD_MEQ_L })),
+      readings: tests.map(({ at, value, method }) => ({ at, meqL: value, sd: testErrorOf('alkalinity', method).sd })),
       supply: [...limewater, ...dosed],
       waterChanges: changes.map(({ at, litres, alkalinityMeqL }) => ({
         at,
@@ -55,8 +54,8 @@ export function systemSupply(db: Db, system: SystemRow, from: number, now: numbe
         alkalinityMeqL,
       })),
     },
-    ...{ limewater, use: logged, assumed, doses: dosed, waterChanges: changes, knownSince },
-    strengthMeqL: strengthNow(used),
+    ...{ tests, limewater, use: logged, assumed, doses: dosed, waterChanges: changes, knownSince },
+    strengthMeqL: used.find(({ onlineSince }) => onlineSince !== null)?.alkalinityMeqL ?? null,
   };
 }
 
@@ -67,13 +66,6 @@ function assumedUse({ intervals, onlineSince, lastAt, levelL, alkalinityMeqL }: 
   const to = Math.min(now, lastAt + ASSUMED_DAYS * MS_PER_DAY);
   const litres = Math.min(levelL, (perDay * (to - lastAt)) / MS_PER_DAY);
   return [{ from: lastAt, to, litres, alkalinityMeq: litres * alkalinityMeqL }];
-}
-
-function strengthNow(used: readonly OnlineUse[]): number | null {
-  const online = used.find(({ onlineSince }) => onlineSince !== null);
-  if (online) return online.alkalinityMeqL;
-  const last = used.flatMap(({ intervals }) => intervals).sort((a, b) => b.to - a.to)[0];
-  return last && last.litres > 0 ? last.alkalinityMeq / last.litres : null;
 }
 
 function dosesBetween(db: Db, system: SystemRow, from: number, to: number): SupplyInterval[] {

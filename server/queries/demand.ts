@@ -1,15 +1,15 @@
-import type { Demand, LimeCeiling, SystemDemand } from '../../shared/contracts/water.ts';
+import type { Carried, Demand, LimeCeiling, SystemDemand } from '../../shared/contracts/water.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
-import { DEFAULT_WINDOW_DAYS, demandHistory, type DemandEstimate, estimateDemand } from '../../shared/domain/demand.ts';
+import { DEFAULT_WINDOW_DAYS, demandHistory, estimateDemand } from '../../shared/domain/demand.ts';
+import { groupBy } from '../../shared/domain/group-by.ts';
 import { limewaterCeiling } from '../../shared/domain/limewater.ts';
 import { saturatedStrength, USUAL_VINEGAR_ML_PER_L } from '../../shared/domain/limewater-ceiling.ts';
-import { litresPerDay, supplyPerDay, supplyWithin } from '../../shared/domain/reservoir-use.ts';
+import { supplyWithin } from '../../shared/domain/reservoir-use.ts';
+import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
-import { type SystemSupply, systemSupply, TEST_SD_MEQ_L } from './demand-inputs.ts';
+import { carriedNow, evaporationOf } from './carried.ts';
+import { type SystemSupply, systemSupply } from './demand-inputs.ts';
 import { systemRow, type SystemRow } from './systems.ts';
-
-/** Evaporation is told from the limewater that topped it up over as many days. */
-const EVAPORATION_DAYS = 7;
 
 /** Demand of a system now, with its history, its ceiling and how it was made. */
 export function systemDemand(db: Db, systemId: string, now: number, historyDays = 90): SystemDemand {
@@ -21,6 +21,7 @@ export function systemDemand(db: Db, systemId: string, now: number, historyDays 
     systemId,
     netVolumeL: system.netVolumeL,
     demand,
+    carried: carriedNow(system, supply, now),
     ceiling: ceilingOf(system, supply, now),
     history: demandHistory(supply.demandInputs, from, now).map((each) => ({
       ...{ at: each.to, demand: each.demandMeqLPerDay, low: each.low, high: each.high },
@@ -30,9 +31,10 @@ export function systemDemand(db: Db, systemId: string, now: number, historyDays 
   };
 }
 
-/** Demand of a system now, alone: for lists. */
-export function currentDemand(db: Db, system: SystemRow, now: number): Demand {
-  return demandNow(systemSupply(db, system, now - 2 * DEFAULT_WINDOW_DAYS * MS_PER_DAY, now), now);
+/** What a system takes and is given now, alone: for lists. */
+export function currentDemand(db: Db, system: SystemRow, now: number): { demand: Demand; carried: Carried } {
+  const supply = systemSupply(db, system, now - 2 * DEFAULT_WINDOW_DAYS * MS_PER_DAY, now);
+  return { demand: demandNow(supply, now), carried: carriedNow(system, supply, now) };
 }
 
 function demandNow(supply: SystemSupply, now: number): Demand {
@@ -40,24 +42,16 @@ function demandNow(supply: SystemSupply, now: number): Demand {
   const { from, to, readings } = estimate;
   const basis = { from, to, readings, windowDays: DEFAULT_WINDOW_DAYS };
   if (!estimate.enough) return { enough: false, ...basis, reason: estimate.reason };
-  return { enough: true, ...basis, ...ratesOf(estimate, supply) };
+  const { demandMeqLPerDay, low, high } = estimate;
+  return { enough: true, ...basis, demand: demandMeqLPerDay, low, high };
 }
 
-function ratesOf(estimate: Extract<DemandEstimate, { enough: true }>, supply: SystemSupply) {
-  const { from, to, demandMeqLPerDay, low, high, supplyMeqLPerDay } = estimate;
+function ceilingOf({ netVolumeL }: SystemRow, supply: SystemSupply, now: number): LimeCeiling | null {
+  const evaporationLPerDay = evaporationOf(supply, now);
+  if (evaporationLPerDay === null) return null;
+  const at = (strength: number) => limewaterCeiling(evaporationLPerDay, strength, netVolumeL);
   return {
-    ...{ demand: demandMeqLPerDay, low, high, supply: supplyMeqLPerDay },
-    limewater: supplyPerDay(supply.limewater, from, to),
-    others: supplyPerDay(supply.doses, from, to),
-  };
-}
-
-function ceilingOf(system: SystemRow, { use, strengthMeqL }: SystemSupply, now: number): LimeCeiling | null {
-  const evaporationLPerDay = litresPerDay(use, now, EVAPORATION_DAYS);
-  if (evaporationLPerDay === null || strengthMeqL === null) return null;
-  const at = (strength: number) => limewaterCeiling(evaporationLPerDay, strength, system.netVolumeL);
-  return {
-    ...{ evaporationLPerDay, strengthMeqL, now: at(strengthMeqL) },
+    evaporationLPerDay,
     saturated: at(saturatedStrength()),
     withVinegar: at(saturatedStrength(USUAL_VINEGAR_ML_PER_L)),
     vinegarMlPerL: USUAL_VINEGAR_ML_PER_L,
@@ -78,7 +72,15 @@ function inputsOf(system: SystemRow, supply: SystemSupply, { from, to }: Demand)
     assumedL: litresIn(supply.assumed),
     doses: supply.doses.filter(({ to: at }) => within(at)).length,
     waterChanges: supply.waterChanges.filter(({ at }) => within(at)).length,
-    testSdMeqL: TEST_SD_MEQ_L,
+    tests: testsUsed(supply.tests.filter(({ at }) => at >= from && at <= to)),
     knownSince: supply.knownSince,
   };
+}
+
+/** The tests by their methods, the most used first. */
+function testsUsed(tests: SystemSupply['tests']): SystemDemand['inputs']['tests'] {
+  const errors = tests.map(({ method }) => testErrorOf('alkalinity', method));
+  return [...groupBy(errors, ({ method }) => method).entries()]
+    .map(([method, same]) => ({ method, count: same.length, error: same[0]?.half ?? 0 }))
+    .sort((a, b) => b.count - a.count);
 }

@@ -7,7 +7,7 @@ import { currentDemand } from './demand.ts';
 export function alkalinityTakenPerDay(db: Db, now: number): number | null {
   const rows = db.select().from(systems).where(isNull(systems.retiredAt)).all();
   const known = rows.flatMap((system) => {
-    const demand = currentDemand(db, system, now);
+    const { demand } = currentDemand(db, system, now);
     return demand.enough ? [Math.max(0, demand.demand) * system.netVolumeL] : [];
   });
   return known.length > 0 ? known.reduce((sum, meq) => sum + meq, 0) : null;

@@ -1,7 +1,8 @@
 import type { ReadingSeries, SeriesDays } from '../../shared/contracts/readings.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { thinSeries } from '../../shared/domain/thin-series.ts';
-import { PARAMETERS, type ParameterCode } from '../../shared/domain/units.ts';
+import { testErrorOf } from '../../shared/domain/test-error.ts';
+import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { Db } from '../db/client.ts';
 import { readingsBetween } from './readings.ts';
 import { bandsOf, systemRow } from './systems.ts';
@@ -20,8 +21,9 @@ export function readingSeries(
   const all = readingsBetween(db, systemId, parameter, from, now);
   return {
     ...{ parameter, from, to: now, total: all.length },
-    points: thinSeries(all, MOST_POINTS),
+    points: thinSeries(all, MOST_POINTS).map(({ at, value, method }) => ({
+      ...{ at, value, error: testErrorOf(parameter, method).half },
+    })),
     band: bandsOf(db, systemId).find((band) => band.parameter === parameter) ?? null,
-    testSd: PARAMETERS.find(({ code }) => code === parameter)?.testSd ?? 0,
   };
 }

@@ -48,9 +48,9 @@ export function readingsBetween(
   parameter: ParameterCode,
   from: number,
   to: number,
-): { at: number; value: number }[] {
+): { at: number; value: number; method: string }[] {
   return db
-    .select({ at: readings.takenAt, value: readings.value })
+    .select({ at: readings.takenAt, value: readings.value, method: readings.method })
     .from(readings)
     .where(
       and(
@@ -81,20 +81,21 @@ export function latestReadings(db: Db, systemId: string): (ReadingRow & { parame
 interface ReadingWithSystem {
   reading: ReadingRow;
   systemCode: string;
+  systemName: string;
 }
 
 function joined(db: Db) {
   return db
-    .select({ reading: readings, systemCode: systems.code })
+    .select({ reading: readings, systemCode: systems.code, systemName: systems.name })
     .from(readings)
     .innerJoin(systems, eq(systems.id, readings.systemId))
     .$dynamic();
 }
 
-function toReading({ reading, systemCode }: ReadingWithSystem): Reading {
+function toReading({ reading, systemCode, systemName }: ReadingWithSystem): Reading {
   const { id, systemId, value, method, note, takenAt, by, importId, version } = reading;
   const parameter = parameterOf(reading.parameter);
-  return { id, systemId, systemCode, parameter, value, method, note, takenAt, by, importId, version };
+  return { id, systemId, systemCode, systemName, parameter, value, method, note, takenAt, by, importId, version };
 }
 
 /** The table only ever gets codes of the list; the column's type is plain text. */

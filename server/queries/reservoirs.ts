@@ -101,6 +101,7 @@ function toReservoir(
   return {
     ...{ id, code, systemId, volumeL, levelL, alkalinityMeqL, readyAt, version },
     systemCode: system.code,
+    systemName: system.name,
     state: stateAt(reservoir, now),
     levelAt: last?.at ?? null,
     litresPerDay: perDay,

@@ -23,7 +23,7 @@ function glanceOf(db: Db, row: SystemRow, now: number): SystemGlance {
   return {
     system: systemFacts(row),
     latest: latestValues(db, row.id),
-    demand: currentDemand(db, row, now),
+    ...currentDemand(db, row, now),
     online: held.find(({ state }) => state === 'online') ?? null,
     standby: held.filter(({ state }) => state === 'standby').length,
     plugs: piecesIn(db, row.id),

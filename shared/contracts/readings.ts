@@ -9,6 +9,7 @@ export const Reading = z.object({
   id,
   systemId: id,
   systemCode: z.string(),
+  systemName: z.string(),
   parameter: parameterCode,
   value: z.number(),
   method: z.string(),
@@ -64,12 +65,11 @@ export const ReadingSeries = z.object({
   parameter: parameterCode,
   from: instant,
   to: instant,
-  points: z.array(z.object({ at: instant, value: z.number() })),
+  /** Each with half of the 95 % interval of its test. */
+  points: z.array(z.object({ at: instant, value: z.number(), error: z.number() })),
   /** Readings in the period; more than points where the server left some out. */
   total: z.int(),
   band: TargetBand.nullable(),
-  /** Usual standard deviation of one test. */
-  testSd: z.number(),
 });
 export type ReadingSeries = z.infer<typeof ReadingSeries>;
 

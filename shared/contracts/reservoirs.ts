@@ -11,6 +11,7 @@ export const Reservoir = z.object({
   code: z.string(),
   systemId: id,
   systemCode: z.string(),
+  systemName: z.string(),
   volumeL: z.number(),
   /** A settling reservoir stands by from `readyAt` on. */
   state: z.enum(RESERVOIR_STATES),

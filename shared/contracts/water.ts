@@ -21,7 +21,7 @@ export type LatestValue = z.infer<typeof LatestValue>;
 const perDay = z.number();
 const demandBasis = { from: instant, to: instant, readings: z.int(), windowDays: z.int() };
 
-/** What the corals of a system take and what it is given, meq/L a day; or why that can't be told yet. */
+/** What the corals of a system take, meq/L a day; or why that can't be told yet. */
 export const Demand = z.discriminatedUnion('enough', [
   z.object({
     enough: z.literal(true),
@@ -29,10 +29,6 @@ export const Demand = z.discriminatedUnion('enough', [
     demand: perDay,
     low: perDay,
     high: perDay,
-    /** All that was added, the limewater part of it, and the other supplements. */
-    supply: perDay,
-    limewater: perDay,
-    others: perDay,
   }),
   z.object({
     enough: z.literal(false),
@@ -42,11 +38,20 @@ export const Demand = z.discriminatedUnion('enough', [
 ]);
 export type Demand = z.infer<typeof Demand>;
 
+/** What a system is given as things stand now, meq/L a day. */
+export const Carried = z.object({
+  /** What is drawn a day at the strength that is online; 0 with nothing online, null where levels don't tell. */
+  limewater: perDay.nullable(),
+  /** Doses of other supplements, mean of the days that demand is told from. */
+  others: perDay,
+  /** What water changes brought over the same days; below zero where the new water was weaker. */
+  waterChanges: perDay,
+});
+export type Carried = z.infer<typeof Carried>;
+
 /** The most that limewater can bring at today's evaporation, meq/L a day. */
 export const LimeCeiling = z.object({
   evaporationLPerDay: z.number(),
-  strengthMeqL: z.number(),
-  now: perDay,
   saturated: perDay,
   withVinegar: perDay,
   vinegarMlPerL: z.number(),
@@ -57,6 +62,7 @@ export const SystemDemand = z.object({
   systemId: id,
   netVolumeL: z.number(),
   demand: Demand,
+  carried: Carried,
   /** Null where no use of limewater was logged lately. */
   ceiling: LimeCeiling.nullable(),
   history: z.array(z.object({ at: instant, demand: perDay, low: perDay, high: perDay })),
@@ -69,7 +75,8 @@ export const SystemDemand = z.object({
     assumedL: z.number(),
     doses: z.int(),
     waterChanges: z.int(),
-    testSdMeqL: z.number(),
+    /** The methods of the tests, each with half of the 95 % interval of one test, meq/L. */
+    tests: z.array(z.object({ method: z.string(), count: z.int(), error: z.number() })),
     /** Readings before it are left out: what was dosed then is not known. */
     knownSince: instant.nullable(),
   }),
@@ -81,6 +88,7 @@ export const SystemGlance = z.object({
   system: System.omit({ tanks: true, bands: true }),
   latest: z.array(LatestValue),
   demand: Demand,
+  carried: Carried,
   online: Reservoir.nullable(),
   standby: z.int(),
   plugs: z.int(),

@@ -2,6 +2,7 @@ import type { Reservoir } from '../../../shared/contracts/reservoirs.ts';
 import type { TodayEntry } from '../../../shared/contracts/today.ts';
 import { MS_PER_HOUR } from '../../../shared/domain/days.ts';
 import { groupBy } from '../../../shared/domain/group-by.ts';
+import { systemTitle } from '../../../shared/domain/system-title.ts';
 import type { Db } from '../../db/client.ts';
 import { listReservoirs } from '../reservoirs.ts';
 import { actOf, type TodayContext } from './source.ts';
@@ -36,9 +37,7 @@ function runsEmpty(context: TodayContext, online: Reservoir, ready: Reservoir | 
         hours <= 0
           ? [`Reservoir ${online.code} should be empty`]
           : [`Reservoir ${online.code} empty by `, { clock: online.emptyAt }],
-      detail: [
-        ready ? `${ready.code} has settled and is ready.` : `Nothing stands ready for system ${online.systemCode}.`,
-      ],
+      detail: [ready ? `${ready.code} has settled and is ready.` : `Nothing stands ready for ${systemOf(online)}.`],
       act: ready
         ? actOf(context, 'water.log', 'Swap', page)
         : actOf(context, 'water.log', 'Mix', `/water/mix?system=${online.systemId}`, page),
@@ -51,8 +50,12 @@ function unused(context: TodayContext, ready: Reservoir): TodayEntry {
     id: `reservoir-${ready.id}`,
     tone: 'ochre',
     group: 'today',
-    title: [`System ${ready.systemCode} gets no limewater`],
+    title: [`${systemOf(ready)} gets no limewater`],
     detail: [`${ready.code} has settled and is ready to go online.`],
     act: actOf(context, 'water.log', 'Put online', `/water/reservoirs/${ready.id}`),
   };
+}
+
+function systemOf({ systemCode: code, systemName: name }: Reservoir): string {
+  return systemTitle({ code, name });
 }

@@ -36,9 +36,16 @@ function titleOf({ name, state, advice }: Item): TodayText {
 
 function lastsWords({ advice, use, unit, state }: Item): TodayText {
   if (advice.daysLeft === null || use.perDay === null) return ['Nothing is on hand'];
-  const perDay = Number(use.perDay.toPrecision(3));
-  if (state === 'out') return [`It goes at ${perDay} ${unit} a day`];
-  return [`${daysWord(Math.floor(advice.daysLeft))} left at ${perDay} ${unit} a day`];
+  const rate = rateWords(use.perDay, unit);
+  if (state === 'out') return [`It goes at ${rate}`];
+  return [`${daysWord(Math.floor(advice.daysLeft))} left at ${rate}`];
+}
+
+/** A forecast of use is good to one or two figures: "0.7 pieces a day", "140 g a day"; below one a week by the week. */
+function rateWords(perDay: number, unit: string): string {
+  const [amount, period] = unit === 'piece' && perDay < 0.2 ? [perDay * 7, 'week'] : [perDay, 'day'];
+  const shown = Number(amount.toPrecision(amount < 1 ? 1 : 2));
+  return `${shown.toLocaleString('en')} ${unit === 'piece' && shown !== 1 ? 'pieces' : unit} a ${period}`;
 }
 
 function expiring(context: TodayContext, { id, name, nextExpiry }: Item): TodayEntry[] {

@@ -1,6 +1,7 @@
 import { asc } from 'drizzle-orm';
 import type { TodayEntry, TodayText } from '../../../shared/contracts/today.ts';
 import { MS_PER_DAY } from '../../../shared/domain/days.ts';
+import { systemTitle } from '../../../shared/domain/system-title.ts';
 import type { Db } from '../../db/client.ts';
 import { systems } from '../../db/schema/index.ts';
 import { readingsBetween } from '../readings.ts';
@@ -66,7 +67,7 @@ function outOfBand(
     id: `alkalinity-${system.id}`,
     tone: 'brick',
     group: 'now',
-    title: [`System ${system.code}: alkalinity `, { quantity: 'alkalinity', value: latest.value }],
+    title: [`${systemTitle(system)}: alkalinity `, { quantity: 'alkalinity', value: latest.value }],
     detail: [
       `${isLow ? 'Below' : 'Above'} its band, which ${isLow ? 'begins' : 'ends'} at `,
       { quantity: 'alkalinity', value: isLow ? band.low : band.high },
@@ -93,7 +94,7 @@ function falling(context: TodayContext, system: SystemRow, latest: Alkalinity, l
     id: `alkalinity-${system.id}`,
     tone: 'ochre',
     group: 'today',
-    title: [`System ${system.code}: alkalinity falls, now `, { quantity: 'alkalinity', value: latest.value }],
+    title: [`${systemTitle(system)}: alkalinity falls, now `, { quantity: 'alkalinity', value: latest.value }],
     detail: [
       days === 1 ? 'It leaves its band in about a day' : `It leaves its band in about ${days} days`,
       ...changeWords(latest),
@@ -109,7 +110,7 @@ function testDue(context: TodayContext, system: SystemRow, latest: Alkalinity | 
     id: `test-${system.id}`,
     tone: 'ochre',
     group: 'today',
-    title: [`Test alkalinity in system ${system.code}`],
+    title: [`Test alkalinity in ${systemTitle(system)}`],
     detail: [
       days === null ? `It was not tested in the last ${LOOK_BACK_DAYS} days.` : `The last test was ${days} days ago.`,
     ],

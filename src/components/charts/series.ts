@@ -42,7 +42,10 @@ export interface Panel {
 /** Something that was done: a dose, a water change. */
 export interface Mark {
   at: number;
+  /** Its kind, named once in the picture. */
   label: string;
+  /** More about this one, for the read-out. */
+  note?: string;
   tone?: Tone;
 }
 
@@ -61,11 +64,16 @@ export function rangeOf(panel: Panel): [number, number] {
 }
 
 /** Every moment that has something to read out, in order. */
-export function momentsOf(panels: readonly Panel[]): number[] {
+export function momentsOf(panels: readonly Panel[], marks: readonly Mark[] = []): number[] {
   const moments = panels.flatMap(({ series }) =>
     series.flatMap(({ points = [], line = [] }) => [...points, ...line].map(({ at }) => at)),
   );
-  return [...new Set(moments)].sort((a, b) => a - b);
+  return [...new Set([...moments, ...marks.map(({ at }) => at)])].sort((a, b) => a - b);
+}
+
+/** A mark in words, "water change, 130 L". */
+export function markWords({ label, note }: Mark): string {
+  return note === undefined ? label : `${label}, ${note}`;
 }
 
 /** The index of the moment that is nearest to an instant; -1 when there is none. */

@@ -1,5 +1,5 @@
 import { type ComputedRef, type Ref, computed, ref } from 'vue';
-import { type Mark, type Panel, type Series, momentsOf, nearestIndex } from '@/components/charts/series.ts';
+import { type Mark, type Panel, type Series, markWords, momentsOf, nearestIndex } from '@/components/charts/series.ts';
 import { THIN_SPACE, formatNumber } from '@/formatting/format-number.ts';
 import { formatInstant } from '@/formatting/format-day.ts';
 
@@ -15,7 +15,7 @@ export interface ReadOut {
 
 /** What a chart says about one moment, chosen by pointer, finger or keys. */
 export function useReadOut(source: { panels: Panel[]; marks: Mark[]; timeZone: string }): ReadOut {
-  const moments = computed(() => momentsOf(source.panels));
+  const moments = computed(() => momentsOf(source.panels, source.marks));
   const index = ref(-1);
   const at = computed(() => moments.value[index.value] ?? null);
 
@@ -23,7 +23,7 @@ export function useReadOut(source: { panels: Panel[]; marks: Mark[]; timeZone: s
     if (at.value === null) return '';
     const moment = at.value;
     const said = source.panels.flatMap(({ series }) => series.flatMap((each) => sayAt(each, moment)));
-    const done = source.marks.filter((mark) => mark.at === moment).map(({ label }) => label);
+    const done = source.marks.filter((mark) => mark.at === moment).map(markWords);
     return `${formatInstant(moment, source.timeZone)}: ${[...said, ...done].join('; ')}`;
   });
 

@@ -1,5 +1,6 @@
-import type { Demand, LatestValue, LimeCeiling } from '@shared/contracts/water.ts';
+import type { Carried, Demand, LatestValue, LimeCeiling } from '@shared/contracts/water.ts';
 import { CALCIUM_HYDROXIDE_G_PER_MOL } from '@shared/domain/limewater.ts';
+import { joinWords } from '@/formatting/plural.ts';
 
 /** A piece of a sentence; `strong` ones are the numbers that the page is about. */
 export interface SentencePart {
@@ -9,6 +10,7 @@ export interface SentencePart {
 
 export interface DemandFacts {
   demand: Demand;
+  carried: Carried;
   ceiling: LimeCeiling | null;
   netVolumeL: number;
   alkalinity: LatestValue | undefined;
@@ -28,11 +30,24 @@ export type Drift = 'unknown' | 'holds' | 'may slip' | 'may rise' | 'slips' | 'r
 /** Below this part of its error a drift is not worth a word. */
 const NOTHING = 0.35;
 
-/** Whether alkalinity goes up or down with what is added now, and whether the tests can tell. */
-export function driftOf(demand: Demand): Drift {
-  if (!demand.enough) return 'unknown';
-  const net = demand.supply - demand.demand;
-  const error = halfWidth(demand);
+/** What is known of a system's give and take now. */
+export interface GiveAndTake {
+  demand: Demand;
+  carried: Carried;
+}
+
+/** Change a day with what is given now, meq/L; null where demand or limewater is not known. */
+export function netOf({ demand, carried }: GiveAndTake): { change: number; error: number } | null {
+  if (!demand.enough || carried.limewater === null) return null;
+  const given = carried.limewater + carried.others + carried.waterChanges;
+  return { change: given - demand.demand, error: halfWidth(demand) };
+}
+
+/** Whether alkalinity goes up or down with what is given now, and whether the tests can tell. */
+export function driftOf(known: GiveAndTake): Drift {
+  const found = netOf(known);
+  if (!found) return 'unknown';
+  const { change: net, error } = found;
   if (Math.abs(net) <= NOTHING * error) return 'holds';
   if (Math.abs(net) <= error) return net < 0 ? 'may slip' : 'may rise';
   return net < 0 ? 'slips' : 'rises';
@@ -40,8 +55,8 @@ export function driftOf(demand: Demand): Drift {
 
 /** What a system's alkalinity does and what to do about it, in plain words. */
 export function demandSentence(facts: DemandFacts, words: DemandWords): SentencePart[] {
-  const { demand } = facts;
-  const told = demand.enough ? uses(demand, words) : [{ text: notEnough(demand) }];
+  const { demand, carried } = facts;
+  const told = demand.enough ? uses({ demand, carried }, words) : [{ text: notEnough(demand) }];
   return [...told, ...bandPart(facts, words), ...advicePart(facts, words)];
 }
 
@@ -51,28 +66,53 @@ function halfWidth({ low, high }: KnownDemand): number {
   return (high - low) / 2;
 }
 
-function uses(demand: KnownDemand, words: DemandWords): SentencePart[] {
+interface Known {
+  demand: KnownDemand;
+  carried: Carried;
+}
+
+function uses({ demand, carried }: Known, words: DemandWords): SentencePart[] {
   const error = halfWidth(demand);
   const amount: SentencePart = { text: `${words.rate(demand.demand, error)} a day`, strong: true };
   if (demand.low <= 0) return [{ text: 'Uses too little to be told from nothing yet: ' }, amount, { text: '.' }];
-  return [{ text: 'Uses ' }, amount, { text: `${carried(demand, words)}, ${outcome(demand, words)}.` }];
-}
-
-function carried(demand: KnownDemand, words: DemandWords): string {
-  const error = halfWidth(demand);
-  const limewater = words.bare(demand.limewater, error);
-  const others = words.bare(demand.others, error);
-  if (demand.limewater > 0 && demand.others > 0) {
-    return ` and limewater carries ${limewater}, other supplements ${others}`;
+  const given = carriers({ demand, carried }, words);
+  if (carried.limewater === null) {
+    const known = given === '' ? '' : ` and ${given}`;
+    return [
+      { text: 'Uses ' },
+      amount,
+      { text: `${known}. What limewater carries is not known: log the level of its reservoir.` },
+    ];
   }
-  if (demand.others > 0) return ` and supplements carry ${others}`;
-  return demand.limewater > 0 ? ` and limewater carries ${limewater}` : ' and nothing is dosed';
+  return [
+    { text: 'Uses ' },
+    amount,
+    { text: ` and ${given || 'nothing is dosed'}, ${outcome({ demand, carried }, words)}.` },
+  ];
 }
 
-function outcome(demand: KnownDemand, words: DemandWords): string {
-  const error = halfWidth(demand);
-  const change = words.bare(Math.abs(demand.supply - demand.demand), error);
-  switch (driftOf(demand)) {
+/** Who carries how much; what rounds to nothing is not named. */
+function carriers({ demand, carried }: Known, words: DemandWords): string {
+  const says = (rate: number) => words.bare(Math.abs(rate), halfWidth(demand));
+  const counts = (rate: number | null): rate is number => rate !== null && /[1-9]/.test(says(rate));
+  const { limewater, others, waterChanges } = carried;
+  const first = counts(limewater) ? [`limewater carries ${says(limewater)}`] : [];
+  const alone = first.length === 0;
+  const second = counts(others)
+    ? [alone ? `supplements carry ${says(others)}` : `other supplements ${says(others)}`]
+    : [];
+  const isFirst = alone && second.length === 0;
+  const brought = counts(waterChanges) && waterChanges > 0;
+  const third = brought ? [`water changes ${isFirst ? 'bring ' : ''}${says(waterChanges)}`] : [];
+  const lost = counts(waterChanges) && waterChanges < 0;
+  const fourth = lost ? [`water changes take ${says(waterChanges)}`] : [];
+  return joinWords([...first, ...second, ...third, ...fourth]);
+}
+
+function outcome({ demand, carried }: Known, words: DemandWords): string {
+  const net = netOf({ demand, carried });
+  const change = words.bare(Math.abs(net?.change ?? 0), halfWidth(demand));
+  switch (driftOf({ demand, carried })) {
     case 'slips':
       return `so alkalinity slips ${change} a day`;
     case 'rises':
@@ -103,10 +143,10 @@ function bandPart({ alkalinity }: DemandFacts, words: DemandWords): SentencePart
 }
 
 /** The strength that would hold the level, or that limewater can't. Only where the tests do tell a drift. */
-function advicePart({ demand, ceiling, netVolumeL }: DemandFacts, words: DemandWords): SentencePart[] {
-  const drift = driftOf(demand);
+function advicePart({ demand, carried, ceiling, netVolumeL }: DemandFacts, words: DemandWords): SentencePart[] {
+  const drift = driftOf({ demand, carried });
   if (!demand.enough || !ceiling || (drift !== 'slips' && drift !== 'rises')) return [];
-  const needed = demand.demand - demand.others;
+  const needed = demand.demand - carried.others - carried.waterChanges;
   if (needed > ceiling.withVinegar) {
     const short = words.rate(needed - ceiling.withVinegar, 0);
     return [{ text: ` That is more than limewater can carry at today's evaporation, by ${short} a day.` }];

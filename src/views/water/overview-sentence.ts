@@ -1,29 +1,69 @@
-import type { SystemGlance } from '@shared/contracts/water.ts';
+import type { LatestValue, SystemGlance } from '@shared/contracts/water.ts';
+import { systemTitle } from '@shared/domain/system-title.ts';
 import { joinWords, plural } from '@/formatting/plural.ts';
-import { driftOf } from '@/views/water/demand-sentence.ts';
+import { type DemandWords, driftOf, netOf } from '@/views/water/demand-sentence.ts';
 
-/** What stands out over all systems, the worst first. */
-export function overviewSentence(glances: readonly SystemGlance[]): string {
-  const out = glances.filter(
-    ({ latest }) => alkalinityState(latest) === 'below' || alkalinityState(latest) === 'above',
-  );
-  const slipping = glances.filter(({ demand }) => driftOf(demand) === 'slips');
-  const rising = glances.filter(({ demand }) => driftOf(demand) === 'rises');
-  const unknown = glances.filter(({ demand }) => !demand.enough);
-  const said = [
-    ...(out.length > 0 ? [`Alkalinity is out of its band in ${names(out)}.`] : []),
-    ...(slipping.length > 0 ? [`It slips in ${names(slipping)}.`] : []),
-    ...(rising.length > 0 ? [`It rises in ${names(rising)}.`] : []),
-  ];
-  if (said.length === 0) said.push(`Alkalinity is where it should be in ${plural(glances.length, 'system')}.`);
-  if (unknown.length > 0) said.push(`Demand is not known yet in ${names(unknown)}.`);
+/** So many systems are named with their numbers; the rest is counted. */
+const MOST_NAMED = 3;
+
+/** What stands out over all systems, the most urgent first, with its number. */
+export function overviewSentence(glances: readonly SystemGlance[], words: DemandWords): string {
+  const pressing = glances
+    .filter((glance) => isOut(glance) || isMoving(glance))
+    .sort((a, b) => daysInBand(a) - daysInBand(b) || distanceOut(b) - distanceOut(a));
+  const unknown = glances.filter((glance) => driftOf(glance) === 'unknown');
+  const said = pressing
+    .slice(0, MOST_NAMED)
+    .map((glance) => `${systemTitle(glance.system)} ${stateOf(glance, words)}.`);
+  const left = pressing.length - said.length;
+  if (left > 0) said.push(`${plural(left, 'more system moves', 'more systems move')}.`);
+  if (pressing.length === 0 && unknown.length < glances.length) {
+    const steady = plural(glances.length - unknown.length, 'system');
+    said.push(`Alkalinity is where it should be in ${steady}.`);
+  }
+  if (unknown.length > 0) {
+    const names = unknown.map(({ system }) => systemTitle(system));
+    said.push(`What alkalinity does is not known yet in ${joinWords(names)}.`);
+  }
   return said.join(' ');
 }
 
-function alkalinityState(latest: SystemGlance['latest']): string | undefined {
-  return latest.find(({ parameter }) => parameter === 'alkalinity')?.state;
+function stateOf(glance: SystemGlance, words: DemandWords): string {
+  const latest = alkalinityOf(glance);
+  const level = latest?.band && isOut(glance) ? [`is ${latest.state} its band at ${words.level(latest.value)}`] : [];
+  const net = netOf(glance);
+  const drift =
+    net && isMoving(glance)
+      ? [`${net.change < 0 ? 'slips' : 'rises'} ${words.bare(Math.abs(net.change), net.error)} a day`]
+      : [];
+  return joinWords([...level, ...drift]);
 }
 
-function names(glances: readonly SystemGlance[]): string {
-  return joinWords(glances.map(({ system }) => system.name));
+function alkalinityOf({ latest }: SystemGlance): LatestValue | undefined {
+  return latest.find(({ parameter }) => parameter === 'alkalinity');
+}
+
+function isOut(glance: SystemGlance): boolean {
+  const state = alkalinityOf(glance)?.state;
+  return state === 'below' || state === 'above';
+}
+
+function isMoving(glance: SystemGlance): boolean {
+  const drift = driftOf(glance);
+  return drift === 'slips' || drift === 'rises';
+}
+
+/** Days until the band is left at today's change; 0 when it is left already. */
+function daysInBand(glance: SystemGlance): number {
+  if (isOut(glance)) return 0;
+  const latest = alkalinityOf(glance);
+  const change = netOf(glance)?.change ?? 0;
+  if (!latest?.band || change === 0) return Number.MAX_VALUE;
+  return (change < 0 ? latest.value - latest.band.low : latest.band.high - latest.value) / Math.abs(change);
+}
+
+function distanceOut(glance: SystemGlance): number {
+  const latest = alkalinityOf(glance);
+  if (!latest?.band) return 0;
+  return Math.max(latest.band.low - latest.value, latest.value - latest.band.high);
 }

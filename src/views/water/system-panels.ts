@@ -7,8 +7,8 @@ import { parameterOf } from '@/views/water/water-labels.ts';
 
 type Units = ReturnType<typeof useUnitChoicesStore>;
 
-/** Readings with the error of their test, over the target band. */
-export function readingPanel({ parameter, points, band, testSd }: ReadingSeries, units: Units): Panel {
+/** Readings with the 95 % error of their test, over the target band. */
+export function readingPanel({ parameter, points, band }: ReadingSeries, units: Units): Panel {
   const shown = (value: number) => units.toShown(parameter, value);
   return {
     key: parameter,
@@ -16,10 +16,10 @@ export function readingPanel({ parameter, points, band, testSd }: ReadingSeries,
       {
         ...{ key: parameter, label: parameterOf(parameter).label.toLowerCase(), unit: units.labelFor(parameter) },
         ...{ tone: 'plum', decimals: unitOf(parameter, units.unitFor(parameter)).decimals },
-        points: points.map(({ at, value }) => ({
+        points: points.map(({ at, value, error }) => ({
           at,
           value: shown(value),
-          error: Math.abs(shown(value + testSd) - shown(value)),
+          error: Math.abs(shown(value + error) - shown(value)),
         })),
       },
     ],
@@ -52,7 +52,8 @@ export function chartMarks(demand: SystemDemand | undefined, series: ReadingSeri
     .filter(({ at }) => at >= series.from)
     .map(({ at, litres }) => ({
       at,
-      label: `water change, ${units.say('volume', litres, { decimals: 0 })}`,
+      label: 'water change',
+      note: units.say('volume', litres, { decimals: 0 }),
       tone: 'slate',
     }));
 }

@@ -1,5 +1,6 @@
 import { type MaybeRefOrGetter, type Ref, computed, ref, toValue, watch } from 'vue';
 import type { Reservoir } from '@shared/contracts/reservoirs.ts';
+import { systemTitle } from '@shared/domain/system-title.ts';
 
 /** Which reservoir is mixed in: the one asked for, else the emptiest that is not online. */
 export function useMixTarget(
@@ -9,9 +10,9 @@ export function useMixTarget(
   const chosenId = ref(toValue(asked) ?? '');
   const reservoir = computed(() => reservoirs.value?.find(({ id }) => id === chosenId.value));
   const choices = computed(() =>
-    (reservoirs.value ?? []).map(({ id, code, systemCode, state }) => ({
+    (reservoirs.value ?? []).map(({ id, code, systemCode, systemName, state }) => ({
       value: id,
-      title: `${code}, system ${systemCode}, ${state}`,
+      title: `${code} of ${systemTitle({ code: systemCode, name: systemName })}, ${state}`,
     })),
   );
   watch(

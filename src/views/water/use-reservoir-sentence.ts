@@ -1,6 +1,7 @@
 import { type ComputedRef, type Ref, computed } from 'vue';
 import type { Reservoir } from '@shared/contracts/reservoirs.ts';
 import { dayOf } from '@shared/domain/days.ts';
+import { systemTitle } from '@shared/domain/system-title.ts';
 import { formatClock, nearDay } from '@/formatting/format-day.ts';
 import { useSessionStore } from '@/stores/session.ts';
 import { useUnitChoicesStore } from '@/stores/unit-choices.ts';
@@ -15,7 +16,16 @@ export function useReservoirSentence(reservoir: Ref<Reservoir | undefined>): Com
 
   return computed(() => {
     if (!reservoir.value) return null;
-    const { state, levelL, systemCode, emptyAt, litresPerDay, readyAt, alkalinityMeqL } = reservoir.value;
+    const {
+      state,
+      levelL,
+      systemCode: code,
+      systemName: name,
+      emptyAt,
+      litresPerDay,
+      readyAt,
+      alkalinityMeqL,
+    } = reservoir.value;
     if (state === 'settling' && readyAt !== null) {
       return `Settling until ${formatClock(readyAt, session.timeZone)}. Then draw only the clear water above the sediment.`;
     }
@@ -28,7 +38,7 @@ export function useReservoirSentence(reservoir: Ref<Reservoir | undefined>): Com
           : emptyAt <= Date.now()
             ? ', so it should be empty by now'
             : `, so it is empty ${day(emptyAt)}`;
-      return `Feeds system ${systemCode} with ${litres(levelL)} left; ${use}${end}.`;
+      return `Feeds ${systemTitle({ code, name })} with ${litres(levelL)} left; ${use}${end}.`;
     }
     if (levelL === 0 || state === 'spent') return 'Spent: clean out the sediment and mix again.';
     if (alkalinityMeqL === 0) return `Holds ${litres(levelL)} without lime.`;

@@ -49,7 +49,7 @@ describe('what needs doing today', () => {
 
   it('when alkalinity is below its band, it can not wait, and the viewer is shown it without being asked', async () => {
     const farm = await startFarm();
-    const systemId = givenSystem(farm, { bands: BAND });
+    const systemId = givenSystem(farm, { code: 'D', name: 'Saltings', bands: BAND });
     const now = farm.deps.clock.now();
     givenReading(farm, systemId, 8, { takenAt: now - 2 * DAY });
     givenReading(farm, systemId, 6, { takenAt: now - HOUR });
@@ -60,6 +60,7 @@ describe('what needs doing today', () => {
       ...{ tone: 'brick', group: 'now' },
       act: { label: 'Test', to: `/water/log?system=${systemId}` },
     });
+    expect(words(entry?.title)).toMatch(/^D Saltings: alkalinity /);
     expect(words(entry?.detail)).toMatch(/^Below its band.*; it fell by .* in 2 days\. Test again, then correct\.$/);
     expect(find(await todayFor(farm, 'viewer'), 'alkalinity')?.act).toEqual({
       label: 'See',
@@ -155,6 +156,25 @@ describe('what needs doing today', () => {
 
     expect(entry).toMatchObject({ tone: 'brick', group: 'now', act: { label: 'Order', to: `/supplies/${itemId}` } });
     expect(find(await todayFor(farm, 'sales'), 'supply')).toBeUndefined();
+  });
+
+  it('when a supply is short, its use is told in honest figures', async () => {
+    const farm = await startFarm();
+    const itemId = givenItem(farm, {
+      kind: 'other',
+      name: 'Heat packs',
+      unit: 'piece',
+      strength: null,
+      leadTimeDays: 5,
+    });
+    const now = farm.deps.clock.now();
+    givenLot(farm, itemId, { quantity: 22, receivedOn: '2026-01-02' });
+    for (const daysAgo of [27, 20, 13, 6, 1]) givenUse(farm, itemId, 4, { at: now - daysAgo * DAY });
+
+    const entry = find(await todayFor(farm, 'grower'), 'supply');
+
+    // 20 in 28 days.
+    expect(words(entry?.detail)).toBe('2 days left at 0.7 pieces a day, lead time 5 days.');
   });
 
   it('when much is to do, the most urgent comes first', async () => {

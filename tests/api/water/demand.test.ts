@@ -44,13 +44,13 @@ it('when tests and levels tell a steady system, the demand that made them comes 
   expect(body.demand.low).toBeLessThan(body.demand.demand);
   expect(body.demand.high).toBeGreaterThan(body.demand.demand);
   // 20 L a day of what stands in the reservoir, over 1,000 L.
-  expect(body.demand.limewater).toBeCloseTo(0.02 * 38.51, 2);
-  expect(body.demand.others).toBe(0);
+  expect(body.carried.limewater).toBeCloseTo(0.02 * 38.51, 2);
+  expect(body.carried).toMatchObject({ others: 0, waterChanges: 0 });
   expect(body.ceiling.evaporationLPerDay).toBeCloseTo(20, 9);
-  expect(body.ceiling.now).toBeCloseTo(body.demand.limewater, 9);
   expect(body.ceiling.saturated).toBeCloseTo(0.02 * 40.3, 2);
   expect(body.ceiling.withVinegar).toBeGreaterThan(body.ceiling.saturated);
   expect(body.inputs).toMatchObject({ assumedL: 0, doses: 0, waterChanges: 0 });
+  expect(body.inputs.tests).toMatchObject([{ method: 'usual test', count: 11 }]);
   expect(body.inputs.limewaterL).toBeCloseTo(200, 9);
   expect(body.history.length).toBeGreaterThan(0);
 });
@@ -93,6 +93,36 @@ it('when tests reach back before any limewater was logged, those are left out', 
   expect(body.demand.demand / MEQ_PER_DKH).toBeCloseTo(2.5, 6);
 });
 
+it('when a weaker mix goes online, limewater carries less from then on', async () => {
+  const farm = await startFarm();
+  const systemId = givenTenDays(farm, 2.5);
+  const weak = givenReservoir(farm, systemId, { volumeL: 300 });
+  const { event } = givenRefill(farm, weak, { waterL: 300, limeG: 214 });
+  const viewer = await farm.as('viewer');
+
+  givenChangeOver(farm, weak);
+  const { body } = await viewer.get(`/api/systems/${systemId}/demand`);
+  const glance = await viewer.get(`/api/systems/${systemId}/glance`);
+
+  expect(body.carried.limewater).toBeCloseTo((20 * event.alkalinityMeqL) / 1000, 6);
+  expect(body.ceiling.saturated).toBeCloseTo(0.02 * 40.3, 2);
+  expect(glance.body.carried).toEqual(body.carried);
+});
+
+it('when a system has no limewater, it carries none; when levels are missing, nobody knows', async () => {
+  const farm = await startFarm();
+  const viewer = await farm.as('viewer');
+  const without = givenSystem(farm);
+  const unread = givenSystem(farm);
+  const reservoirId = givenReservoir(farm, unread);
+  givenRefill(farm, reservoirId);
+  givenChangeOver(farm, reservoirId);
+  const carriedIn = async (id: string) => (await viewer.get(`/api/systems/${id}/glance`)).body.carried.limewater;
+
+  expect(await carriedIn(without)).toBe(0);
+  expect(await carriedIn(unread)).toBeNull();
+});
+
 it('when limewater leaves a reservoir that is not online, the system did not get it', async () => {
   const farm = await startFarm();
   const systemId = givenTenDays(farm, 2.5);
@@ -132,6 +162,10 @@ it('when water is changed and a supplement is dosed, both count and their suppli
   ]);
   const { body } = await grower.get(`/api/systems/${systemId}/demand`);
   expect(body.inputs).toMatchObject({ doses: 1, waterChanges: 1 });
+  expect(body.carried.others).toBeCloseTo(dose.body.alkalinityMeqL / 14, 9);
+  // A tenth of the water replaced by some at 3 meq/L moves the last tested level by a tenth of the difference.
+  const lastTest = (8.2 - 25) * MEQ_PER_DKH + (10 * 20 * 38.5105) / 1000;
+  expect(body.carried.waterChanges).toBeCloseTo((0.1 * (3 - lastTest)) / 14, 4);
   expect((await grower.get(`/api/systems/${systemId}/additions`)).body.items).toHaveLength(2);
 });
 

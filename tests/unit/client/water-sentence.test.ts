@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { Demand, LatestValue, LimeCeiling } from '@shared/contracts/water.ts';
+import type { Carried, Demand, LatestValue, LimeCeiling } from '@shared/contracts/water.ts';
 import { demandSentence, type DemandFacts, type DemandWords, driftOf } from '@/views/water/demand-sentence.ts';
 
 /** Amounts in meq/L are said as dKH of 1 each, so that the figures of a test are those of its sentence. */
@@ -9,20 +9,25 @@ const WORDS: DemandWords = {
   level: (level) => `${level.toFixed(1)} dKH`,
 };
 
-function aDemand(demand: number, limewater: number, { error = 0.01, others = 0 } = {}): Demand {
+type Given = { demand: Demand; carried: Carried };
+
+function aDemand(demand: number, limewater: number | null, { error = 0.01, others = 0, waterChanges = 0 } = {}): Given {
   return {
-    ...{ enough: true, from: 0, to: 1, readings: 14, windowDays: 14 },
-    ...{ demand, low: demand - error, high: demand + error, supply: limewater + others, limewater, others },
+    demand: {
+      ...{ enough: true, from: 0, to: 1, readings: 14, windowDays: 14 },
+      ...{ demand, low: demand - error, high: demand + error },
+    },
+    carried: { limewater, others, waterChanges },
   };
 }
 
 const ceiling: LimeCeiling = {
-  ...{ evaporationLPerDay: 20, strengthMeqL: 30, now: 1.18, saturated: 1.48, withVinegar: 1.6, vinegarMlPerL: 5 },
+  ...{ evaporationLPerDay: 20, saturated: 1.48, withVinegar: 1.6, vinegarMlPerL: 5 },
 };
 
 function say(facts: Partial<DemandFacts>): string {
   return demandSentence(
-    { demand: aDemand(1.23, 1.18), ceiling: null, netVolumeL: 1000, alkalinity: undefined, ...facts },
+    { ...aDemand(1.23, 1.18), ceiling: null, netVolumeL: 1000, alkalinity: undefined, ...facts },
     WORDS,
   )
     .map(({ text }) => text)
@@ -40,24 +45,43 @@ describe('demandSentence', () => {
   });
 
   it('when the difference is smaller than the error of the tests, does not claim more than a chance', () => {
-    expect(say({ demand: aDemand(1.23, 1.18, { error: 0.09 }) })).toContain(
+    expect(say(aDemand(1.23, 1.18, { error: 0.09 }))).toContain(
       'so alkalinity may slip 0.05 a day, within the error of the tests',
     );
   });
 
   it('when both agree, says that alkalinity holds', () => {
-    expect(say({ demand: aDemand(1.2, 1.18, { error: 0.09 }) })).toMatch(/carries 1\.18, so alkalinity holds\.$/);
+    expect(say(aDemand(1.2, 1.18, { error: 0.09 }))).toMatch(/carries 1\.18, so alkalinity holds\.$/);
   });
 
   it('when more is carried than taken, says that it rises', () => {
-    expect(say({ demand: aDemand(1, 1.18) })).toMatch(/so alkalinity rises 0\.18 a day\.$/);
+    expect(say(aDemand(1, 1.18))).toMatch(/so alkalinity rises 0\.18 a day\.$/);
   });
 
   it('when other supplements help, names their part', () => {
     const demand = aDemand(1.5, 1.18, { others: 0.3, error: 0.2 });
-    expect(say({ demand })).toContain('limewater carries 1.18, other supplements 0.30, so alkalinity holds');
-    expect(say({ demand: aDemand(0.3, 0, { others: 0.3 }) })).toContain('supplements carry 0.30');
-    expect(say({ demand: aDemand(0.3, 0) })).toContain('nothing is dosed, so alkalinity slips 0.30 a day');
+    expect(say(demand)).toContain('limewater carries 1.18 and other supplements 0.30, so alkalinity holds');
+    expect(say(aDemand(0.3, 0, { others: 0.3 }))).toContain('supplements carry 0.30');
+    expect(say(aDemand(0.3, 0))).toContain('nothing is dosed, so alkalinity slips 0.30 a day');
+  });
+
+  it('when water changes move the level, names their part and counts it', () => {
+    expect(say(aDemand(1.5, 1.18, { others: 0.2, waterChanges: 0.12 }))).toMatch(
+      / and limewater carries 1\.18, other supplements 0\.20 and water changes 0\.12, so alkalinity holds\.$/,
+    );
+    expect(say(aDemand(0.12, 0, { waterChanges: 0.12 }))).toContain(
+      ' and water changes bring 0.12, so alkalinity holds',
+    );
+    expect(say(aDemand(1.18, 1.18, { waterChanges: -0.1 }))).toContain(
+      'limewater carries 1.18 and water changes take 0.10, so alkalinity slips 0.10 a day',
+    );
+    expect(say(aDemand(1.18, 1.18, { waterChanges: 0.001 }))).not.toContain('water changes');
+  });
+
+  it('when levels do not tell what limewater carries, asks for one and claims no drift', () => {
+    expect(say(aDemand(1.23, null))).toBe(
+      'Uses 1.23 ± 0.01 dKH a day. What limewater carries is not known: log the level of its reservoir.',
+    );
   });
 
   it('when tests are missing, says how many there are and how many it takes, and no number', () => {
@@ -70,7 +94,7 @@ describe('demandSentence', () => {
   });
 
   it('when demand can not be told from nothing, says so', () => {
-    expect(say({ demand: aDemand(0.05, 0, { error: 0.1 }) })).toBe(
+    expect(say(aDemand(0.05, 0, { error: 0.1 }))).toBe(
       'Uses too little to be told from nothing yet: 0.05 ± 0.10 dKH a day.',
     );
   });
@@ -89,17 +113,17 @@ describe('demandSentence', () => {
   });
 
   it('when even saturated limewater falls short, points to vinegar, and beyond that to the amount that is missing', () => {
-    expect(say({ demand: aDemand(1.55, 1.18), ceiling })).toMatch(/Saturated limewater with vinegar would hold it/);
-    expect(say({ demand: aDemand(2, 1.18), ceiling })).toMatch(/more than limewater can carry .* by 0\.40 dKH a day/);
+    expect(say({ ...aDemand(1.55, 1.18), ceiling })).toMatch(/Saturated limewater with vinegar would hold it/);
+    expect(say({ ...aDemand(2, 1.18), ceiling })).toMatch(/more than limewater can carry .* by 0\.40 dKH a day/);
   });
 
   it('when the drift is within the error, gives no advice', () => {
-    expect(say({ demand: aDemand(1.23, 1.18, { error: 0.09 }), ceiling })).not.toContain('would hold');
+    expect(say({ ...aDemand(1.23, 1.18, { error: 0.09 }), ceiling })).not.toContain('would hold');
   });
 
   it('marks only the amount as the number that matters', () => {
     const parts = demandSentence(
-      { demand: aDemand(1.23, 1.18), ceiling: null, netVolumeL: 1000, alkalinity: undefined },
+      { ...aDemand(1.23, 1.18), ceiling: null, netVolumeL: 1000, alkalinity: undefined },
       WORDS,
     );
     expect(parts.filter(({ strong }) => strong).map(({ text }) => text)).toEqual(['1.23 ± 0.01 dKH a day']);
