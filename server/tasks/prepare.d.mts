@@ -1,0 +1,3 @@
+/** The checkout's own folder. */
+export const root: string;
+export function ensureBuilt(): void;
