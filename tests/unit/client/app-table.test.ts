@@ -1,6 +1,7 @@
 import { mount } from '@vue/test-utils';
 import { createPinia } from 'pinia';
 import { describe, expect, it } from 'vitest';
+import { h, type VNode } from 'vue';
 import { createMemoryHistory, createRouter } from 'vue-router';
 import { unreachable } from '../../../src/api/api-error.ts';
 import AppTable from '../../../src/components/AppTable.vue';
@@ -21,10 +22,11 @@ const columns = [
   { key: 'alive', label: 'Alive', align: 'end' as const, deskOnly: true, text: (row: Batch) => row.alive },
 ];
 
-function table(props: Record<string, unknown> = {}) {
+function table(props: Record<string, unknown> = {}, slots: { phone?: (scope: { row: Batch }) => VNode } = {}) {
   const router = createRouter({ history: createMemoryHistory(), routes: [{ path: '/:any(.*)*', component: {} }] });
   return mount(AppTable<Batch>, {
     props: { caption: 'Batches', columns, rows, rowKey: (row: Batch) => row.id, ...props },
+    slots,
     global: { plugins: [createPinia(), router, makeVuetify(undefined)] },
   });
 }
@@ -65,6 +67,23 @@ describe('AppTable', () => {
 
     expect(wrapper.findAll('tbody td')).toHaveLength(2);
     expect(wrapper.find('table').attributes('role')).toBe('table');
+  });
+
+  it('on a phone, draws rows the way that the page says', () => {
+    setDesk(false);
+
+    const wrapper = table({}, { phone: ({ row }) => h('li', `${row.code}: ${String(row.alive)}`) });
+
+    expect(wrapper.find('table').exists()).toBe(false);
+    expect(wrapper.find('ul').attributes('aria-label')).toBe('Batches');
+    expect(wrapper.findAll('li').map((row) => row.text())).toEqual(['WIG-1: 1204', 'EMB-2: 7']);
+  });
+
+  it('on a desk, keeps the table though the page says how rows look on a phone', () => {
+    const wrapper = table({}, { phone: () => h('li') });
+
+    expect(wrapper.findAll('tbody tr')).toHaveLength(2);
+    expect(wrapper.find('li').exists()).toBe(false);
   });
 
   it('when loading, empty or failed, shows that in place of rows', () => {
