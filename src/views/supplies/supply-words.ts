@@ -30,7 +30,7 @@ export const CAUSE_WORDS: Record<Use['cause'], string> = {
   refill: 'Limewater mix',
   dose: 'Dose',
   water_change: 'Water change',
-  cut: 'Cut',
+  cut: 'A cut batch',
   packing: 'Packing',
   count: 'Count',
 };
