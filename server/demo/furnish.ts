@@ -157,7 +157,8 @@ export function addMother(
   const racks = system.racks.filter(({ stage }) => stage !== 'nursery');
   const rack = racks[number % racks.length];
   if (!rack) throw new Error(`System ${system.spec.code} has no rack for ${code}.`);
-  const sizeMm = Math.round(chance.between(100, 190));
+  // Those that came lately are small.
+  const sizeMm = Math.round(from === 0 ? chance.between(100, 190) : chance.between(35, 60));
   const acquiredOn = addDays(new Date(write.now).toISOString().slice(0, 10), from === 0 ? -30 - chance.int(700) : -1);
   const { id, restDays } = createColony(write, {
     ...{ code, lineId: line.id, rackId: rack.id, sizeMm, lastCutOn: null, acquiredOn },

@@ -10,7 +10,7 @@ const COVER_DAYS = 45;
 const INFLATION = 0.09;
 /** Lime is bought for the last time so long before the end, for so many days beyond it, so that it is soon to be ordered. */
 export const LAST_LIME_DAYS = 24;
-const LIME_LEFT_DAYS = 20;
+const LIME_LEFT_DAYS = 21;
 
 /** What stands on the shelves on the first day. */
 export function stockUp(world: World, write: Write): void {

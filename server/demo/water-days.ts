@@ -17,13 +17,15 @@ const MIXED_BEFORE_DAYS = 2;
 const BY_THE_BOOK_DAYS = 24;
 /** Where the system that slips stands at the end, meq/L: below its band. */
 const SLIPPED = 2.56;
-/** Part of the day's limewater ceiling that the crowded system needs in its last weeks. */
+/** Part of the day's limewater ceiling that the crowded system needs in its last weeks; the others need less. */
 const CROWDED = 0.93;
-const CROWDED_DAYS = 28;
+const ROOMY = 0.85;
+const LAST_WEEKS_DAYS = 28;
 const SATURATED_MEQ_L = 40.3;
 
-const DOSE_BELOW = 2.76;
-const DOSE_TO = 2.88;
+/** Below it a supplement helps; quarantine, which has no limewater, is helped sooner. */
+const DOSE_BELOW = { growout: 2.76, broodstock: 2.76, quarantine: 2.83 };
+const DOSE_TO = 2.93;
 const NEW_WATER = { alkalinityMeqL: 3, saltGPerL: 36 };
 
 /** Puts a day's water work on the agenda. */
@@ -35,7 +37,8 @@ export function planWater(world: World, tests: WaterTests, chance: Chance, index
     world.agenda.put(after(8 * 60 + 5), grower, (write) => {
       const shown = tests.round(system, index, day, write.now, grower);
       if (isLevelDay(day)) lookAtLevel(write, system);
-      if (shown !== null && shown < DOSE_BELOW && mayDose(world, system, index)) dose(world, write, system, shown);
+      if (shown !== null && shown < DOSE_BELOW[system.spec.kind] && mayDose(world, system, index))
+        dose(world, write, system, shown);
     });
     if (isChangeOver(world, system, index)) {
       world.agenda.put(after(9 * 60 + 40), grower, (write) => putOnline(write, system));
@@ -69,8 +72,9 @@ export function startDay(world: World, system: DemoSystem, chance: Chance, index
   system.vigour = vigourOn(world, system, index);
   system.demand = trueDemand(world, system, index) * chance.normal(1, 0.01);
   system.flow = usualFlow(system) * seasonOf(day);
-  const isCrowded = system.spec.code === 'A' && daysToEnd(world, index) <= CROWDED_DAYS;
-  if (isCrowded) system.flow = (system.demand * system.spec.netVolumeL) / (CROWDED * SATURATED_MEQ_L);
+  if (daysToEnd(world, index) > LAST_WEEKS_DAYS || system.reservoirs.length === 0) return;
+  const saturated = (system.demand * system.spec.netVolumeL) / SATURATED_MEQ_L;
+  system.flow = system.spec.code === 'A' ? saturated / CROWDED : Math.max(system.flow, saturated / ROOMY);
 }
 
 export function lookAtLevel(write: Write, system: DemoSystem): void {
@@ -146,7 +150,7 @@ function mixStandby(world: World, write: Write, system: DemoSystem, chance: Chan
 
 /** Enough for a cycle and a little more. */
 function fullFor(system: DemoSystem, { volumeL }: DemoReservoir): number {
-  return Math.min(volumeL, Math.round(system.flow * CYCLE_DAYS * 1.12));
+  return Math.min(volumeL, Math.round(system.flow * CYCLE_DAYS * 1.08));
 }
 
 /** What a reservoir must hold when it goes online in two days, to be nearly empty at the end. */
