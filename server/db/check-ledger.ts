@@ -21,17 +21,16 @@ const SUMS = `
     UNION ALL SELECT batch_id, from_account_id, -pieces FROM stock_movement)
   GROUP BY batch_id, account_id`;
 
-const LAST_PLACES = `
-  SELECT m.plug_code, m.to_account_id, m.to_position FROM stock_movement AS m
-  WHERE m.id IN (SELECT max(id) FROM stock_movement WHERE plug_code IS NOT NULL GROUP BY plug_code)`;
+/** The movement that a plug's place comes from, found by the index on its code. */
+const LAST_MOVEMENT = `(SELECT max(id) FROM stock_movement WHERE plug_code = plug.code)`;
 
 const CHECKS: readonly { law: LedgerProblem['law']; sql: string }[] = [
   {
     law: 'balance',
-    sql: `SELECT coalesce(b.batch_id, s.batch_id) || ' ' || coalesce(b.account_id, s.account_id) AS about,
-        coalesce(b.pieces, 0) AS found, coalesce(s.pieces, 0) AS expected
-      FROM (${SUMS}) AS s FULL JOIN stock_balance AS b ON b.batch_id = s.batch_id AND b.account_id = s.account_id
-      WHERE coalesce(b.pieces, 0) <> coalesce(s.pieces, 0)`,
+    sql: `SELECT batch_id || ' ' || account_id AS about, sum(found) AS found, sum(expected) AS expected FROM (
+        SELECT batch_id, account_id, 0 AS found, pieces AS expected FROM (${SUMS})
+        UNION ALL SELECT batch_id, account_id, pieces, 0 FROM stock_balance)
+      GROUP BY batch_id, account_id HAVING sum(found) <> sum(expected)`,
   },
   {
     law: 'batch_total',
@@ -46,11 +45,11 @@ const CHECKS: readonly { law: LedgerProblem['law']; sql: string }[] = [
   },
   {
     law: 'plug_place',
-    sql: `SELECT p.code AS about,
-        coalesce(p.account_id, 'nowhere') || ' ' || coalesce(p.position, '') AS found,
-        coalesce(l.to_account_id, 'nowhere') || ' ' || coalesce(l.to_position, '') AS expected
-      FROM plug AS p LEFT JOIN (${LAST_PLACES}) AS l ON l.plug_code = p.code
-      WHERE p.account_id IS NOT l.to_account_id OR p.position IS NOT l.to_position`,
+    sql: `SELECT plug.code AS about,
+        coalesce(plug.account_id, 'nowhere') || ' ' || coalesce(plug.position, '') AS found,
+        coalesce(last.to_account_id, 'nowhere') || ' ' || coalesce(last.to_position, '') AS expected
+      FROM plug LEFT JOIN stock_movement AS last ON last.id = ${LAST_MOVEMENT}
+      WHERE plug.account_id IS NOT last.to_account_id OR plug.position IS NOT last.to_position`,
   },
   {
     law: 'plug_count',
@@ -100,8 +99,8 @@ export function rebuildBalances(sqlite: Sqlite): void {
         FROM (${SUMS}) AS s JOIN stock_account AS a ON a.id = s.account_id;
       -- Positions first of all go, so that two plugs may change places.
       UPDATE plug SET position = NULL;
-      UPDATE plug SET account_id = l.to_account_id, position = l.to_position
-        FROM (${LAST_PLACES}) AS l WHERE l.plug_code = plug.code;`);
+      UPDATE plug SET account_id = last.to_account_id, position = last.to_position
+        FROM stock_movement AS last WHERE last.id = ${LAST_MOVEMENT};`);
     for (const { sql } of guards) sqlite.exec(sql);
   });
   rebuild.immediate();
