@@ -36,8 +36,10 @@ export function createApp(deps: Deps, sessionSecret: string): { app: Express; ap
   const api = new Api(app, deps);
   healthRoutes(api);
   registerRoutes(api);
+  let openApi: Record<string, unknown> | undefined;
   app.get('/api/openapi.json', (_request, response) => {
-    response.json(openApiDocument(api.endpoints));
+    openApi ??= openApiDocument(api.endpoints);
+    response.json(openApi);
   });
   app.use('/api', unknownRoute);
   serveClient(app);

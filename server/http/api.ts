@@ -40,14 +40,16 @@ export class Api {
   }
 
   read<E extends Endpoint>(endpoint: E, handler: (db: Db, input: Input<E>) => Answer<E>): void {
-    this.register(endpoint, (_request, input) => handler(this.deps.db, input));
+    this.register(endpoint, (_request, input) => toBody(endpoint, handler(this.deps.db, input)));
   }
 
   write<E extends Endpoint>(endpoint: E, handler: (write: Write, input: Input<E>) => Answer<E>): void {
     this.register(endpoint, (request, input) =>
       inWrite(this.deps, input.caller ?? SYSTEM, (write) => {
         const key = requestKey(request);
-        if (!endpoint.creates || key === null || !input.caller) return handler(write, input);
+        // Made within the transaction: an answer that breaks its contract leaves nothing written.
+        const make = () => toBody(endpoint, handler(write, input));
+        if (!endpoint.creates || key === null || !input.caller) return make();
         const identity = {
           key,
           callerId: input.caller.userId,
@@ -55,7 +57,7 @@ export class Api {
           content: [input.params, input.query, input.body],
           file: input.upload?.content ?? null,
         };
-        return answerOnce(write, identity, 201, () => handler(write, input));
+        return answerOnce(write, identity, 201, make);
       }),
     );
   }
@@ -64,12 +66,14 @@ export class Api {
     endpoint: E,
     handler: (input: Input<E> & { request: Request; response: Response }) => Promise<Answer<E>> | Answer<E>,
   ): void {
-    this.register(endpoint, (request, input, response) => handler({ ...input, request, response }));
+    this.register(endpoint, async (request, input, response) =>
+      toBody(endpoint, await handler({ ...input, request, response })),
+    );
   }
 
   private register<E extends Endpoint>(
     endpoint: E,
-    run: (request: Request, input: Input<E>, response: Response) => Promise<Answer<E>> | Answer<E>,
+    run: (request: Request, input: Input<E>, response: Response) => unknown,
   ): void {
     if (!endpoint.access) throw new Error(`${endpoint.path} declares no access.`);
     this.endpoints.push(endpoint);
@@ -93,16 +97,20 @@ function checkAccess(endpoint: Endpoint, caller: Caller | null): void {
   throw new DomainError('permission.denied', 'Your role does not allow this. Ask the owner of the farm.');
 }
 
-function send<E extends Endpoint>(endpoint: E, response: Response, answer: Answer<E>): void {
+/** The answer as its contract says: fields that are not in it are left out, and wrong ones are our mistake. */
+function toBody<E extends Endpoint>(endpoint: E, answer: Answer<E>): unknown {
+  return endpoint.answer === 'file' ? answer : endpoint.response?.parse(answer);
+}
+
+function send(endpoint: Endpoint, response: Response, body: unknown): void {
   if (endpoint.answer === 'file') {
-    const file = answer as FileAnswer;
+    const file = body as FileAnswer; // handlers of such endpoints return nothing else
     response.setHeader('Content-Type', file.contentType);
     response.setHeader('Content-Disposition', `${file.inline ? 'inline' : 'attachment'}; filename="${file.fileName}"`);
     response.setHeader('Cache-Control', 'no-store');
     response.send(file.content);
     return;
   }
-  const body: unknown = endpoint.response ? endpoint.response.parse(answer) : undefined;
   if (hasVersion(body)) response.setHeader('ETag', `"${body.version}"`);
   response.setHeader('Cache-Control', 'no-store');
   if (body === undefined) response.status(204).end();

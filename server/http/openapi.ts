@@ -35,16 +35,14 @@ function operation(endpoint: Endpoint): Record<string, unknown> {
       ? {
           requestBody: {
             required: true,
-            content: { [contentType(endpoint)]: { schema: schemaOf(endpoint.body, 'input') } },
+            content: { [contentType(endpoint)]: { schema: bodySchema(endpoint.body, endpoint) } },
           },
         }
       : {}),
     responses: {
       [endpoint.creates ? '201' : '200']: {
         description: 'Done',
-        ...(endpoint.response
-          ? { content: { 'application/json': { schema: schemaOf(endpoint.response, 'output') } } }
-          : {}),
+        content: answerContent(endpoint),
       },
       default: {
         description: 'What went wrong and what to do',
@@ -52,6 +50,19 @@ function operation(endpoint: Endpoint): Record<string, unknown> {
       },
     },
   };
+}
+
+function answerContent({ answer, response }: Endpoint): Record<string, unknown> {
+  if (answer === 'file') return { '*/*': { schema: { type: 'string', format: 'binary' } } };
+  return response ? { 'application/json': { schema: schemaOf(response, 'output') } } : {};
+}
+
+/** Uploads carry their file as one more field of the form. */
+function bodySchema(body: z.ZodType, { upload }: Endpoint): Record<string, unknown> {
+  const schema = schemaOf(body, 'input');
+  if (!upload) return schema;
+  const file = { type: 'string', format: 'binary' };
+  return { ...schema, properties: { ...(schema.properties as object), [upload.field]: file } };
 }
 
 function contentType(endpoint: Endpoint): string {
@@ -62,7 +73,7 @@ function parameters(place: 'path' | 'query', schema: z.ZodObject | undefined) {
   return Object.entries(schema?.shape ?? {}).map(([name, field]) => ({
     name,
     in: place,
-    required: place === 'path',
+    required: place === 'path' || !(field as z.ZodType).isOptional(),
     schema: schemaOf(field as z.ZodType, 'input'),
   }));
 }
@@ -71,6 +82,8 @@ function header(name: string, required: boolean) {
   return { name, in: 'header', required, schema: { type: 'string' } };
 }
 
-function schemaOf(schema: z.ZodType, io: 'input' | 'output'): unknown {
-  return z.toJSONSchema(schema, { io, unrepresentable: 'any' });
+/** OpenAPI 3.1 names the dialect once for the whole document. */
+function schemaOf(schema: z.ZodType, io: 'input' | 'output'): Record<string, unknown> {
+  const { $schema: _dialect, ...rest } = z.toJSONSchema(schema, { io, unrepresentable: 'any' });
+  return rest;
 }

@@ -17,4 +17,47 @@ describe('the OpenAPI document', () => {
       expect(inPath, `${method} ${path}`).toHaveLength((path.match(/:/g) ?? []).length);
     }
   });
+
+  it('says of every endpoint what it takes and what it answers, and refers to nothing that is not in it', async () => {
+    const farm = await startFarm();
+    const { endpoints } = createApp(farm.deps, 'a secret only for listing the endpoints').api;
+
+    const { body, text } = await farm.anyone().get('/api/openapi.json');
+
+    for (const { method, path, answer, upload, edits, creates } of endpoints) {
+      const operation = body.paths[path.replace(/:([a-zA-Z]+)/g, '{$1}')][method];
+      const name = `${method} ${path}`;
+      const [done] = Object.entries<{ content: object }>(operation.responses).filter(
+        ([status]) => status !== 'default',
+      );
+      expect([done?.[0], Object.keys(done?.[1].content ?? {})], name).toEqual([
+        creates ? '201' : '200',
+        [answer === 'file' ? '*/*' : 'application/json'],
+      ]);
+      const names = operation.parameters.map((each: { in: string; name: string }) => `${each.in} ${each.name}`);
+      expect(new Set(names).size, name).toBe(names.length);
+      expect(names.includes('header If-Match'), name).toBe(edits === true);
+      expect(names.includes('header Idempotency-Key'), name).toBe(creates === true);
+      if (upload) {
+        const form = operation.requestBody.content['multipart/form-data'].schema;
+        expect(form.properties[upload.field], name).toEqual({ type: 'string', format: 'binary' });
+      }
+    }
+    expect(new Set(text.match(/"\$ref":"[^"]*"/g))).toEqual(new Set(['"$ref":"#/components/schemas/Problem"']));
+    expect(body.components.schemas.Problem.type).toBe('object');
+    expect(text).not.toContain('"$schema"');
+  });
+
+  it('marks a query field as required where leaving it out is refused', async () => {
+    const farm = await startFarm();
+
+    const { body } = await farm.anyone().get('/api/openapi.json');
+
+    const required = (path: string) =>
+      body.paths[path].get.parameters
+        .filter((each: { required: boolean }) => each.required)
+        .map((each: { name: string }) => each.name);
+    expect(required('/api/costs/export')).toEqual(['table']);
+    expect(required('/api/orders')).toEqual([]);
+  });
 });
