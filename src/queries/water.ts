@@ -1,4 +1,4 @@
-import { keepPreviousData, useQuery, useQueryClient } from '@tanstack/vue-query';
+import { useQuery, useQueryClient } from '@tanstack/vue-query';
 import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { waterEndpoints } from '@shared/contracts/water.ts';
 import { callApi } from '@/api/call-api.ts';
@@ -28,12 +28,19 @@ export function useSystemGlance(systemId: MaybeRefOrGetter<string>) {
   });
 }
 
-export function useSystemDemand(systemId: MaybeRefOrGetter<string>, days: MaybeRefOrGetter<number>) {
+/** Waits while the system is not known yet. */
+export function useSystemDemand(systemId: MaybeRefOrGetter<string | undefined>, days: MaybeRefOrGetter<number>) {
   return useQuery({
-    queryKey: computed(() => waterKeys.demand(toValue(systemId), toValue(days))),
+    queryKey: computed(() => waterKeys.demand(toValue(systemId) ?? '', toValue(days))),
     queryFn: ({ signal }) =>
-      callApi(waterEndpoints.demand, { params: { id: toValue(systemId) }, query: { days: toValue(days) }, signal }),
-    placeholderData: keepPreviousData,
+      callApi(waterEndpoints.demand, {
+        params: { id: toValue(systemId) ?? '' },
+        query: { days: toValue(days) },
+        signal,
+      }),
+    enabled: () => toValue(systemId) !== undefined,
+    // Another period of the same system may be shown meanwhile, another system may not.
+    placeholderData: (shown) => (shown?.systemId === toValue(systemId) ? shown : undefined),
   });
 }
 

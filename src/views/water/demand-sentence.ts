@@ -23,6 +23,8 @@ export interface DemandWords {
   /** A rate without unit, at as many decimals as the error allows. */
   bare: (meqLPerDay: number, error: number) => string;
   level: (meqL: number) => string;
+  /** A rate as `bare` shows it, back in meq/L, so that what is shown adds up. */
+  rounded: (meqLPerDay: number, error: number) => number;
 }
 
 export type Drift = 'unknown' | 'holds' | 'may slip' | 'may rise' | 'slips' | 'rises';
@@ -66,7 +68,7 @@ function halfWidth({ low, high }: KnownDemand): number {
   return (high - low) / 2;
 }
 
-interface Known {
+export interface Known {
   demand: KnownDemand;
   carried: Carried;
 }
@@ -110,8 +112,7 @@ function carriers({ demand, carried }: Known, words: DemandWords): string {
 }
 
 function outcome({ demand, carried }: Known, words: DemandWords): string {
-  const net = netOf({ demand, carried });
-  const change = words.bare(Math.abs(net?.change ?? 0), halfWidth(demand));
+  const change = words.bare(Math.abs(shownChange({ demand, carried }, words)), halfWidth(demand));
   switch (driftOf({ demand, carried })) {
     case 'slips':
       return `so alkalinity slips ${change} a day`;
@@ -124,6 +125,13 @@ function outcome({ demand, carried }: Known, words: DemandWords): string {
     default:
       return 'so alkalinity holds';
   }
+}
+
+/** The difference of the figures as they are shown. */
+export function shownChange({ demand, carried }: Known, words: DemandWords): number {
+  const rounded = (rate: number | null) => words.rounded(rate ?? 0, halfWidth(demand));
+  const { limewater, others, waterChanges } = carried;
+  return rounded(limewater) + rounded(others) + rounded(waterChanges) - rounded(demand.demand);
 }
 
 function notEnough({ readings, windowDays }: Demand): string {
@@ -142,8 +150,17 @@ function bandPart({ alkalinity }: DemandFacts, words: DemandWords): SentencePart
   ];
 }
 
+/** The strength of limewater that would hold the level, g of hydroxide in a litre; null where that is not known. */
+export function holdingGPerL({ demand, carried, ceiling, netVolumeL }: Omit<DemandFacts, 'alkalinity'>): number | null {
+  if (!demand.enough || demand.low <= 0 || !ceiling || ceiling.evaporationLPerDay <= 0) return null;
+  const needed = demand.demand - carried.others - carried.waterChanges;
+  if (needed <= 0 || needed > ceiling.saturated) return null;
+  return (((needed * netVolumeL) / ceiling.evaporationLPerDay) * CALCIUM_HYDROXIDE_G_PER_MOL) / 2000;
+}
+
 /** The strength that would hold the level, or that limewater can't. Only where the tests do tell a drift. */
-function advicePart({ demand, carried, ceiling, netVolumeL }: DemandFacts, words: DemandWords): SentencePart[] {
+function advicePart(facts: DemandFacts, words: DemandWords): SentencePart[] {
+  const { demand, carried, ceiling } = facts;
   const drift = driftOf({ demand, carried });
   if (!demand.enough || !ceiling || (drift !== 'slips' && drift !== 'rises')) return [];
   const needed = demand.demand - carried.others - carried.waterChanges;
@@ -152,7 +169,6 @@ function advicePart({ demand, carried, ceiling, netVolumeL }: DemandFacts, words
     return [{ text: ` That is more than limewater can carry at today's evaporation, by ${short} a day.` }];
   }
   if (needed > ceiling.saturated) return [{ text: ' Saturated limewater with vinegar would hold it.' }];
-  if (needed <= 0 || ceiling.evaporationLPerDay <= 0) return [];
-  const gramsPerL = (((needed * netVolumeL) / ceiling.evaporationLPerDay) * CALCIUM_HYDROXIDE_G_PER_MOL) / 2000;
-  return [{ text: ` Limewater of ${gramsPerL.toFixed(2)} g/L would hold it.` }];
+  const gramsPerL = holdingGPerL(facts);
+  return gramsPerL === null ? [] : [{ text: ` Limewater of ${gramsPerL.toFixed(2)} g/L would hold it.` }];
 }

@@ -1,7 +1,7 @@
 import type { LatestValue, SystemGlance } from '@shared/contracts/water.ts';
 import { systemTitle } from '@shared/domain/system-title.ts';
 import { joinWords, plural } from '@/formatting/plural.ts';
-import { type DemandWords, driftOf, netOf } from '@/views/water/demand-sentence.ts';
+import { type DemandWords, driftOf, netOf, shownChange } from '@/views/water/demand-sentence.ts';
 
 /** So many systems are named with their numbers; the rest is counted. */
 const MOST_NAMED = 3;
@@ -31,12 +31,15 @@ export function overviewSentence(glances: readonly SystemGlance[], words: Demand
 function stateOf(glance: SystemGlance, words: DemandWords): string {
   const latest = alkalinityOf(glance);
   const level = latest?.band && isOut(glance) ? [`is ${latest.state} its band at ${words.level(latest.value)}`] : [];
+  return joinWords([...level, ...movement(glance, words)]);
+}
+
+function movement(glance: SystemGlance, words: DemandWords): string[] {
+  const { demand, carried } = glance;
   const net = netOf(glance);
-  const drift =
-    net && isMoving(glance)
-      ? [`${net.change < 0 ? 'slips' : 'rises'} ${words.bare(Math.abs(net.change), net.error)} a day`]
-      : [];
-  return joinWords([...level, ...drift]);
+  if (!demand.enough || !net || !isMoving(glance)) return [];
+  const change = words.bare(Math.abs(shownChange({ demand, carried }, words)), net.error);
+  return [`${net.change < 0 ? 'slips' : 'rises'} ${change} a day`];
 }
 
 function alkalinityOf({ latest }: SystemGlance): LatestValue | undefined {

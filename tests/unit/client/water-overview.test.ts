@@ -6,6 +6,7 @@ import { overviewSentence } from '@/views/water/overview-sentence.ts';
 const WORDS: DemandWords = {
   rate: (rate) => `${rate.toFixed(2)} dKH`,
   bare: (rate) => rate.toFixed(2),
+  rounded: (rate) => Number(rate.toFixed(2)),
   level: (level) => `${level.toFixed(1)} dKH`,
 };
 

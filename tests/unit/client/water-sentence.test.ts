@@ -6,6 +6,7 @@ import { demandSentence, type DemandFacts, type DemandWords, driftOf } from '@/v
 const WORDS: DemandWords = {
   rate: (rate, error) => (error > 0 ? `${rate.toFixed(2)} ± ${error.toFixed(2)} dKH` : `${rate.toFixed(2)} dKH`),
   bare: (rate) => rate.toFixed(2),
+  rounded: (rate) => Number(rate.toFixed(2)),
   level: (level) => `${level.toFixed(1)} dKH`,
 };
 
@@ -42,6 +43,13 @@ function alkalinityAt(value: number, state: LatestValue['state']): LatestValue {
 describe('demandSentence', () => {
   it('when less is carried than taken, says that alkalinity slips and by how much', () => {
     expect(say({})).toBe('Uses 1.23 ± 0.01 dKH a day and limewater carries 1.18, so alkalinity slips 0.05 a day.');
+  });
+
+  it('when figures are rounded, what is shown adds up', () => {
+    expect(say(aDemand(1.147, 0.814, { waterChanges: 0.003 }))).toContain('Uses 1.15');
+    expect(say(aDemand(1.147, 0.814, { waterChanges: 0.003 }))).toContain(
+      'carries 0.81, so alkalinity slips 0.34 a day',
+    );
   });
 
   it('when the difference is smaller than the error of the tests, does not claim more than a chance', () => {
