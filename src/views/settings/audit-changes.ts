@@ -23,6 +23,18 @@ export function actionWords(action: string): string {
   return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
+/** "lines.0.holdUntil" as "lines 1, hold until". */
+export function fieldWords(field: string): string {
+  const parts = field
+    .split('.')
+    .map((part) => (/^\d+$/.test(part) ? ` ${String(Number(part) + 1)}` : `, ${spaced(part)}`));
+  return parts.join('').replace(/^, /, '');
+}
+
+function spaced(name: string): string {
+  return name.replaceAll(/[A-Z]+/g, (capitals) => ` ${capitals.toLowerCase()}`).trim();
+}
+
 function flattened(value: unknown, path = ''): Map<string, string> {
   if (value === null || value === undefined) return new Map();
   if (typeof value !== 'object') return new Map([[path === '' ? 'value' : path, String(value)]]);

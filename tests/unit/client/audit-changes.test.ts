@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { actionWords, changesBetween, recordName } from '@/views/settings/audit-changes.ts';
+import { actionWords, changesBetween, fieldWords, recordName } from '@/views/settings/audit-changes.ts';
 
 describe('what a change did', () => {
   it('when fields differ, only those are named, nested ones by dotted names', () => {
@@ -26,5 +26,16 @@ describe('what a change did', () => {
 
   it('says the action in words', () => {
     expect(actionWords('user.signed_in')).toBe('User signed in');
+  });
+});
+
+describe('the name of a field', () => {
+  it.each([
+    ['name', 'name'],
+    ['holdUntil', 'hold until'],
+    ['pieces.0.listingId', 'pieces 1, listing id'],
+    ['netVolumeL', 'net volume l'],
+  ])('reads %s as %s', (field, words) => {
+    expect(fieldWords(field)).toBe(words);
   });
 });
