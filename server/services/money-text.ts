@@ -1,8 +1,8 @@
 import { minorDigits } from '../../shared/domain/money.ts';
 
-/** An amount for mails, papers and messages, such as "EUR 1,204.50". */
+/** An amount for mails, papers and messages, such as "1,204.50 EUR". */
 export function moneyText(minor: number, currency: string): string {
-  return `${currency}\u00a0${amountText(minor, currency)}`;
+  return `${amountText(minor, currency)}\u00a0${currency}`;
 }
 
 /** The same without the currency, for columns whose head names it. */

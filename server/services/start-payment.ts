@@ -1,4 +1,5 @@
 import { and, eq } from 'drizzle-orm';
+import { gradeByCode } from '../../shared/domain/growth.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { orders, payments } from '../db/schema/index.ts';
 import { inWrite, type Actor, type Write } from '../db/write.ts';
@@ -58,8 +59,8 @@ function checkoutRequest(write: Write, order: OrderRow, expiresAt: number, publi
     email: storeRow(write.tx, order.storeId).email,
     currency: order.currency,
     lines: [
-      ...orderLinesOf(write.tx, order.id).map(({ lineCode, tradeName, quantity, priceMinor }) => ({
-        name: `${lineCode} ${tradeName}`,
+      ...orderLinesOf(write.tx, order.id).map(({ lineCode, tradeName, grade, quantity, priceMinor }) => ({
+        name: `${lineCode} ${tradeName}, ${gradeByCode(grade).label.toLowerCase()}`,
         quantity,
         unitAmountMinor: priceMinor,
       })),

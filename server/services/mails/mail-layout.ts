@@ -58,9 +58,14 @@ function tableOf(rows: readonly { label: string; value: string }[]): string {
   const cell = `padding:7px 0;border-top:1px solid ${RULE};${FONT};font-size:14px;line-height:20px`;
   const lines = rows.map(
     ({ label, value }) =>
-      `<tr><td style="${cell};color:${INK_SOFT}">${escaped(label)}</td><td align="right" style="${cell};color:${INK}">${escaped(value)}</td></tr>`,
+      `<tr><td style="${cell};color:${INK_SOFT}">${escaped(label)}</td><td align="right" style="${cell};color:${INK}">${unbroken(escaped(value))}</td></tr>`,
   );
   return `<table role="presentation" width="100%" cellspacing="0" cellpadding="0" style="margin:0 0 18px">${lines.join('')}</table>`;
+}
+
+/** Codes like 7Q2-KX9M are not broken at their dash. */
+function unbroken(html: string): string {
+  return html.replaceAll(/\b[0-9A-Z]{3}-[0-9A-Z]{4}\b/g, '<span style="white-space:nowrap">$&</span>');
 }
 
 function buttonOf({ label, url }: { label: string; url: string }): string {

@@ -1,5 +1,6 @@
 import { eq } from 'drizzle-orm';
 import { z } from 'zod';
+import { gradeByCode } from '../../../shared/domain/growth.ts';
 import { formatPlugCode } from '../../../shared/domain/plug-code.ts';
 import { refunds } from '../../db/schema/index.ts';
 import type { Deps } from '../../deps.ts';
@@ -25,7 +26,7 @@ export function orderPlacedMail(deps: Deps, data: Record<string, unknown>): Mail
         : `Thank you. Your corals are kept until ${clockText(order.holdUntil, farm.timeZone)}. Pay by then to keep them.`,
     ],
     rows: linesOf(deps, order),
-    act: { label: 'Open and pay the order', url: addressOf(deps, order) },
+    act: { label: order.holdUntil === null ? 'Open the order' : 'Open and pay the order', url: addressOf(deps, order) },
   });
 }
 
@@ -113,8 +114,8 @@ function addressOf({ config }: Deps, { id }: OrderRow): string {
 function linesOf({ db }: Deps, order: OrderRow): { label: string; value: string }[] {
   const { currency } = order;
   return [
-    ...orderLinesOf(db, order.id).map(({ lineCode, tradeName, quantity, priceMinor }) => ({
-      label: `${quantity} × ${lineCode} ${tradeName}`,
+    ...orderLinesOf(db, order.id).map(({ lineCode, tradeName, grade, quantity, priceMinor }) => ({
+      label: `${quantity} × ${lineCode} ${tradeName}, ${gradeByCode(grade).label.toLowerCase()}`,
       value: moneyText(quantity * priceMinor, currency),
     })),
     ...(order.taxMinor > 0 ? [{ label: 'Tax', value: moneyText(order.taxMinor, currency) }] : []),

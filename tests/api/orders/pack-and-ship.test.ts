@@ -255,7 +255,7 @@ describe('packing and shipping an order', () => {
 
       const { body } = await refund(401).expect(409);
 
-      expect(body.fields).toEqual([{ path: 'amountMinor', message: 'At most EUR\u00a04.00 can be given back.' }]);
+      expect(body.fields).toEqual([{ path: 'amountMinor', message: 'At most 4.00\u00a0EUR can be given back.' }]);
     });
 
     it('when all is asked for of an order that is still to be packed, tells to cancel it', async () => {

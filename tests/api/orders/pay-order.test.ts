@@ -48,7 +48,7 @@ describe('a store pays', () => {
       {
         ...{ orderId: order.id, orderNumber: 1001, currency: 'EUR', email: 'store-1@example.com' },
         description: 'Order 1001 at Test Farm',
-        lines: [{ name: 'WIG Wicket Green', quantity: 4, unitAmountMinor: 1800 }],
+        lines: [{ name: 'WIG Wicket Green, large frag', quantity: 4, unitAmountMinor: 1800 }],
         successUrl: `http://farm.example.com/shop/orders/${order.id}?payment=returned`,
         expiresAt: order.holdUntil,
       },

@@ -130,7 +130,7 @@ describe('a store orders', () => {
     const { body: problem } = await postOnce(buyer, '/api/shop/orders', body(1)).expect(409);
 
     expect(problem.fields).toEqual([
-      { path: 'lines.0.priceMinor', message: expect.stringContaining('The price is now EUR\u00a019.50.') },
+      { path: 'lines.0.priceMinor', message: expect.stringContaining('The price is now 19.50\u00a0EUR.') },
     ]);
     expect(farm.db.select().from(orders).all()).toEqual([]);
   });
@@ -179,6 +179,6 @@ describe('a store orders', () => {
       lines: [{ listingId: cheap.listingId, quantity: 2, priceMinor: 20 }],
     }).expect(409);
 
-    expect(problem.detail).toBe('Order for EUR\u00a00.50 or more.');
+    expect(problem.detail).toBe('Order for 0.50\u00a0EUR or more.');
   });
 });
