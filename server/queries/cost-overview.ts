@@ -1,7 +1,8 @@
-import { sql } from 'drizzle-orm';
+import { and, eq, isNotNull, ne, sql, sum } from 'drizzle-orm';
 import type { BatchCost, CostOverview, LineCost, SystemMonth } from '../../shared/contracts/costs.ts';
+import { costPerLivingFrag } from '../../shared/domain/costing.ts';
 import type { Db } from '../db/client.ts';
-import { batches, lines, systems } from '../db/schema/index.ts';
+import { batches, consumptions, items, lines, systems } from '../db/schema/index.ts';
 import { batchCosts } from './batch-cost.ts';
 import { COST_PARTS, costPools, farmMonths, type CostPool } from './cost-pools.ts';
 import { groupBy } from './group-by.ts';
@@ -12,6 +13,7 @@ export function costOverview(db: Db, now: number, timeZone: string): CostOvervie
   return {
     asOf: costs[0]?.asOf ?? null,
     ...carriedBy(costs),
+    used: usedByKind(db),
     lines: lineCosts(db, costs),
     months: systemMonths(db, now, timeZone),
   };
@@ -40,8 +42,10 @@ function lineCosts(db: Db, costs: readonly BatchCost[]): LineCost[] {
     .sort((a, b) => (b.perLivingMicro ?? -1) - (a.perLivingMicro ?? -1) || a.code.localeCompare(b.code));
 }
 
+type Carried = Extract<keyof LineCost, `${string}erLivingMicro`>;
+
 /** What the living pieces of batches carry, on average. */
-function carriedBy(costs: readonly BatchCost[]): Pick<LineCost, 'living' | 'perLivingMicro' | 'limePerLivingMicro'> {
+function carriedBy(costs: readonly BatchCost[]): { living: number } & Pick<LineCost, Carried> {
   const living = costs.reduce((sum, cost) => sum + cost.living, 0);
   const mean = (of: (cost: BatchCost) => number | null) =>
     living > 0 ? Math.round(costs.reduce((sum, cost) => sum + (of(cost) ?? 0) * cost.living, 0) / living) : null;
@@ -49,7 +53,23 @@ function carriedBy(costs: readonly BatchCost[]): Pick<LineCost, 'living' | 'perL
     living,
     perLivingMicro: mean((cost) => cost.perLivingMicro),
     limePerLivingMicro: mean((cost) => cost.limePerLivingMicro),
+    vinegarPerLivingMicro: mean((cost) => costPerLivingFrag(cost.vinegarMicro, cost.living + cost.leftAlive)),
+    cutPerLivingMicro: mean((cost) => costPerLivingFrag(cost.cutMicro, cost.living + cost.leftAlive)),
+    otherPerLivingMicro: mean((cost) => costPerLivingFrag(cost.otherMicro, cost.living + cost.leftAlive)),
   };
+}
+
+/** Of all time, so that one large water change does not tell the story. */
+function usedByKind(db: Db): CostOverview['used'] {
+  return db
+    .select({ kind: items.kind, costMicro: sum(consumptions.costMicro).mapWith(Number) })
+    .from(consumptions)
+    .innerJoin(items, eq(items.id, consumptions.itemId))
+    .where(and(isNotNull(consumptions.systemId), ne(consumptions.cause, 'cut')))
+    .groupBy(items.kind)
+    .all()
+    .filter(({ costMicro }) => costMicro > 0)
+    .sort((a, b) => b.costMicro - a.costMicro);
 }
 
 /** Newest month first. */

@@ -19,6 +19,9 @@ function lineColumns(currency: string): CsvColumns<LineCost> {
     [`total_${currency}`]: (line) => major(line.totalMicro),
     [`per_living_frag_${currency}`]: (line) => major(line.perLivingMicro),
     [`lime_per_living_frag_${currency}`]: (line) => major(line.limePerLivingMicro),
+    [`vinegar_per_living_frag_${currency}`]: (line) => major(line.vinegarPerLivingMicro),
+    [`plugs_and_glue_per_living_frag_${currency}`]: (line) => major(line.cutPerLivingMicro),
+    [`other_per_living_frag_${currency}`]: (line) => major(line.otherPerLivingMicro),
   };
 }
 

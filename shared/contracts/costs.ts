@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { ITEM_KINDS } from '../domain/supply-items.ts';
 import { id, idParams, instant } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 
@@ -27,6 +28,15 @@ export const BatchCost = z.object({
 });
 export type BatchCost = z.infer<typeof BatchCost>;
 
+/** What one living piece carries on average, and of what; null where no piece lives. */
+const carried = {
+  perLivingMicro: micro.nullable(),
+  limePerLivingMicro: micro.nullable(),
+  vinegarPerLivingMicro: micro.nullable(),
+  cutPerLivingMicro: micro.nullable(),
+  otherPerLivingMicro: micro.nullable(),
+};
+
 export const LineCost = z.object({
   lineId: id,
   code: z.string(),
@@ -34,8 +44,7 @@ export const LineCost = z.object({
   batches: z.int(),
   living: z.int(),
   totalMicro: micro,
-  perLivingMicro: micro.nullable(),
-  limePerLivingMicro: micro.nullable(),
+  ...carried,
 });
 export type LineCost = z.infer<typeof LineCost>;
 
@@ -57,8 +66,9 @@ export type SystemMonth = z.infer<typeof SystemMonth>;
 export const CostOverview = z.object({
   asOf: instant.nullable(),
   living: z.int(),
-  perLivingMicro: micro.nullable(),
-  limePerLivingMicro: micro.nullable(),
+  ...carried,
+  /** What the systems used in all, by kind of supply, the dearest first. */
+  used: z.array(z.object({ kind: z.enum(ITEM_KINDS), costMicro: micro })),
   lines: z.array(LineCost),
   months: z.array(SystemMonth),
 });

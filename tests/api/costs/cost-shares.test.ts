@@ -208,7 +208,10 @@ it('when the farm looks at its costs, lines show what a living frag carries and 
   const lines = await grower.get('/api/costs/export?table=lines');
   const months = await grower.get('/api/costs/export?table=months');
 
-  expect(overview.body).toMatchObject({ living: 5, perLivingMicro: 120_000, limePerLivingMicro: 20_000 });
+  expect(overview.body).toMatchObject({
+    ...{ living: 5, perLivingMicro: 120_000, limePerLivingMicro: 20_000, cutPerLivingMicro: 100_000 },
+    ...{ vinegarPerLivingMicro: 0, otherPerLivingMicro: 0, used: [{ kind: 'lime', costMicro: 100_000 }] },
+  });
   expect(overview.body.lines).toMatchObject([{ batches: 1, living: 5, totalMicro: 600_000, perLivingMicro: 120_000 }]);
   expect(batch.body).toMatchObject({
     batchId: cut.batchId,
@@ -216,7 +219,7 @@ it('when the farm looks at its costs, lines show what a living frag carries and 
     asOf: Date.parse('2026-03-02T09:00:00Z'),
   });
   expect(lines.text).toContain('per_living_frag_EUR');
-  expect(lines.text).toContain(',1,5,0.6,0.12,0.02');
+  expect(lines.text).toContain(',1,5,0.6,0.12,0.02,0,0.1,0');
   expect(months.text).toContain('2026-03,');
 });
 
@@ -231,6 +234,10 @@ it('when a farm is empty, its costs are empty and not an error', async () => {
     living: 0,
     perLivingMicro: null,
     limePerLivingMicro: null,
+    vinegarPerLivingMicro: null,
+    cutPerLivingMicro: null,
+    otherPerLivingMicro: null,
+    used: [],
     lines: [],
     months: [],
   });

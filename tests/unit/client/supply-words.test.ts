@@ -138,7 +138,7 @@ describe('costSentence', () => {
     ];
     const costs = { ...none, living: 10, perLivingMicro: 310_000, limePerLivingMicro: 0, used };
 
-    expect(text(costSentence(costs, money))).toContain('Salt mix is 71\u2009% of what the systems use.');
+    expect(text(costSentence(costs, money))).toContain('Of what the systems cost, 71\u2009% is salt mix.');
   });
 });
 
