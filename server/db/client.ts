@@ -11,7 +11,8 @@ export type Sqlite = SqliteDatabase.Database;
 export function openDatabase(file: string): { db: Db; sqlite: Sqlite } {
   const sqlite = new SqliteDatabase(file);
   sqlite.pragma('journal_mode = WAL');
-  sqlite.pragma('synchronous = NORMAL');
+  // What was answered must outlast a power cut: the payment service tells of a payment only until we say that we have it.
+  sqlite.pragma('synchronous = FULL');
   sqlite.pragma('foreign_keys = ON');
   sqlite.pragma('busy_timeout = 5000');
   sqlite.pragma('cache_size = -32000');

@@ -50,7 +50,7 @@ function knownError(error: unknown): DomainError | null {
   if (error instanceof DomainError) return error;
   if (error instanceof ZodError) return null;
   if (error instanceof multer.MulterError) return uploadError(error);
-  return domainErrorOf(error) ?? bodyParserError(error);
+  return domainErrorOf(error) ?? expressError(error);
 }
 
 function uploadError(error: multer.MulterError): DomainError {
@@ -58,9 +58,10 @@ function uploadError(error: multer.MulterError): DomainError {
   return new DomainError('input.invalid', 'The upload could not be read. Choose one file and send it again.');
 }
 
-/** Errors of Express's own parsers carry a status and a type; the text may quote the body, so it is not passed on. */
-function bodyParserError(error: unknown): DomainError | null {
+/** Errors of Express's own parsers and of its file server carry a status and a type; the text may quote the body, so it is not passed on. */
+function expressError(error: unknown): DomainError | null {
   if (!(error instanceof Error) || !('status' in error) || typeof error.status !== 'number') return null;
+  if (error.status === 404) return new DomainError('route.not_found', 'There is no such file. Reload the page.');
   if (error.status === 413) return new DomainError('upload.too_large', 'This is too much to send at once.');
   if (error.status >= 400 && error.status < 500)
     return new DomainError('input.invalid', 'The request could not be read.');

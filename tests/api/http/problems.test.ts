@@ -1,5 +1,12 @@
+import express from 'express';
+import supertest from 'supertest';
 import { describe, expect, it } from 'vitest';
+import { z } from 'zod';
+import { auditLog } from '../../../server/db/schema/index.ts';
+import { Api } from '../../../server/http/api.ts';
+import { errorHandler } from '../../../server/http/error-handler.ts';
 import { problem } from '../../../shared/contracts/common.ts';
+import type { Endpoint } from '../../../shared/contracts/endpoint.ts';
 import { healthEndpoints } from '../../../shared/contracts/health.ts';
 import { ERROR_STATUS } from '../../../shared/errors.ts';
 import { startFarm } from '../../support/start-farm.ts';
@@ -108,6 +115,29 @@ describe('error answers', () => {
     const reply = await owner.get('/api/farm');
 
     expect([reply.status, reply.body.name]).toEqual([200, 'Test Farm']);
+  });
+
+  it('when an answer breaks its own contract, what led to it is not kept', async () => {
+    const farm = await startFarm();
+    const app = express();
+    app.use((request, _response, next) => {
+      request.log = farm.deps.log;
+      next();
+    });
+    const endpoint = {
+      ...{ method: 'post', path: '/api/broken', access: 'public', summary: 'Answers nonsense' },
+      response: z.object({ id: z.uuid() }),
+    } as const satisfies Endpoint;
+    new Api(app, farm.deps).write(endpoint, (write) => {
+      write.audit({ action: 'thing.made', entity: 'thing', entityId: '1' });
+      return { id: 'no id' };
+    });
+    app.use(errorHandler);
+
+    const reply = await supertest(app).post('/api/broken').send();
+
+    expect([reply.status, reply.body.code]).toEqual([500, 'server.failed']);
+    expect(farm.db.select().from(auditLog).all()).toEqual([]);
   });
 
   it('every code has the status of an error', () => {
