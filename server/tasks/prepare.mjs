@@ -41,7 +41,7 @@ export function runTask(file, args = [], env = process.env) {
 }
 
 export function ensureFolder(folder) {
-  mkdirSync(folder, { recursive: true });
+  mkdirSync(folder, { recursive: true, mode: 0o700 });
 }
 
 function run(command, args, env = process.env) {

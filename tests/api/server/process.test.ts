@@ -3,10 +3,13 @@ import { statSync } from 'node:fs';
 import { createServer, request, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import path from 'node:path';
-import { describe, expect, it, onTestFinished } from 'vitest';
+import { describe, expect, it, onTestFinished, vi } from 'vitest';
 import { finishRequests } from '../../../server/shut-down.ts';
 import { root } from '../../../server/tasks/prepare.mjs';
 import { tempFolder } from '../../support/temp-folder.ts';
+
+/** Starting the real server compiles it first, which takes long on a busy machine. */
+vi.setConfig({ testTimeout: 120_000 });
 
 function listen(server: Server): Promise<number> {
   onTestFinished(() => void server.close());
