@@ -44,6 +44,7 @@ export function signInAsDemo(deps: Deps, email: string): UserRow {
   return user;
 }
 
+/** Who acts, where no request tells: sign-in and mailed links. */
 export function actorOf(user: UserRow): Actor {
   return { userId: user.id, name: user.name, role: user.role, storeId: user.storeId };
 }

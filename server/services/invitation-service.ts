@@ -60,6 +60,7 @@ export function resendInvitation(write: Write, id: string): Invitation {
   return toInvitation(renewed, storeName, write.now);
 }
 
+/** Takes an invitation back; its link stops working. @throws {DomainError} `record.not_found` once it was accepted */
 export function revokeInvitation(write: Write, id: string): void {
   const { token: row, storeName } = unusedInvitation(write.tx, id);
   write.tx.delete(mailedTokens).where(eq(mailedTokens.id, id)).run();

@@ -34,6 +34,7 @@ export function queueMail(write: Write, template: string, to: string, data: Reco
     .run();
 }
 
+/** The mail of a row of the outbox, as it reads now. */
 export async function renderMail(deps: Deps, row: typeof outboxMails.$inferSelect): Promise<MailBody> {
   const template = TEMPLATES[row.template];
   if (!template) throw new Error(`There is no mail template ${row.template}.`);

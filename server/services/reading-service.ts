@@ -35,6 +35,10 @@ export function logReadings(write: Write, input: LogReadings): Reading[] {
   return logged;
 }
 
+/**
+ * Corrects a reading.
+ * @throws {DomainError} `record.not_found`; `edit.stale`; `input.invalid`; `record.duplicate` where another stands at the time
+ */
 export function editReading(write: Write, readingId: string, ifMatch: number, edit: EditReading): Reading {
   const row = readingRow(write.tx, readingId);
   const before = showReading(write.tx, readingId);

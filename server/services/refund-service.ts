@@ -45,6 +45,7 @@ export function refundAll(write: Write, orderId: string, reason: string): number
   }, 0);
 }
 
+/** Notes money to be given back, in minor units; a job sends it. The caller sees to it that so much is left. */
 export function addRefund(write: Write, payment: PaymentRow, amountMinor: number, reason: string): RefundRow {
   const row = write.tx
     .insert(refunds)

@@ -42,6 +42,7 @@ export interface Movement {
 /** Pieces by batch and account, under {@link balanceKey}. Accounts at zero may be missing. */
 export type Balances = ReadonlyMap<string, number>;
 
+/** Whether an account of this kind gives out pieces that it never held: the cut and count differences. */
 export function mayGoBelowZero(kind: AccountKind): boolean {
   return ACCOUNTS[kind].role === 'source';
 }
@@ -51,10 +52,12 @@ export function isEnd(kind: AccountKind): boolean {
   return ACCOUNTS[kind].role === 'end';
 }
 
+/** The key of a batch's pieces on an account, in {@link Balances}. */
 export function balanceKey(batchId: string, { kind, ref }: Account): string {
   return JSON.stringify([batchId, kind, ref]);
 }
 
+/** Whole pieces of a batch on an account; zero where it was never named. */
 export function balanceOf(balances: Balances, batchId: string, account: Account): number {
   return balances.get(balanceKey(batchId, account)) ?? 0;
 }

@@ -20,6 +20,7 @@ export function parsePosition(text: string): { row: number; column: number } | n
   return { row: match[1].charCodeAt(0) - 65, column: Number(match[2]) };
 }
 
+/** The name of a place on a rack, such as `B-3`, from its row, counted from 0, and its column, counted from 1. */
 export function positionAt(row: number, column: number): string {
   return `${String.fromCharCode(65 + row)}-${column}`;
 }
