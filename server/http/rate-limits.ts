@@ -1,4 +1,4 @@
-import type { RequestHandler } from 'express';
+import type { Request, RequestHandler } from 'express';
 import { ipKeyGenerator, rateLimit } from 'express-rate-limit';
 import { DomainError } from '../../shared/errors.ts';
 
@@ -16,7 +16,7 @@ export function limitGuessing(): RequestHandler {
     limit: MAX_REQUESTS,
     standardHeaders: 'draft-8',
     legacyHeaders: false,
-    keyGenerator: (request) => ipKeyGenerator(request.ip ?? ''),
+    keyGenerator: networkOf,
     skip: (request) => request.method === 'GET' && request.baseUrl === '/api/session',
     handler: (_request, _response, next) => {
       const retryAfterSeconds = WINDOW / 1000;
@@ -27,4 +27,9 @@ export function limitGuessing(): RequestHandler {
       );
     },
   });
+}
+
+/** The network that a request comes from: one address, or for IPv6 the block that its owner can choose addresses from. */
+export function networkOf(request: Request): string {
+  return ipKeyGenerator(request.ip ?? '');
 }

@@ -5,6 +5,7 @@ import { type Session, sessionEndpoints } from '../../shared/contracts/session.t
 import { inWrite } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import type { Api } from '../http/api.ts';
+import { networkOf } from '../http/rate-limits.ts';
 import { endSession, startSession } from '../http/session.ts';
 import { sessionOf } from '../queries/session.ts';
 import { signIn, signInAsDemo } from '../services/auth-service.ts';
@@ -18,7 +19,7 @@ export function sessionRoutes(api: Api): void {
     sessionOf(deps.db, deps.config, caller && { userId: caller.userId, csrfToken: request.session.csrfToken ?? '' }),
   );
   api.act(sessionEndpoints.signIn, async ({ request, body }) => {
-    const user = await signIn(deps, { ...body, address: request.ip ?? '' });
+    const user = await signIn(deps, { ...body, address: networkOf(request) });
     return openSession(deps, request, user.id);
   });
   api.act(sessionEndpoints.demoSignIn, ({ request, body }) =>

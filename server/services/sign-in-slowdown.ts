@@ -11,7 +11,7 @@ const FIRST_WAIT = 5 * SECOND;
 export interface SignInTry {
   /** E-mail as typed; it counts the same whether or not an account has it. */
   email: string;
-  /** Network address that the try comes from. */
+  /** Network that the try comes from: an address, or a block of them. */
   address: string;
 }
 

@@ -1,10 +1,13 @@
-import { afterAll, beforeEach, describe, expect, it } from 'vitest';
+import { afterAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import type { z } from 'zod';
 import { type Endpoint, pathOf } from '../../shared/contracts/endpoint.ts';
 import { BAD_PATH_PARTS, BAD_QUERY_VALUES, BAD_VALUES, jsonOf, RawJson } from '../support/bad-input/bad-values.ts';
 import { leavesOf, pathNames, sampleOf, withValue } from '../support/bad-input/sample-request.ts';
 import { faultOf, problemOf, type Reply, type Sent, Site } from '../support/bad-input/sweep.ts';
 import { workedFarm } from '../support/bad-input/worked-farm.ts';
+
+// Some endpoints hash a password for each of their many bad values, which takes long on a busy machine.
+vi.setConfig({ testTimeout: 180_000 });
 
 const { farm, known, knownAt } = await workedFarm();
 const site = new Site(farm);

@@ -1,4 +1,7 @@
 import { describe, expect, it } from 'vitest';
+import supertest from 'supertest';
+import { createApp } from '../../../server/app.ts';
+import { signInFailures } from '../../../server/db/schema/index.ts';
 import { startFarm, TEST_PASSWORD, type TestFarm } from '../../support/start-farm.ts';
 
 const SECOND = 1000;
@@ -64,6 +67,40 @@ describe('slowing down who guesses', () => {
       await failTimes(farm, 4, `${name}@example.com`);
 
     expect((await tryToSignIn(farm, 'grower@example.com', TEST_PASSWORD)).status).toBe(429);
+  });
+
+  it.each([
+    [
+      'no proxy stands in front, what a client says of its address does not count',
+      0,
+      ['203.0.113.1', '203.0.113.2'],
+      1,
+    ],
+    ['a proxy stands in front, the address that it saw counts', 1, ['203.0.113.1', '203.0.113.2'], 2],
+    [
+      'a client invents an address before the proxy’s, it does not count',
+      1,
+      ['1.1.1.1, 203.0.113.1', '2.2.2.2, 203.0.113.1'],
+      1,
+    ],
+    ['one IPv6 customer uses many addresses, they count as one', 1, ['2001:db8:1:2::3', '2001:db8:1:2:ffff::9'], 1],
+  ])('when %s', async (_, trustProxy, forwarded, networks) => {
+    const farm = await startFarm();
+    const config = { ...farm.deps.config, trustProxy };
+    const { app } = createApp({ ...farm.deps, config }, 'a secret that only this test knows, long enough');
+    for (const each of forwarded) {
+      await supertest(app)
+        .post('/api/session')
+        .set('X-Forwarded-For', each)
+        .send({ email: 'owner@example.com', password: 'not the password' });
+    }
+
+    const subjects = farm.db
+      .select()
+      .from(signInFailures)
+      .all()
+      .map(({ subject }) => subject);
+    expect(new Set(subjects.filter((subject) => subject.startsWith('address:'))).size).toBe(networks);
   });
 
   it('when many guesses come at once, no more than five are looked at', async () => {
