@@ -1,6 +1,7 @@
 import { and, eq } from 'drizzle-orm';
 import type {
   ChangeOver,
+  ChangeOverResult,
   CreateReservoir,
   EditReservoir,
   LogLevel,
@@ -52,7 +53,11 @@ export function logLevel(write: Write, reservoirId: string, { at, levelL, note }
 }
 
 /** Puts a reservoir online for its system; the one that was online comes off at the same instant. */
-export function changeOver(write: Write, reservoirId: string, { at, formerLevelL, note }: ChangeOver): Reservoir {
+export function changeOver(
+  write: Write,
+  reservoirId: string,
+  { at, formerLevelL, note }: ChangeOver,
+): ChangeOverResult {
   const next = reservoirRow(write.tx, reservoirId);
   if (next.state === 'online') throw new DomainError('rule.refused', `${next.code} is online already.`);
   if (next.levelL === 0) {
@@ -66,8 +71,8 @@ export function changeOver(write: Write, reservoirId: string, { at, formerLevelL
     addEvent(write, former, { kind: 'offline', at: instant, levelL, alkalinityMeqL: former.alkalinityMeqL, note });
   }
   const { levelL, alkalinityMeqL } = next;
-  addEvent(write, next, { kind: 'online', at: instant, levelL, alkalinityMeqL, note });
-  return showReservoir(write.tx, reservoirId, write.now);
+  const event = addEvent(write, next, { kind: 'online', at: instant, levelL, alkalinityMeqL, note });
+  return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
 }
 
 /**

@@ -4,7 +4,7 @@ import { done, id, idParams, instant } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 import { parameterCode } from './systems.ts';
 
-export const IMPORT_MAX_BYTES = 5 * 1024 * 1024;
+export const IMPORT_MAX_BYTES = 5_000_000;
 export const IMPORT_MAX_ROWS = 100_000;
 export const IMPORT_MAX_COLUMNS = 60;
 

@@ -93,6 +93,9 @@ export const RefillResult = z.object({
 });
 export type RefillResult = z.infer<typeof RefillResult>;
 
+export const ChangeOverResult = z.object({ reservoir: Reservoir, event: ReservoirEvent });
+export type ChangeOverResult = z.infer<typeof ChangeOverResult>;
+
 export const reservoirEndpoints = {
   list: {
     method: 'get',
@@ -165,7 +168,7 @@ export const reservoirEndpoints = {
     summary: 'Put a reservoir online in place of the one that was',
     params: idParams,
     body: ChangeOver,
-    response: Reservoir,
+    response: ChangeOverResult,
     creates: true,
   },
   undo: {

@@ -136,7 +136,7 @@ it.each([
 it('when the file is too large or of another kind, refuses it; a made-up mapping gets a message', async () => {
   const { grower } = await importFarm();
 
-  const large = await send(grower, '/api/reading-imports/preview', 'x'.repeat(5 * 1024 * 1024 + 1));
+  const large = await send(grower, '/api/reading-imports/preview', 'x'.repeat(5_000_001));
   const image = await grower
     .post('/api/reading-imports/preview')
     .attach('file', Buffer.from('x'), { filename: 'x.png', contentType: 'image/png' });

@@ -155,7 +155,10 @@ it('when another reservoir goes online, the former comes off with its last level
 
   const reply = await grower.post(`/api/reservoirs/${other}/changeovers`).send({ formerLevelL: 4 });
 
-  expect(reply.body).toMatchObject({ id: other, state: 'online' });
+  expect(reply.body).toMatchObject({
+    reservoir: { id: other, state: 'online' },
+    event: { reservoirId: other, kind: 'online' },
+  });
   expect(reservoirIn(farm, reservoirId)).toMatchObject({ state: 'spent', levelL: 4 });
   const online = farm.db.select().from(reservoirs).where(eq(reservoirs.state, 'online')).all();
   expect(online.map(({ id }) => id)).toEqual([other]);
