@@ -3,10 +3,12 @@ import { stockEndpoints } from '@shared/contracts/stock.ts';
 import type { LossCause, LossSeen } from '@shared/domain/losses.ts';
 import { callApi } from '@/api/call-api.ts';
 
+const RACK_CHOICES = ['racks', 'choices'];
+
 /** Racks by code, to know a rack's label from a plug's. */
 export function useRackChoices() {
   return useQuery({
-    queryKey: ['racks', 'choices'],
+    queryKey: RACK_CHOICES,
     queryFn: ({ signal }) => callApi(stockEndpoints.listRacks, { query: {}, signal }),
   });
 }
@@ -22,6 +24,8 @@ export function useScanActs() {
   async function changing<T>(call: Promise<T>): Promise<T> {
     const answer = await call;
     await client.invalidateQueries({ refetchType: 'none' });
+    // How many positions of the rack are free is said on the scan page itself.
+    void client.invalidateQueries({ queryKey: RACK_CHOICES });
     return answer;
   }
 

@@ -6,8 +6,10 @@ import { explainProblem, readScan } from '@shared/domain/scan-text.ts';
 import { newKey } from '@/api/new-key.ts';
 import type { ScanSignal } from '@/composables/useScanSignal.ts';
 import { useScanActs } from '@/queries/scan.ts';
+import { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 import type { ScanAct } from '@/views/scan/scan-entries.ts';
 import { useScanEntries } from '@/views/scan/useScanEntries.ts';
+import { PLUG_STATES } from '@/views/stock/stock-words.ts';
 
 /** What the acts need beside a plug; chosen once for a whole run of scans. */
 export interface ScanChoices {
@@ -21,6 +23,7 @@ export interface ScanChoices {
 /** A run of scans: an act chosen first and many scans, or one scan first and then its act. */
 export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: ScanSignal) => void) {
   const acts = useScanActs();
+  const units = useUnitChoicesStore();
   const list = useScanEntries((went) => {
     signal(went ? 'done' : 'refused');
   });
@@ -86,7 +89,7 @@ export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: S
       foundPlug.value = plug;
       foundRack.value = null;
       return {
-        detail: `${plug.line.tradeName}, ${plug.rack ? placeWords(plug.rack.code, plug.position) : plug.state}`,
+        detail: `${plug.line.tradeName}, ${plug.rack ? placeWords(plug.rack.code, plug.position) : PLUG_STATES[plug.state].label}`,
         to: { name: 'plug', params: { code } },
       };
     });
@@ -129,7 +132,10 @@ export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: S
     waiting.value = null;
     await list.run(formatPlugCode(code), null, async () => {
       const { ids } = await acts.measure(code, sizeMm, key);
-      return { detail: `${sizeMm} mm`, undo: () => Promise.all(ids.map((id) => acts.undoMeasurement(id))) };
+      return {
+        detail: units.say('length', sizeMm, { decimals: units.unitFor('length') === 'mm' ? 1 : undefined }),
+        undo: () => Promise.all(ids.map((id) => acts.undoMeasurement(id))),
+      };
     });
   }
 
