@@ -10,8 +10,8 @@ const site = useSite();
 /** Types a test card into the hosted page of the payment service. */
 async function payWith(page: Page, number: string): Promise<void> {
   await page.getByLabel('Card number').fill(number);
-  await page.getByLabel(/^Expiry/).fill('12 / 34');
-  await page.getByLabel(/^CVC/).fill('123');
+  await page.getByLabel('Expiry').fill('12 / 34');
+  await page.getByLabel('CVC').fill('123');
   await page.getByLabel('Name on card').fill('Noor Aydin');
   await page.getByRole('button', { name: /^Pay / }).click();
 }
@@ -40,12 +40,11 @@ it.each<Device>(['phone', 'desktop'])(
     await payWith(page, '4242424242424242');
 
     await page.waitForURL((url) => url.href.startsWith(address));
-    await page.getByText('Paid', { exact: true }).first().waitFor();
+    await page.getByText('paid', { exact: true }).first().waitFor();
     const id = new URL(address).pathname.split('/').at(-1) ?? '';
     const order = await site().get<ShopOrder>(page, `/api/shop/orders/${id}`);
     expect(order.state).toBe('paid');
-    const mail = await site().mailTo('example.com', new RegExp(`${order.number}.*paid|paid.*${order.number}`, 'i'));
-    expect(mail.text).toContain(String(order.number));
+    await site().mailTo('example.com', new RegExp(`${order.number}.*paid|paid.*${order.number}`, 'i'));
   },
 );
 

@@ -37,7 +37,7 @@ describe.each(Object.keys(DEVICES) as Device[])('on a %s', (device) => {
       expect(await tooWide(page)).toEqual([]);
       expect(await violations(page)).toEqual([]);
       await page.emulateMedia({ colorScheme: 'dark' });
-      await page.locator('.v-theme--dark').first().waitFor();
+      await page.locator('.v-theme--limesteadDark').first().waitFor();
       expect(await violations(page)).toEqual([]);
     },
   );

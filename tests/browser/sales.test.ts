@@ -42,7 +42,7 @@ it('when an order is picked by scans, wrong plugs are refused, and it is packed 
     await page.getByRole('progressbar', { name: `${picked} of ${plan.wanted} picked` }).waitFor();
   }
   await page.getByRole('button', { name: 'Pack', exact: true }).click();
-  await page.getByRole('dialog').getByLabel('Boxes').fill('1');
+  await page.getByRole('dialog').getByLabel('Boxes', { exact: true }).fill('1');
   await page.getByRole('dialog').getByRole('button', { name: 'Packed' }).click();
   await toast(page, 'is packed');
 
