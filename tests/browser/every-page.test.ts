@@ -38,6 +38,8 @@ describe.each(Object.keys(DEVICES) as Device[])('on a %s', (device) => {
       expect(await violations(page)).toEqual([]);
       await page.emulateMedia({ colorScheme: 'dark' });
       await page.locator('.v-theme--limesteadDark').first().waitFor();
+      // Colours must have arrived before they are compared.
+      await page.waitForFunction(() => document.getAnimations().every(({ playState }) => playState !== 'running'));
       expect(await violations(page)).toEqual([]);
     },
   );
