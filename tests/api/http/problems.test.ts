@@ -1,4 +1,5 @@
 import express from 'express';
+import { pinoHttp } from 'pino-http';
 import supertest from 'supertest';
 import { describe, expect, it } from 'vitest';
 import { z } from 'zod';
@@ -120,10 +121,7 @@ describe('error answers', () => {
   it('when an answer breaks its own contract, what led to it is not kept', async () => {
     const farm = await startFarm();
     const app = express();
-    app.use((request, _response, next) => {
-      request.log = farm.deps.log;
-      next();
-    });
+    app.use(pinoHttp({ logger: farm.deps.log }));
     const endpoint = {
       ...{ method: 'post', path: '/api/broken', access: 'public', summary: 'Answers nonsense' },
       response: z.object({ id: z.uuid() }),
