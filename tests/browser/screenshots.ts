@@ -15,7 +15,7 @@ const { values: options } = parseArgs({
 const README: readonly { name: string; device: Device; theme: Theme }[] = [
   { name: 'today', device: 'phone', theme: 'light' },
   { name: 'system', device: 'desktop', theme: 'light' },
-  { name: 'rack', device: 'desktop', theme: 'light' },
+  { name: 'rack', device: 'phone', theme: 'light' },
   { name: 'plug', device: 'phone', theme: 'dark' },
   { name: 'mix-limewater', device: 'phone', theme: 'light' },
   { name: 'costs', device: 'desktop', theme: 'dark' },

@@ -13,7 +13,7 @@ export type Theme = 'light' | 'dark';
 
 const FLAGS = [
   ...['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking'],
-  ...['--disable-component-update', '--disable-sync'],
+  ...['--disable-component-update', '--disable-sync', '--lang=en-GB'],
 ];
 
 export interface Visit {
