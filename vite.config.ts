@@ -31,7 +31,7 @@ export default defineConfig({
     projects: [
       {
         extends: true,
-        test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], exclude: ['tests/unit/client/**'] },
+        test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], exclude: ['tests/unit/client/**'], isolate: false },
       },
       {
         extends: true,
@@ -43,7 +43,11 @@ export default defineConfig({
           server: { deps: { inline: ['vuetify'] } },
         },
       },
-      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 30_000 } },
+      {
+        extends: true,
+        // Each test has a farm of its own, so files can share the loaded server: loading it takes longest by far.
+        test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 60_000, isolate: false },
+      },
       {
         extends: true,
         test: {
