@@ -18,6 +18,11 @@ export function ageWords(days: number): string {
   return days < 21 ? plural(days, 'day') : plural(Math.round(days / 7), 'week');
 }
 
+/** When something was done, by its age: 'today', '3 weeks ago'. */
+export function agoWords(days: number): string {
+  return days === 0 ? 'today' : `${ageWords(days)} ago`;
+}
+
 /** What of a batch or line can be sold and how much of it is promised, said so that it holds where too much is promised. */
 export function saleableWords(saleable: number, held: number): string {
   const are = saleable === 0 ? 'None is saleable' : `${formatNumber(saleable)} ${isOrAre(saleable)} saleable`;

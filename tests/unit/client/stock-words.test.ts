@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { countWords, rackWords, saleableWords } from '../../../src/views/stock/stock-words.ts';
+import { agoWords, countWords, rackWords, saleableWords } from '../../../src/views/stock/stock-words.ts';
 
 describe('what can be sold and what is promised', () => {
   it.each([
@@ -19,6 +19,17 @@ describe('what can be sold and what is promised', () => {
   it('leaves out of a row what is nothing', () => {
     expect(countWords({ alive: 1204, held: 0, withheld: 0 })).toBe('1,204 alive');
     expect(countWords({ alive: 94, held: 3, withheld: 14 })).toBe('94 alive · 3 promised · 14 withheld');
+  });
+});
+
+describe('when something was done', () => {
+  it.each([
+    [0, 'today'],
+    [1, '1 day ago'],
+    [20, '20 days ago'],
+    [21, '3 weeks ago'],
+  ])('%i days back is said: %s', (days, words) => {
+    expect(agoWords(days)).toBe(words);
   });
 });
 
