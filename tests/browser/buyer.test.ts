@@ -25,7 +25,7 @@ it.each<Device>(['phone', 'desktop'])(
     const more = page.getByRole('button', { name: /^One more of/ }).and(page.locator(':enabled'));
     await more.first().click();
     await more.first().click();
-    await page.getByText('2 corals').waitFor();
+    await page.getByText('2 corals', { exact: true }).waitFor();
     await page.getByRole('link', { name: 'Look at your order' }).click();
     await heading(page, 'Your order');
     await page.getByRole('button', { name: 'Place the order' }).click();
