@@ -1,5 +1,6 @@
 import type { Page } from 'playwright-core';
 import { it } from 'vitest';
+import { expectWellMade } from './support/accessibility.ts';
 import { choose, heading, toast } from './support/acts.ts';
 import { useSite } from './support/use-site.ts';
 
@@ -18,6 +19,7 @@ it('when a farm is new, its owner sets it up in the browser and stands on Today'
   const page = await site().newPage({ device: 'phone' });
   await page.goto('/');
   await heading(page, 'Set up the farm');
+  await expectWellMade(page);
 
   await page.getByLabel('Name of the farm').fill('Lower Quay Corals');
   await page.getByLabel('Your name').fill('Ines Prado');
@@ -48,6 +50,7 @@ it('when someone is invited, the link in the mail makes an account with the role
   const grower = await site().newPage({ device: 'phone' });
   await grower.goto(link ?? 'no link');
   await grower.getByText('You are invited to Lower Quay Corals as grower').waitFor();
+  await expectWellMade(grower);
   await grower.getByLabel('Your name').fill('Pedro Lima');
   await grower.getByLabel('Password', { exact: true }).fill(GROWER.password);
   await grower.getByRole('button', { name: 'Accept' }).click();

@@ -1,5 +1,6 @@
 import { expect, it } from 'vitest';
 import type { PublicPlug } from '../../shared/contracts/public.ts';
+import { expectWellMade } from './support/accessibility.ts';
 import { heading } from './support/acts.ts';
 import { somePlug } from './support/stops.ts';
 import { useSite } from './support/use-site.ts';
@@ -19,6 +20,7 @@ it('when anyone opens the address on a plug, they see its public side and nothin
   const text = await page.locator('body').innerText();
   expect(text).toContain(plug.taxon);
   expect(text).not.toMatch(/€|EUR|rack|cost|alive/i);
+  await expectWellMade(page);
 });
 
 it('when staff open the same address, they stand on the plug’s own page', async () => {
