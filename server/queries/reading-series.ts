@@ -1,13 +1,14 @@
 import type { ReadingSeries, SeriesDays } from '../../shared/contracts/readings.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { thinSeries } from '../../shared/domain/thin-series.ts';
-import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { Db } from '../db/client.ts';
-import { readingsBetween } from './readings.ts';
+import { readingsWithError } from './reading-errors.ts';
 import { bandsOf, systemRow } from './systems.ts';
 
 const MOST_POINTS = 1000;
+/** Half of a 95 % interval of a normal error. */
+const HALF_INTERVAL_SD = 1.96;
 
 /** Readings of one parameter up to now, for a chart, with few enough points to draw. */
 export function readingSeries(
@@ -18,12 +19,10 @@ export function readingSeries(
 ): ReadingSeries {
   systemRow(db, systemId);
   const from = now - days * MS_PER_DAY;
-  const all = readingsBetween(db, systemId, parameter, from, now);
+  const all = readingsWithError(db, systemId, parameter, from, now);
   return {
     ...{ parameter, from, to: now, total: all.length },
-    points: thinSeries(all, MOST_POINTS).map(({ at, value, method }) => ({
-      ...{ at, value, error: testErrorOf(parameter, method).half },
-    })),
+    points: thinSeries(all, MOST_POINTS).map(({ at, value, sd }) => ({ at, value, error: HALF_INTERVAL_SD * sd })),
     band: bandsOf(db, systemId).find((band) => band.parameter === parameter) ?? null,
   };
 }

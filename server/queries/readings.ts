@@ -48,9 +48,9 @@ export function readingsBetween(
   parameter: ParameterCode,
   from: number,
   to: number,
-): { at: number; value: number; method: string }[] {
+): { id: string; at: number; value: number; method: string }[] {
   return db
-    .select({ at: readings.takenAt, value: readings.value, method: readings.method })
+    .select({ id: readings.id, at: readings.takenAt, value: readings.value, method: readings.method })
     .from(readings)
     .where(
       and(
