@@ -5,3 +5,5 @@ export * from './stock.ts';
 export * from './supplies.ts';
 export * from './costs.ts';
 export * from './orders.ts';
+export * from './tasks.ts';
+export * from './alerts.ts';
