@@ -1,5 +1,6 @@
 export * from './farm.ts';
 export * from './people.ts';
+export * from './test-methods.ts';
 export * from './water.ts';
 export * from './stock.ts';
 export * from './supplies.ts';

@@ -1,6 +1,7 @@
 import { sql } from 'drizzle-orm';
-import { check, index, integer, primaryKey, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
+import { blob, check, index, integer, primaryKey, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
 import { id, instant, version } from './columns.ts';
+import { calibrations, kitLots, readingPhotos, testMethods } from './test-methods.ts';
 
 /** Tanks that share one water volume. */
 export const systems = sqliteTable(
@@ -73,16 +74,42 @@ export const racks = sqliteTable(
   ],
 );
 
-/** One import of readings from a file; undone as a whole. */
-export const readingImports = sqliteTable('reading_import', {
-  id: id(),
-  fileName: text('file_name').notNull(),
-  readings: integer('readings').notNull(),
-  at: instant('at').notNull(),
-  by: text('by').notNull(),
+/** One import of readings from a file; undone as a whole. A large one is done in pieces by a job. */
+export const readingImports = sqliteTable(
+  'reading_import',
+  {
+    id: id(),
+    fileName: text('file_name').notNull(),
+    /** Readings stored so far. */
+    readings: integer('readings').notNull(),
+    at: instant('at').notNull(),
+    by: text('by').notNull(),
+    state: text('state', { enum: ['waiting', 'running', 'finished', 'failed'] })
+      .notNull()
+      .default('finished'),
+    rows: integer('rows').notNull().default(0),
+    rowsDone: integer('rows_done').notNull().default(0),
+    duplicates: integer('duplicates').notNull().default(0),
+    badRows: integer('bad_rows').notNull().default(0),
+    /** Why it failed, in words for the person. */
+    failure: text('failure'),
+  },
+  (table) => [index('reading_import_at').on(table.at), index('reading_import_state').on(table.state)],
+);
+
+/** The file of an import that is still to be done, and what its columns mean. */
+export const readingImportFiles = sqliteTable('reading_import_file', {
+  importId: text('import_id')
+    .primaryKey()
+    .references(() => readingImports.id),
+  content: blob('content', { mode: 'buffer' }).notNull(),
+  mapping: text('mapping', { mode: 'json' }).$type<unknown>().notNull(),
 });
 
-/** One measured value in the parameter's canonical unit. */
+/**
+ * One measured value in the parameter's canonical unit. `value` is the best statement of it: the mean of the tests, less
+ * the bias of the kit where that is known; `measured` is the mean as it was read.
+ */
 export const readings = sqliteTable(
   'reading',
   {
@@ -99,6 +126,19 @@ export const readings = sqliteTable(
     importId: text('import_id').references(() => readingImports.id),
     createdAt: instant('created_at').notNull(),
     version: version(),
+    methodId: text('method_id').references(() => testMethods.id),
+    kitLotId: text('kit_lot_id').references(() => kitLots.id),
+    /** The check whose bias was taken off. */
+    calibrationId: text('calibration_id').references(() => calibrations.id),
+    /** Null where it is the value. */
+    measured: real('measured'),
+    /** Standard deviation of the mean by the method's repeatability; null where no method of the farm is named. */
+    sd: real('sd'),
+    /** Each test, where there was more than one. */
+    repeats: text('repeats', { mode: 'json' }).$type<number[]>(),
+    /** The unit that it was typed in. */
+    unit: text('unit'),
+    photoId: text('photo_id').references(() => readingPhotos.id),
   },
   (table) => [
     unique('reading_once').on(table.systemId, table.parameter, table.takenAt),
@@ -106,6 +146,10 @@ export const readings = sqliteTable(
     index('reading_parameter_time').on(table.parameter, table.takenAt),
     index('reading_time').on(table.takenAt),
     index('reading_import_id').on(table.importId),
+    index('reading_method_time').on(table.methodId, table.takenAt),
+    index('reading_by_time').on(table.by, table.takenAt),
+    index('reading_calibration').on(table.calibrationId),
+    index('reading_photo_id').on(table.photoId),
   ],
 );
 
