@@ -1,4 +1,4 @@
-import { assertAboveZero, assertNotNegative } from './ranges.ts';
+import { assertAboveZero, assertNotNegative, assertWithin } from './ranges.ts';
 
 /** A correction may take weeks where the limit a day is small; longer is a mistake in the numbers. */
 const MOST_DAYS = 365;
@@ -42,7 +42,7 @@ export function correctionDose({ from, to, maxPerDay, netVolumeL, perUnit }: Cor
   if (rise <= 0) return { days: 0, total: 0, amountPerDay: 0, risePerDay: 0, levels: [] };
   // Noise of conversion must not cost a day: 1 dKH at 1 dKH a day takes one.
   const days = Math.max(1, Math.ceil(rise / maxPerDay - 1e-9));
-  assertAboveZero(`Days left of ${MOST_DAYS}`, MOST_DAYS - days + 1);
+  assertWithin('Days that the correction takes', days, 1, MOST_DAYS);
   const total = (rise * netVolumeL) / perUnit;
   return {
     days,
