@@ -17,7 +17,11 @@ export type ItemKind = (typeof ITEM_KINDS)[number];
 export const ITEM_UNITS = ['g', 'mL', 'piece'] as const;
 export type ItemUnit = (typeof ITEM_UNITS)[number];
 
-export const USE_CAUSES = ['refill', 'dose', 'water_change', 'cut', 'packing', 'count'] as const;
+/** What an amount was taken for; `dosing` is a day of a running rate, `solution` a batch of stock solution. */
+export const USE_CAUSES = [
+  ...(['refill', 'dose', 'dosing', 'solution', 'water_change', 'salt_batch', 'cartridge'] as const),
+  ...(['cut', 'packing', 'count'] as const),
+] as const;
 
 /** How urgent a supply is: `out`, `order_now` (the last day to order is here), `order_soon` (within a week), else `ok`. */
 export const SUPPLY_STATES = ['ok', 'order_soon', 'order_now', 'out'] as const;

@@ -8,3 +8,6 @@ export * from './costs.ts';
 export * from './orders.ts';
 export * from './tasks.ts';
 export * from './alerts.ts';
+export * from './salt-batches.ts';
+export * from './dosing.ts';
+export * from './make-up-water.ts';

@@ -27,6 +27,9 @@ export const items = sqliteTable(
     supplierId: text('supplier_id').references(() => suppliers.id),
     /** Lime: part that is calcium hydroxide. Vinegar: acid, % w/v. Supplement: alkalinity, meq per unit. */
     strength: real('strength'),
+    /** What one unit of a supplement brings beside alkalinity, mg. */
+    calciumMg: real('calcium_mg'),
+    magnesiumMg: real('magnesium_mg'),
     createdAt: instant('created_at').notNull(),
     retiredAt: instant('retired_at'),
     version: version(),

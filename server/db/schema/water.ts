@@ -1,6 +1,7 @@
 import { sql } from 'drizzle-orm';
 import { blob, check, index, integer, primaryKey, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
 import { id, instant, version } from './columns.ts';
+import { saltBatches } from './salt-batches.ts';
 import { calibrations, kitLots, readingPhotos, testMethods } from './test-methods.ts';
 
 /** Tanks that share one water volume. */
@@ -164,6 +165,11 @@ export const waterChanges = sqliteTable(
     litres: real('litres').notNull(),
     alkalinityMeqL: real('alkalinity_meq_l').notNull(),
     saltG: real('salt_g').notNull().default(0),
+    /** The new water as tested; null where it was not. */
+    calciumMgL: real('calcium_mg_l'),
+    magnesiumMgL: real('magnesium_mg_l'),
+    salinity: real('salinity'),
+    saltBatchId: text('salt_batch_id').references(() => saltBatches.id),
     at: instant('at').notNull(),
     by: text('by').notNull(),
   },
@@ -184,6 +190,8 @@ export const doses = sqliteTable(
     itemId: text('item_id').notNull(),
     amount: real('amount').notNull(),
     alkalinityMeq: real('alkalinity_meq').notNull(),
+    calciumMg: real('calcium_mg').notNull().default(0),
+    magnesiumMg: real('magnesium_mg').notNull().default(0),
     at: instant('at').notNull(),
     by: text('by').notNull(),
     note: text('note').notNull().default(''),
