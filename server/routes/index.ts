@@ -3,6 +3,7 @@ import { readingImportRoutes } from './reading-import-routes.ts';
 import { readingRoutes } from './reading-routes.ts';
 import { reservoirRoutes } from './reservoir-routes.ts';
 import { systemRoutes } from './system-routes.ts';
+import { timelineRoutes } from './timeline-routes.ts';
 import { waterRoutes } from './water-routes.ts';
 import { listingRoutes } from './listing-routes.ts';
 import { orderRoutes } from './order-routes.ts';
@@ -40,6 +41,7 @@ export function registerRoutes(api: Api): void {
   auditRoutes(api);
   todayRoutes(api);
   waterRoutes(api);
+  timelineRoutes(api);
   systemRoutes(api);
   reservoirRoutes(api);
   readingRoutes(api);
