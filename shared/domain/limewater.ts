@@ -4,7 +4,7 @@ import { assertAboveZero, assertNotNegative, assertPurity, assertWithin } from '
 /** Molar masses, g/mol, from CIAAW abridged standard atomic weights. */
 export const CALCIUM_HYDROXIDE_G_PER_MOL = 74.092;
 const ACETIC_ACID_G_PER_MOL = 60.052;
-const CALCIUM_G_PER_MOL = 40.078;
+export const CALCIUM_G_PER_MOL = 40.078;
 
 const SOLUBILITY_LIMITS = { min: 15, max: 30 } as const;
 

@@ -14,9 +14,10 @@ describe('survivalCurve', () => {
     expect(steps.map(({ day, atRisk, lost }) => [day, atRisk, lost])).toEqual(
       given.table.map(({ t, atRisk, events }) => [t, atRisk, events]),
     );
-    steps.forEach(({ survival, low, high }, index) => {
+    steps.forEach(({ survival, standardError, low, high }, index) => {
       const row = given.table[index];
       expect(survival).toBeCloseTo(row?.survival ?? NaN, 12);
+      if (survival > 1e-9) expect(standardError).toBeCloseTo(row?.greenwoodSe ?? NaN, 12);
       // At zero R has no band; ours is then zero.
       if (survival > 1e-9) expect([low, high]).toEqual([near(row?.low), near(row?.high)]);
     });
@@ -26,7 +27,7 @@ describe('survivalCurve', () => {
     expect(survivalCurve([{ day: 30, lost: false }])).toEqual([]);
     expect(survivalCurve([])).toEqual([]);
     expect(survivalCurve([2, 2, 2].map((day) => ({ day, lost: true })))).toEqual([
-      { day: 2, atRisk: 3, lost: 3, survival: 0, low: 0, high: 0 },
+      { day: 2, atRisk: 3, lost: 3, survival: 0, standardError: null, low: 0, high: 0 },
     ]);
   });
 

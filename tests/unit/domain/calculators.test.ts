@@ -1,0 +1,103 @@
+import { describe, expect, it } from 'vitest';
+import { CALCULATORS } from '../../../shared/domain/calculators/index.ts';
+import { domainErrorOf } from '../../support/domain-error.ts';
+import survival from '../../reference/survival.json' with { type: 'json' };
+
+function calculate(name: string, input: unknown) {
+  const calculator = CALCULATORS[name];
+  if (!calculator) throw new Error(`There is no calculation ${name}.`);
+  return calculator.run(input);
+}
+
+const mix = { lime_g: 100, purity: 1, water_L: 40, temperature_C: 25 };
+
+describe('inputs of a calculation', () => {
+  it('when an unknown one is given, are refused with its name', () => {
+    expect(domainErrorOf(() => calculate('limewater', { ...mix, lime_oz: 3 })).message).toContain('lime_oz');
+  });
+
+  it('when one is missing or of the wrong kind, are refused with all their names', () => {
+    const error = domainErrorOf(() => calculate('limewater', { ...mix, purity: '0.9', water_L: undefined }));
+    expect(error.code).toBe('input.invalid');
+    expect(error.message).toBe('purity must be a number; water_L must be a number.');
+  });
+
+  it('when one that need not be given is null, are as if it were left out', () => {
+    const usual = calculate('limewater', mix);
+    expect(calculate('limewater', { ...mix, vinegar_mL: null, acid_percent: null })).toEqual(usual);
+    expect(calculate('limewater', { ...mix, vinegar_mL: 0, acid_percent: 5 })).toEqual(usual);
+  });
+
+  it.each(['text', 7, null, [mix], undefined])('when they are %s instead of an object, are refused', (input) => {
+    expect(domainErrorOf(() => calculate('limewater', input)).code).toBe('input.invalid');
+  });
+});
+
+describe('limewater', () => {
+  it('when more lime is given than dissolves, tells what settles and what vinegar does', () => {
+    const plain = calculate('limewater', mix);
+    const withVinegar = calculate('limewater', { ...mix, vinegar_mL: 200 });
+
+    expect(plain).toMatchObject({ dissolved_g: expect.closeTo(59.72, 9), vinegar_helps: false });
+    expect(plain.alkalinity_now_meq_L).toBe(plain.alkalinity_meq_L);
+    expect(withVinegar).toMatchObject({ vinegar_helps: true });
+    expect(Number(withVinegar.alkalinity_meq_L)).toBeGreaterThan(Number(plain.alkalinity_meq_L));
+    expect(Number(withVinegar.alkalinity_now_meq_L)).toBeLessThan(Number(plain.alkalinity_now_meq_L));
+  });
+});
+
+describe('density', () => {
+  it('of seawater of salinity 35 at 25 °C is that of EOS-80 (UNESCO 1983, within 1e-6 of 1023.3412 kg/m³)', () => {
+    const { density_kg_m3 } = calculate('density', { salinity: 35, temperature_C: 25 });
+    expect(density_kg_m3).toBeCloseTo(1023.3412, 3);
+  });
+});
+
+describe('survival', () => {
+  it.each(survival.cases)(
+    'of $id is the curve that R survival has (Freireich et al. 1963)',
+    ({ time, status, table }) => {
+      const found = calculate('survival', { times: time, events: status });
+
+      expect(found).toMatchObject({
+        time: table.map(({ t }) => t),
+        at_risk: table.map(({ atRisk }) => atRisk),
+        lost: table.map(({ events }) => events),
+      });
+      expect(found.survival).toEqual(table.map((row) => expect.closeTo(row.survival, 12)));
+      expect(found.se).toEqual(
+        table.map((row) => (row.survival > 1e-9 ? expect.closeTo(row.greenwoodSe ?? NaN, 12) : null)),
+      );
+    },
+  );
+
+  it('when many plugs share a fate, counts do what repeated rows do', () => {
+    const counted = calculate('survival', { times: [5, 5, 9], events: [1, 0, 0], counts: [2, 1, 3] });
+    expect(counted).toEqual(calculate('survival', { times: [5, 5, 5, 9, 9, 9], events: [1, 1, 0, 0, 0, 0] }));
+  });
+
+  it('when the lists differ in length, is refused', () => {
+    const error = domainErrorOf(() => calculate('survival', { times: [1, 2], events: [1] }));
+    expect(error.message).toContain('one length');
+  });
+});
+
+describe('code', () => {
+  // AB3DE4 has the check E by ISO 7064 MOD 37-2.
+  it('when it is a plug code in small letters with a dash, or the address of a label, is read', () => {
+    const right = { code: 'AB3DE4E', valid: true, suggestion: null };
+    expect(calculate('code', { text: 'ab3-de4e' })).toEqual(right);
+    expect(calculate('code', { text: 'https://farm.example.com/p/AB3DE4E' })).toEqual(right);
+  });
+
+  it.each([
+    ['two neighbours are swapped', 'BA3DE4E'],
+    ['a character is read as its look-alike', '4B3DE4E'],
+  ])('when %s, the right one is suggested', (_, text) => {
+    expect(calculate('code', { text })).toEqual({ code: null, valid: false, suggestion: 'AB3DE4E' });
+  });
+
+  it('when nothing near it is a code, nothing is suggested', () => {
+    expect(calculate('code', { text: 'AB3' })).toEqual({ code: null, valid: false, suggestion: null });
+  });
+});
