@@ -18,7 +18,7 @@ export function readingValue(
     return { value: null, problem: `Choose one of these units: ${unitsOf(code).join(', ')}.` };
   }
   const { min, max } = parameter.plausible;
-  const canonical = canonicalOf(code, value, unitName);
+  const canonical = canonicalValue(code, value, unitName);
   // A limit that is typed in a converted unit may land a rounding beside the limit itself.
   const slack = 1e-9 * (max - min);
   if (canonical !== null && canonical >= min - slack && canonical <= max + slack) {
@@ -39,8 +39,8 @@ export function assertReadingValue(code: ParameterCode, value: number, unit: str
   throw new DomainError('input.invalid', read.problem, { fields: [{ path, message: read.problem }] });
 }
 
-/** Null where the conversion itself refuses the value, as a specific gravity of no seawater. */
-function canonicalOf(code: ParameterCode, value: number, unit: string): number | null {
+/** A value in the canonical unit; null where the conversion refuses it, as a specific gravity of no seawater. */
+export function canonicalValue(code: ParameterCode, value: number, unit: string): number | null {
   try {
     return toCanonical(code, value, unit);
   } catch (error) {
