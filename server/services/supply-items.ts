@@ -3,7 +3,7 @@ import type { CreateSupplier, EditSupplier } from '../../shared/contracts/suppli
 import type { CreateItem, EditItem } from '../../shared/contracts/supplies.ts';
 import { itemProblems } from '../../shared/domain/supply-items.ts';
 import { DomainError } from '../../shared/errors.ts';
-import { items, lots, suppliers } from '../db/schema/index.ts';
+import { items, lots, stockSolutions, suppliers } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
 import { supplyItem } from '../queries/supply-items.ts';
 import { supplierById } from '../queries/suppliers.ts';
@@ -22,6 +22,8 @@ export function createItem(write: Write, input: CreateItem): string {
       id: write.newId(),
       supplierId: input.supplierId ?? null,
       strength: input.strength ?? null,
+      calciumMg: input.calciumMg ?? null,
+      magnesiumMg: input.magnesiumMg ?? null,
       createdAt: write.now,
     })
     .returning()
@@ -42,6 +44,7 @@ export function editItem(write: Write, itemId: string, ifMatch: number, input: E
   const after = { ...before, ...fields };
   assertFits(after);
   assertKindStays(write, before, after);
+  assertStrengthStays(write, before, after);
   assertSupplier(write, after.supplierId);
 
   const retiredAt = retired === undefined ? before.retiredAt : retired ? (before.retiredAt ?? write.now) : null;
@@ -102,6 +105,18 @@ function assertKindStays(write: Write, before: ItemRow, after: ItemRow): void {
     'Lots of this were received already, so its kind and unit stay. Retire it and add a new supply instead.',
     { fields: [{ path: before.kind === after.kind ? 'unit' : 'kind', message: 'This can not change any more.' }] },
   );
+}
+
+/** What a recipe makes is as strong as its recipe says. */
+function assertStrengthStays({ tx }: Write, before: ItemRow, after: ItemRow): void {
+  const paths = (['kind', 'unit', 'strength', 'calciumMg', 'magnesiumMg'] as const).filter(
+    (path) => before[path] !== after[path],
+  );
+  if (paths.length === 0) return;
+  const recipe = tx.select().from(stockSolutions).where(eq(stockSolutions.itemId, before.id)).get();
+  if (!recipe) return;
+  const message = 'Its recipe says what it is. Retire it and write another recipe instead.';
+  throw new DomainError('record.in_use', message, { fields: paths.map((path) => ({ path, message })) });
 }
 
 function assertSupplier(write: Write, supplierId: string | null): void {

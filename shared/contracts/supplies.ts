@@ -21,6 +21,7 @@ const amount = quantity.refine((value) => value > 0, 'Enter more than zero.');
 const days = z.int('Enter whole days.').min(0, 'Enter zero or more days.').max(365, 'At most 365 days.');
 /** Nullable in answers, optional in what is sent. */
 const strength = z.number().max(1000).nullable();
+const milligrams = z.number().max(1000, 'At most 1,000 mg.').nullable();
 
 /** How fast an item goes, and what that was made from. Amounts in the item's unit. */
 export const SupplyUse = z.object({
@@ -67,6 +68,9 @@ export const Item = z.object({
   supplierId: id.nullable(),
   supplierName: z.string().nullable(),
   strength,
+  /** What one unit of a supplement brings beside alkalinity, mg. */
+  calciumMg: milligrams,
+  magnesiumMg: milligrams,
   retired: z.boolean(),
   version,
   onHand: z.number(),
@@ -134,9 +138,12 @@ const itemFields = z.strictObject({
   safetyDays: days,
   supplierId: id.nullable().optional(),
   strength: strength.optional(),
+  calciumMg: milligrams.optional(),
+  magnesiumMg: milligrams.optional(),
 });
 export const CreateItem = itemFields.superRefine((item, context) => {
-  for (const { path, message } of itemProblems({ ...item, strength: item.strength ?? null })) {
+  const { strength = null, calciumMg = null, magnesiumMg = null } = item;
+  for (const { path, message } of itemProblems({ ...item, strength, calciumMg, magnesiumMg })) {
     context.addIssue({ code: 'custom', path: [path], message });
   }
 });

@@ -39,23 +39,35 @@ const FIXED_UNITS: Partial<Record<ItemKind, ItemUnit>> = {
 const STRENGTHS: Partial<Record<ItemKind, { above: number; upTo: number; message: string }>> = {
   lime: { above: 0, upTo: 1, message: 'Enter the part that is calcium hydroxide, above 0 and up to 1, such as 0.95.' },
   vinegar: { above: 0, upTo: 30, message: 'Enter the acid of the vinegar in percent, above 0 and up to 30.' },
-  supplement: {
-    above: 0,
-    upTo: 100,
-    message: 'Enter the alkalinity that one unit brings, above 0 and up to 100 meq.',
-  },
 };
 
+/** The most that one unit of a supplement can bring: pure salts stay below it. */
+const MOST_MEQ = 100;
+const MOST_MG = 1000;
+
 export interface ItemProblem {
-  path: 'unit' | 'strength';
+  path: 'unit' | 'strength' | 'calciumMg' | 'magnesiumMg';
   message: string;
 }
 
+/** What an item is, as far as its fields must fit together. */
+export interface ItemCharacter {
+  kind: ItemKind;
+  unit: ItemUnit;
+  strength: number | null;
+  calciumMg: number | null;
+  magnesiumMg: number | null;
+}
+
 /** What does not fit together about an item; empty when all does. */
-export function itemProblems(item: { kind: ItemKind; unit: ItemUnit; strength: number | null }): ItemProblem[] {
+export function itemProblems(item: ItemCharacter): ItemProblem[] {
   const problems: ItemProblem[] = [];
   const unit = FIXED_UNITS[item.kind];
   if (unit && item.unit !== unit) problems.push({ path: 'unit', message: `This kind is kept in ${unit}.` });
+  if (item.kind === 'supplement') return [...problems, ...supplementProblems(item)];
+  for (const path of ['calciumMg', 'magnesiumMg'] as const) {
+    if (item[path] !== null) problems.push({ path, message: 'Only supplements bring it.' });
+  }
   const range = STRENGTHS[item.kind];
   if (range && !(item.strength !== null && item.strength > range.above && item.strength <= range.upTo)) {
     problems.push({ path: 'strength', message: range.message });
@@ -66,9 +78,23 @@ export function itemProblems(item: { kind: ItemKind; unit: ItemUnit; strength: n
   return problems;
 }
 
+/** A supplement brings something: alkalinity, calcium or magnesium. */
+function supplementProblems({ strength, calciumMg, magnesiumMg }: ItemCharacter): ItemProblem[] {
+  const limits = [
+    { path: 'strength', value: strength, most: MOST_MEQ, unit: 'meq' },
+    { path: 'calciumMg', value: calciumMg, most: MOST_MG, unit: 'mg' },
+    { path: 'magnesiumMg', value: magnesiumMg, most: MOST_MG, unit: 'mg' },
+  ] as const;
+  const problems = limits.flatMap(({ path, value, most, unit }): ItemProblem[] =>
+    value !== null && !(value >= 0 && value <= most) ? [{ path, message: `Enter 0 to ${most} ${unit}.` }] : [],
+  );
+  if (problems.length > 0 || limits.some(({ value }) => (value ?? 0) > 0)) return problems;
+  return [{ path: 'strength', message: 'Enter what one unit brings: alkalinity in meq, calcium or magnesium in mg.' }];
+}
+
 /** Whether a kind has a strength at all. */
 export function hasStrength(kind: ItemKind): boolean {
-  return STRENGTHS[kind] !== undefined;
+  return kind === 'supplement' || STRENGTHS[kind] !== undefined;
 }
 
 const SOON_DAYS = 7;

@@ -29,6 +29,10 @@ export const KIND_WORDS: Record<ItemKind, string> = {
 export const CAUSE_WORDS: Record<Use['cause'], string> = {
   refill: 'Limewater mix',
   dose: 'Dose',
+  dosing: 'Steady dosing',
+  solution: 'Stock solution',
+  salt_batch: 'New salt water',
+  cartridge: 'Cartridge',
   water_change: 'Water change',
   cut: 'A cut batch',
   packing: 'Packing',
