@@ -13,6 +13,21 @@ export function assertWithin(name: string, value: number, min: number, max: numb
   });
 }
 
+/**
+ * The same for an input with a name of its own, so that the message can stand at its field.
+ *
+ * @param path name of the input in what was given
+ * @throws {DomainError} `domain.out_of_range` with the path in `fields`
+ */
+export function assertInput(path: string, name: string, value: number, min: number, max: number): void {
+  if (value >= min && value <= max) return;
+  const message = `${name} must be between ${min} and ${max}.`;
+  throw new DomainError('domain.out_of_range', message, {
+    fields: [{ path, message }],
+    details: { input: path, value, min, max },
+  });
+}
+
 /** Refuses a negative or endless value. @throws {DomainError} `domain.out_of_range` */
 export function assertNotNegative(name: string, value: number): void {
   if (value >= 0 && Number.isFinite(value)) return;
