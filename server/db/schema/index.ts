@@ -11,3 +11,4 @@ export * from './alerts.ts';
 export * from './salt-batches.ts';
 export * from './dosing.ts';
 export * from './make-up-water.ts';
+export * from './plans.ts';
