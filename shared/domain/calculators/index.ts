@@ -1,4 +1,5 @@
 import type { Calculator } from './calculator.ts';
+import { carbonateCalculator } from './carbonate.ts';
 import { limewaterCalculator } from './limewater.ts';
 import { codeCalculator } from './plug-code.ts';
 import { densityCalculator } from './seawater.ts';
@@ -6,6 +7,7 @@ import { survivalCalculator } from './survival.ts';
 
 /** Every calculation that can be asked for by name, outside the screens too. */
 export const CALCULATORS: Readonly<Record<string, Calculator>> = {
+  carbonate: carbonateCalculator,
   density: densityCalculator,
   limewater: limewaterCalculator,
   survival: survivalCalculator,

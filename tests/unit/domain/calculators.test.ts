@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { CALCULATORS } from '../../../shared/domain/calculators/index.ts';
 import { domainErrorOf } from '../../support/domain-error.ts';
+import carbonate from '../../reference/carbonate.json' with { type: 'json' };
 import survival from '../../reference/survival.json' with { type: 'json' };
 
 function calculate(name: string, input: unknown) {
@@ -43,6 +44,39 @@ describe('limewater', () => {
     expect(withVinegar).toMatchObject({ vinegar_helps: true });
     expect(Number(withVinegar.alkalinity_meq_L)).toBeGreaterThan(Number(plain.alkalinity_meq_L));
     expect(Number(withVinegar.alkalinity_now_meq_L)).toBeLessThan(Number(plain.alkalinity_now_meq_L));
+  });
+});
+
+describe('carbonate', () => {
+  it.each(carbonate.states)('of state $id is that of PyCO2SYS within 1e-6', (state) => {
+    const { given, expected } = state;
+    const found = calculate('carbonate', {
+      ...{ salinity: state.salinity, temperature_C: state.temperatureC, alkalinity_umol_kg: given.alkalinityUmolKg },
+      ...{ ph: 'ph' in given ? given.ph : null, ph_scale: 'total' },
+      dic_umol_kg: 'dicUmolKg' in given ? given.dicUmolKg : null,
+      pco2_uatm: 'pco2Uatm' in given ? given.pco2Uatm : null,
+      ...{ calcium_mg_L: state.calciumMgL, boron: state.boron },
+    });
+
+    const relative = (name: string, value: number) => expect(Number(found[name]) / value).toBeCloseTo(1, 6);
+    expect(found.ph_total).toBeCloseTo(expected.phTotal, 7);
+    expect(found.ph_free).toBeCloseTo(expected.phFree, 7);
+    expect(found.ph_sws).toBeCloseTo(expected.phSws, 7);
+    expect(found.ph_nbs).toBeCloseTo(expected.phNbs, 7);
+    relative('dic_umol_kg', expected.dicUmolKg);
+    relative('pco2_uatm', expected.pco2Uatm);
+    relative('hco3_umol_kg', expected.bicarbonateUmolKg);
+    relative('co3_umol_kg', expected.carbonateUmolKg);
+    relative('co2_umol_kg', expected.co2UmolKg);
+    relative('omega_aragonite', expected.omegaAragonite);
+    relative('omega_calcite', expected.omegaCalcite);
+  });
+
+  it('when one or three of the four are given, is refused', () => {
+    const water = { salinity: 35, temperature_C: 25, alkalinity_umol_kg: 2300 };
+    expect(domainErrorOf(() => calculate('carbonate', water)).message).toContain('two of');
+    const three = { ...water, ph: 8.1, pco2_uatm: 400 };
+    expect(domainErrorOf(() => calculate('carbonate', three)).message).toContain('two of');
   });
 });
 
