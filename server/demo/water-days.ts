@@ -1,8 +1,9 @@
 import { weekdayOf, type Day } from '../../shared/domain/days.ts';
 import type { Write } from '../db/write.ts';
-import { logDose, logWaterChange } from '../services/addition-service.ts';
+import { logDose } from '../services/dose-service.ts';
 import { refillReservoir } from '../services/refill-service.ts';
 import { changeOver, logLevel } from '../services/reservoir-service.ts';
+import { logWaterChange } from '../services/water-change-service.ts';
 import type { Chance } from './chance.ts';
 import { trueDemand } from './coral-truth.ts';
 import { vigourOn } from './heat.ts';

@@ -1,5 +1,5 @@
 import { desc, eq } from 'drizzle-orm';
-import type { Addition } from '../../shared/contracts/water.ts';
+import type { Addition } from '../../shared/contracts/additions.ts';
 import type { Db } from '../db/client.ts';
 import { doses, items, waterChanges } from '../db/schema/index.ts';
 import { systemRow, type SystemRow } from './systems.ts';
@@ -30,24 +30,23 @@ export function listAdditions(db: Db, systemId: string): Addition[] {
 }
 
 export function changeAsAddition(row: typeof waterChanges.$inferSelect): Addition {
-  const { id, systemId, at, by, litres, alkalinityMeqL } = row;
+  const { id, systemId, at, by, litres, alkalinityMeqL, calciumMgL, magnesiumMgL, salinity } = row;
   return {
-    id,
-    kind: 'water_change',
-    systemId,
-    at,
-    by,
-    name: 'Water change',
-    amount: litres,
-    unit: 'L',
-    alkalinityMeqL,
+    ...{ id, kind: 'water_change', systemId, at, by, name: 'Water change', amount: litres, unit: 'L' },
+    ...{ alkalinityMeqL, calciumMgL, magnesiumMgL, salinity },
   };
 }
 
 export function doseAsAddition(
-  { id, systemId, at, by, amount, alkalinityMeq }: typeof doses.$inferSelect,
+  row: typeof doses.$inferSelect,
   { name, unit }: { name: string; unit: string },
   { netVolumeL }: SystemRow,
 ): Addition {
-  return { id, kind: 'dose', systemId, at, by, name, amount, unit, alkalinityMeqL: alkalinityMeq / netVolumeL };
+  const { id, systemId, at, by, amount, alkalinityMeq, calciumMg, magnesiumMg } = row;
+  return {
+    ...{ id, kind: 'dose', systemId, at, by, name, amount, unit, salinity: null },
+    alkalinityMeqL: alkalinityMeq / netVolumeL,
+    calciumMgL: calciumMg / netVolumeL,
+    magnesiumMgL: magnesiumMg / netVolumeL,
+  };
 }

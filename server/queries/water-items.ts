@@ -50,18 +50,24 @@ function lastUsed(db: Db, itemIds: readonly string[]): string | undefined {
     .select({ itemId: consumptions.itemId })
     .from(consumptions)
     .where(
-      and(inArray(consumptions.itemId, [...itemIds]), inArray(consumptions.cause, ['refill', 'water_change', 'dose'])),
+      and(
+        inArray(consumptions.itemId, [...itemIds]),
+        inArray(consumptions.cause, ['refill', 'water_change', 'salt_batch', 'dose']),
+      ),
     )
     .orderBy(desc(consumptions.at))
     .limit(1)
     .get()?.itemId;
 }
 
-function toWaterItem(db: Db, { id, code, name, kind, unit, strength }: WaterItemRow): WaterItem {
+function toWaterItem(
+  db: Db,
+  { id, code, name, kind, unit, strength, calciumMg, magnesiumMg }: WaterItemRow,
+): WaterItem {
   const held = db
     .select({ onHand: sum(lots.remaining) })
     .from(lots)
     .where(eq(lots.itemId, id))
     .get();
-  return { id, code, name, kind, unit, strength, onHand: Number(held?.onHand ?? 0) };
+  return { id, code, name, kind, unit, strength, calciumMg, magnesiumMg, onHand: Number(held?.onHand ?? 0) };
 }

@@ -1,8 +1,8 @@
 import { z } from 'zod';
-import { done, id, idParams, instant, nothing, noteText } from './common.ts';
+import { id, idParams, instant, nothing } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 import { Reservoir } from './reservoirs.ts';
-import { litres, parameterCode, System, TargetBand } from './systems.ts';
+import { parameterCode, System, TargetBand } from './systems.ts';
 
 /** Where a value stands to its target band. */
 export const bandState = z.enum(['below', 'in', 'above', 'none']);
@@ -95,40 +95,6 @@ export const SystemGlance = z.object({
 });
 export type SystemGlance = z.infer<typeof SystemGlance>;
 
-export const LogWaterChange = z.strictObject({
-  systemId: id,
-  at: instant.optional(),
-  litres,
-  alkalinityMeqL: z.number('Enter the alkalinity.').min(0, 'Zero or more.').max(20, 'At most 20 meq/L.'),
-  saltG: z.number().min(0, 'Zero or more.').max(10_000_000).default(0),
-  saltItemId: id.optional(),
-});
-export type LogWaterChange = z.infer<typeof LogWaterChange>;
-export const LogDose = z.strictObject({
-  systemId: id,
-  itemId: id,
-  at: instant.optional(),
-  /** In the item's unit. */
-  amount: z.number('Enter the amount.').positive('Above zero.').max(10_000_000),
-  note: noteText.default(''),
-});
-export type LogDose = z.infer<typeof LogDose>;
-
-/** A water change or a dose of another supplement. */
-export const Addition = z.object({
-  id,
-  kind: z.enum(['water_change', 'dose']),
-  systemId: id,
-  at: instant,
-  by: z.string(),
-  name: z.string(),
-  amount: z.number(),
-  unit: z.string(),
-  /** New water's alkalinity, or what the dose added to the system, meq/L. */
-  alkalinityMeqL: z.number(),
-});
-export type Addition = z.infer<typeof Addition>;
-
 export const WaterItem = z.object({
   id,
   code: z.string(),
@@ -136,6 +102,9 @@ export const WaterItem = z.object({
   kind: z.enum(['lime', 'vinegar', 'salt', 'supplement']),
   unit: z.string(),
   strength: z.number().nullable(),
+  /** What one unit of a supplement brings beside alkalinity, mg. */
+  calciumMg: z.number().nullable(),
+  magnesiumMg: z.number().nullable(),
   onHand: z.number(),
 });
 export type WaterItem = z.infer<typeof WaterItem>;
@@ -173,47 +142,5 @@ export const waterEndpoints = {
     summary: 'Supplies that water work takes from, the usual one of each kind first',
     query: nothing,
     response: z.object({ items: z.array(WaterItem) }),
-  },
-  additions: {
-    method: 'get',
-    path: '/api/systems/:id/additions',
-    access: 'water.read',
-    summary: 'Latest water changes and doses',
-    params: idParams,
-    response: z.object({ items: z.array(Addition) }),
-  },
-  logWaterChange: {
-    method: 'post',
-    path: '/api/water-changes',
-    access: 'water.log',
-    summary: 'Log a water change',
-    body: LogWaterChange,
-    response: Addition,
-    creates: true,
-  },
-  undoWaterChange: {
-    method: 'delete',
-    path: '/api/water-changes/:id',
-    access: 'water.log',
-    summary: 'Take a water change back',
-    params: idParams,
-    response: done,
-  },
-  logDose: {
-    method: 'post',
-    path: '/api/doses',
-    access: 'water.log',
-    summary: 'Log a dose of another supplement',
-    body: LogDose,
-    response: Addition,
-    creates: true,
-  },
-  undoDose: {
-    method: 'delete',
-    path: '/api/doses/:id',
-    access: 'water.log',
-    summary: 'Take a dose back',
-    params: idParams,
-    response: done,
   },
 } as const satisfies Record<string, Endpoint>;

@@ -1,5 +1,6 @@
 import { useQuery, useQueryClient } from '@tanstack/vue-query';
 import { type MaybeRefOrGetter, computed, toValue } from 'vue';
+import { additionEndpoints } from '@shared/contracts/additions.ts';
 import { waterEndpoints } from '@shared/contracts/water.ts';
 import { callApi } from '@/api/call-api.ts';
 
@@ -47,7 +48,7 @@ export function useSystemDemand(systemId: MaybeRefOrGetter<string | undefined>, 
 export function useAdditions(systemId: MaybeRefOrGetter<string>) {
   return useQuery({
     queryKey: computed(() => waterKeys.additions(toValue(systemId))),
-    queryFn: ({ signal }) => callApi(waterEndpoints.additions, { params: { id: toValue(systemId) }, signal }),
+    queryFn: ({ signal }) => callApi(additionEndpoints.list, { params: { id: toValue(systemId) }, signal }),
     select: ({ items }) => items,
   });
 }

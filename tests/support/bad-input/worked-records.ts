@@ -1,6 +1,7 @@
 import { eq } from 'drizzle-orm';
 import { picks, users } from '../../../server/db/schema/index.ts';
-import { logDose, logWaterChange } from '../../../server/services/addition-service.ts';
+import { logDose } from '../../../server/services/dose-service.ts';
+import { logWaterChange } from '../../../server/services/water-change-service.ts';
 import { invite } from '../../../server/services/invitation-service.ts';
 import { measureStock } from '../../../server/services/measure-stock.ts';
 import { requestReset } from '../../../server/services/password-service.ts';
