@@ -30,6 +30,8 @@ function anItem(
       supplierId: null,
       supplierName: null,
       strength: 0.95,
+      calciumMg: null,
+      magnesiumMg: null,
       retired: false,
       version: 1,
       onHand: 800,
