@@ -3,7 +3,9 @@ import { idempotencyKeys } from '../db/schema/index.ts';
 import { inWrite, SYSTEM } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import { deleteExpiredSessions } from '../http/session.ts';
+import { forgetLoosePhotos } from '../services/reading-photos.ts';
 import { forgetOldTries } from '../services/sign-in-slowdown.ts';
+import { bookDosingDays } from './book-dosing.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
 import { sendDueMails } from './send-due-mails.ts';
@@ -27,6 +29,8 @@ const JOBS: readonly Job[] = [
   { name: 'delete expired sessions', everyMs: 3600 * SECOND, run: deleteExpiredSessions },
   { name: 'forget old request keys', everyMs: 3600 * SECOND, run: forgetOldRequestKeys },
   { name: 'forget old sign-in tries', everyMs: 3600 * SECOND, run: (deps) => inWrite(deps, SYSTEM, forgetOldTries) },
+  { name: 'forget loose photos', everyMs: 3600 * SECOND, run: forgetLoosePhotos },
+  { name: 'book steady dosing', everyMs: 600 * SECOND, run: bookDosingDays },
   { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },
 ];
 

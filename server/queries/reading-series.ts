@@ -1,5 +1,6 @@
 import type { ReadingSeries, SeriesDays } from '../../shared/contracts/readings.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
+import { SD_PER_HALF_INTERVAL } from '../../shared/domain/test-error.ts';
 import { thinSeries } from '../../shared/domain/thin-series.ts';
 import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { Db } from '../db/client.ts';
@@ -7,8 +8,6 @@ import { readingsWithError } from './reading-errors.ts';
 import { bandsOf, systemRow } from './systems.ts';
 
 const MOST_POINTS = 1000;
-/** Half of a 95 % interval of a normal error. */
-const HALF_INTERVAL_SD = 1.96;
 
 /** Readings of one parameter up to now, for a chart, with few enough points to draw. */
 export function readingSeries(
@@ -22,7 +21,9 @@ export function readingSeries(
   const all = readingsWithError(db, systemId, parameter, from, now);
   return {
     ...{ parameter, from, to: now, total: all.length },
-    points: thinSeries(all, MOST_POINTS).map(({ at, value, sd }) => ({ at, value, error: HALF_INTERVAL_SD * sd })),
+    points: thinSeries(all, MOST_POINTS).map(({ at, value, sd, biasSd }) => ({
+      ...{ at, value, error: SD_PER_HALF_INTERVAL * Math.hypot(sd, biasSd) },
+    })),
     band: bandsOf(db, systemId).find((band) => band.parameter === parameter) ?? null,
   };
 }

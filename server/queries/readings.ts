@@ -2,11 +2,14 @@ import { and, asc, count, desc, eq, gte, lt, lte, or, type SQL } from 'drizzle-o
 import { z } from 'zod';
 import type { Page } from '../../shared/contracts/common.ts';
 import type { ListReadings, Reading, ReadingFilter } from '../../shared/contracts/readings.ts';
+import { addDays, startOfDay } from '../../shared/domain/days.ts';
+import { testErrorOf } from '../../shared/domain/test-error.ts';
 import { PARAMETER_CODES, type ParameterCode } from '../../shared/domain/units.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
-import { readings, systems } from '../db/schema/index.ts';
+import { calibrations, kitLots, readings, systems } from '../db/schema/index.ts';
 import { pageFrom, readCursor } from './cursor.ts';
+import { farmOf } from './farm.ts';
 
 export type ReadingRow = typeof readings.$inferSelect;
 
@@ -18,7 +21,7 @@ export function readingRow(db: Db, readingId: string): ReadingRow {
 }
 
 export function listReadings(db: Db, query: ListReadings): Page<Reading> {
-  const wanted = filterOf(query);
+  const wanted = filterOf(db, query);
   const rows = joined(db)
     .where(and(wanted, query.cursor ? olderThan(query.cursor) : undefined))
     .orderBy(desc(readings.takenAt), desc(readings.id))
@@ -33,7 +36,7 @@ export function listReadings(db: Db, query: ListReadings): Page<Reading> {
 
 /** All that match, oldest first, for an export. */
 export function allReadings(db: Db, filter: ReadingFilter): Reading[] {
-  return joined(db).where(filterOf(filter)).orderBy(asc(readings.takenAt), asc(readings.id)).all().map(toReading);
+  return joined(db).where(filterOf(db, filter)).orderBy(asc(readings.takenAt), asc(readings.id)).all().map(toReading);
 }
 
 export function showReading(db: Db, readingId: string): Reading {
@@ -64,6 +67,30 @@ export function readingsBetween(
     .all();
 }
 
+/** The value before an instant, where it is not older than a while; null else. */
+export function valueBefore(
+  db: Db,
+  systemId: string,
+  parameter: ParameterCode,
+  { before, notBefore }: { before: number; notBefore: number },
+): number | null {
+  const row = db
+    .select({ value: readings.value })
+    .from(readings)
+    .where(
+      and(
+        eq(readings.systemId, systemId),
+        eq(readings.parameter, parameter),
+        lt(readings.takenAt, before),
+        gte(readings.takenAt, notBefore),
+      ),
+    )
+    .orderBy(desc(readings.takenAt))
+    .limit(1)
+    .get();
+  return row?.value ?? null;
+}
+
 /** The newest reading of every parameter that was ever tested. */
 export function latestReadings(db: Db, systemId: string): (ReadingRow & { parameter: ParameterCode })[] {
   return PARAMETER_CODES.flatMap((parameter) => {
@@ -78,24 +105,40 @@ export function latestReadings(db: Db, systemId: string): (ReadingRow & { parame
   });
 }
 
-interface ReadingWithSystem {
+interface ReadingParts {
   reading: ReadingRow;
   systemCode: string;
   systemName: string;
+  kitLotCode: string | null;
+  bias: number | null;
+  biasSd: number | null;
 }
 
 function joined(db: Db) {
   return db
-    .select({ reading: readings, systemCode: systems.code, systemName: systems.name })
+    .select({
+      ...{ reading: readings, systemCode: systems.code, systemName: systems.name },
+      ...{ kitLotCode: kitLots.code, bias: calibrations.bias, biasSd: calibrations.biasSd },
+    })
     .from(readings)
     .innerJoin(systems, eq(systems.id, readings.systemId))
+    .leftJoin(kitLots, eq(kitLots.id, readings.kitLotId))
+    .leftJoin(calibrations, eq(calibrations.id, readings.calibrationId))
     .$dynamic();
 }
 
-function toReading({ reading, systemCode, systemName }: ReadingWithSystem): Reading {
-  const { id, systemId, value, method, note, takenAt, by, importId, version } = reading;
+function toReading({ reading, systemCode, systemName, kitLotCode, bias, biasSd }: ReadingParts): Reading {
+  const { id, systemId, value, method, methodId, kitLotId, note, photoId, takenAt, by, importId, version } = reading;
+  const { calibrationId } = reading;
   const parameter = parameterOf(reading.parameter);
-  return { id, systemId, systemCode, systemName, parameter, value, method, note, takenAt, by, importId, version };
+  return {
+    ...{ id, systemId, systemCode, systemName, parameter, value, method, methodId, kitLotId, note, photoId, takenAt },
+    ...{ by, importId, version, kitLotCode: kitLotCode ?? '', unit: reading.unit ?? '' },
+    measured: reading.measured ?? value,
+    sd: reading.sd ?? testErrorOf(parameter, method).sd,
+    repeats: reading.repeats ?? [],
+    correction: calibrationId === null ? null : { calibrationId, bias: bias ?? 0, biasSd: biasSd ?? 0 },
+  };
 }
 
 /** The table only ever gets codes of the list; the column's type is plain text. */
@@ -105,10 +148,15 @@ function parameterOf(stored: string): ParameterCode {
   return code;
 }
 
-function filterOf({ systemId, parameter, importId }: ReadingFilter): SQL | undefined {
+function filterOf(db: Db, { systemId, parameter, methodId, by, from, to, importId }: ReadingFilter): SQL | undefined {
+  const zone = from || to ? farmOf(db).timeZone : '';
   return and(
     systemId ? eq(readings.systemId, systemId) : undefined,
     parameter ? eq(readings.parameter, parameter) : undefined,
+    methodId ? eq(readings.methodId, methodId) : undefined,
+    by ? eq(readings.by, by) : undefined,
+    from ? gte(readings.takenAt, startOfDay(from, zone)) : undefined,
+    to ? lt(readings.takenAt, startOfDay(addDays(to, 1), zone)) : undefined,
     importId ? eq(readings.importId, importId) : undefined,
   );
 }

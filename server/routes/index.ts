@@ -1,12 +1,16 @@
 import type { Api } from '../http/api.ts';
 import { readingImportRoutes } from './reading-import-routes.ts';
+import { readingPhotoRoutes } from './reading-photo-routes.ts';
 import { readingRoutes } from './reading-routes.ts';
 import { reservoirRoutes } from './reservoir-routes.ts';
 import { systemRoutes } from './system-routes.ts';
 import { taskRoutes } from './task-routes.ts';
+import { testMethodRoutes } from './test-method-routes.ts';
 import { timelineRoutes } from './timeline-routes.ts';
 import { waterRoutes } from './water-routes.ts';
 import { additionRoutes } from './addition-routes.ts';
+import { dosingRoutes } from './dosing-routes.ts';
+import { stockSolutionRoutes } from './stock-solution-routes.ts';
 import { saltBatchRoutes } from './salt-batch-routes.ts';
 import { listingRoutes } from './listing-routes.ts';
 import { orderRoutes } from './order-routes.ts';
@@ -47,9 +51,13 @@ export function registerRoutes(api: Api): void {
   waterRoutes(api);
   additionRoutes(api);
   saltBatchRoutes(api);
+  stockSolutionRoutes(api);
+  dosingRoutes(api);
   timelineRoutes(api);
   systemRoutes(api);
   reservoirRoutes(api);
   readingRoutes(api);
+  readingPhotoRoutes(api);
   readingImportRoutes(api);
+  testMethodRoutes(api);
 }

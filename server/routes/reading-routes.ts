@@ -3,6 +3,7 @@ import { type Reading, readingEndpoints } from '../../shared/contracts/readings.
 import { UNITS } from '../../shared/domain/units.ts';
 import type { Api } from '../http/api.ts';
 import { type CsvColumns, csvFile } from '../http/csv-file.ts';
+import { logSheet, readingPeople } from '../queries/log-sheet.ts';
 import { readingSeries } from '../queries/reading-series.ts';
 import { allReadings, listReadings } from '../queries/readings.ts';
 import { editReading, logReadings, removeReading } from '../services/reading-service.ts';
@@ -11,6 +12,8 @@ export function readingRoutes(api: Api): void {
   const { clock } = api.deps;
   api.read(readingEndpoints.list, (db, { query }) => listReadings(db, query));
   api.read(readingEndpoints.export, (db, { query }) => csvFile('readings.csv', COLUMNS, allReadings(db, query)));
+  api.read(readingEndpoints.logSheet, (db, { params, caller }) => logSheet(db, params.id, caller.name));
+  api.read(readingEndpoints.people, (db) => ({ items: readingPeople(db) }));
   api.read(readingEndpoints.series, (db, { params, query }) => readingSeries(db, params.id, query, clock.now()));
   api.write(readingEndpoints.log, (write, { body }) => ({ items: logReadings(write, body) }));
   api.write(readingEndpoints.edit, (write, { params, body, ifMatch }) => editReading(write, params.id, ifMatch, body));
@@ -24,9 +27,13 @@ const COLUMNS: CsvColumns<Reading> = {
   'Taken (UTC)': ({ takenAt }) => new Date(takenAt).toISOString(),
   System: ({ systemCode }) => systemCode,
   Parameter: ({ parameter }) => parameter,
-  Value: ({ value }) => value,
+  Value: ({ measured }) => measured,
   Unit: ({ parameter }) => Object.keys(UNITS[parameter])[0] ?? '',
+  'Corrected value': ({ value }) => value,
+  'Standard deviation': ({ sd }) => sd,
+  Tests: ({ repeats }) => Math.max(1, repeats.length),
   Method: ({ method }) => method,
+  'Kit lot': ({ kitLotCode }) => kitLotCode,
   By: ({ by }) => by,
   Note: ({ note }) => note,
 };

@@ -1,7 +1,7 @@
-import { MEQ_PER_DKH, PARAMETERS, type ParameterCode } from './units.ts';
+import { fromCanonical, MEQ_PER_DKH, PARAMETERS, type ParameterCode, toCanonical } from './units.ts';
 
 /** Half of a 95 % interval in standard deviations of a normal error. */
-const SD_PER_HALF_INTERVAL = 1.96;
+export const SD_PER_HALF_INTERVAL = 1.96;
 
 /** How far a single test may be off. */
 export interface TestError {
@@ -39,4 +39,26 @@ export function testErrorOf(parameter: ParameterCode, method: string): TestError
   const usual = PARAMETERS.find(({ code }) => code === parameter);
   const sd = usual?.testSd ?? 0;
   return { sd, half: sd * SD_PER_HALF_INTERVAL, method: 'usual test' };
+}
+
+/**
+ * A small difference in a unit of the parameter, in the canonical unit. Where the unit is no plain multiple (°F, specific
+ * gravity) its slope in the middle of the usual band counts.
+ */
+export function canonicalDifference(parameter: ParameterCode, difference: number, unit: string): number {
+  const middle = fromCanonical(parameter, bandMiddle(parameter), unit);
+  return toCanonical(parameter, middle + difference / 2, unit) - toCanonical(parameter, middle - difference / 2, unit);
+}
+
+/** The other way round: a small canonical difference in a unit of the parameter. */
+export function differenceInUnit(parameter: ParameterCode, difference: number, unit: string): number {
+  const middle = bandMiddle(parameter);
+  return (
+    fromCanonical(parameter, middle + difference / 2, unit) - fromCanonical(parameter, middle - difference / 2, unit)
+  );
+}
+
+function bandMiddle(parameter: ParameterCode): number {
+  const band = PARAMETERS.find(({ code }) => code === parameter)?.band ?? { min: 0, max: 0 };
+  return (band.min + band.max) / 2;
 }

@@ -1,4 +1,4 @@
-import { testErrorOf } from './test-error.ts';
+import { SD_PER_HALF_INTERVAL, testErrorOf } from './test-error.ts';
 import { toCanonical, type ParameterCode } from './units.ts';
 
 /** A method that many farms use, with the error that it is known for; canonical unit but for `unit` itself. */
@@ -14,9 +14,6 @@ export interface UsualMethod {
 
 /** Where the figures of a usual method are from, in the words that are shown with it. */
 export const USUAL_METHOD_SOURCE = 'Common practice, no source.';
-
-/** Half of a 95 % interval in standard deviations of a normal error. */
-const SD_PER_HALF_INTERVAL = 1.96;
 
 /**
  * Methods that a new farm starts with. Their errors are common practice, no source: half-widths of 95 % in the unit that

@@ -1,5 +1,5 @@
 import { sql } from 'drizzle-orm';
-import { blob, check, index, integer, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
+import { blob, check, index, real, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
 import { day, id, instant, version } from './columns.ts';
 
 /** A way to test one parameter, with how far two tests of the same water lie apart. Figures are in the canonical unit. */
