@@ -36,7 +36,7 @@ export function givenReading(
   fields: { parameter?: ParameterCode; unit?: string } & Partial<Omit<LogReadings, 'systemId' | 'values'>> = {},
 ): string {
   const { parameter = 'alkalinity', unit = 'dKH', ...rest } = fields;
-  const values = [{ parameter, value, unit }];
+  const values = [{ parameter, value, unit, confirmed: true }];
   const logged = farm.write((write) => logReadings(write, { systemId, values, method: '', note: '', ...rest }));
   return logged[0]?.id ?? '';
 }
