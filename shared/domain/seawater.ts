@@ -1,14 +1,9 @@
+import { polynomial } from './polynomial.ts';
 import { assertWithin } from './ranges.ts';
-
-/** EOS-80 is defined on the 1968 temperature scale; thermometers of today show ITS-90 (Saunders 1990). */
-const T68_PER_T90 = 1.00024;
+import { risingRoot } from './roots.ts';
 
 const SALINITY_LIMITS = { min: 0, max: 42 } as const;
 const TEMPERATURE_LIMITS = { min: -2, max: 40 } as const;
-const SG_TEMPERATURE = 25;
-
-/** Specific gravity of salinity 42, where the equation of state ends. */
-const HIGHEST_SG = 1.0317;
 
 /**
  * Density of seawater at one atmosphere.
@@ -22,35 +17,53 @@ const HIGHEST_SG = 1.0317;
 export function seawaterDensity(salinity: number, temperatureC: number): number {
   assertWithin('Salinity', salinity, SALINITY_LIMITS.min, SALINITY_LIMITS.max);
   assertWithin('Temperature (°C)', temperatureC, TEMPERATURE_LIMITS.min, TEMPERATURE_LIMITS.max);
-  return densityOf(salinity, temperatureC * T68_PER_T90);
+  return densityOf(salinity, toT68(temperatureC));
 }
 
 /**
- * Specific gravity 25/25 °C: density at 25 °C over that of pure water at 25 °C, the scale of a refractometer or float
- * that is marked 25 °C.
+ * Specific gravity is nothing without its two temperatures: of the sample and of the pure water it is compared with.
+ * Instruments are marked 25/25 °C, 60/60 °F or 20/4 °C; between them the same water differs by up to 0.0016.
+ */
+export const SG_SCALES = {
+  '25/25': { sampleC: 25, waterC: 25 },
+  '60F/60F': { sampleC: 140 / 9, waterC: 140 / 9 },
+  '20/4': { sampleC: 20, waterC: 4 },
+} as const;
+export type SgScale = keyof typeof SG_SCALES;
+
+/**
+ * Specific gravity: density of seawater over that of pure water, at the temperatures of the scale.
  *
  * @param salinity practical salinity, 0–42
  */
-export function specificGravity(salinity: number): number {
-  return seawaterDensity(salinity, SG_TEMPERATURE) / seawaterDensity(0, SG_TEMPERATURE);
+export function specificGravity(salinity: number, scale: SgScale = '25/25'): number {
+  const { sampleC, waterC } = SG_SCALES[scale];
+  return seawaterDensity(salinity, sampleC) / seawaterDensity(0, waterC);
 }
 
 /**
- * Practical salinity from specific gravity 25/25 °C; the inverse of {@link specificGravity} by Newton's method.
+ * Practical salinity from specific gravity; the inverse of {@link specificGravity}.
  *
- * @throws {DomainError} `domain.out_of_range` outside 1.0000–1.0317 (salinity 0–42)
+ * @throws {DomainError} `domain.out_of_range` where it is no seawater of salinity 0–42
  */
-export function salinityFromSpecificGravity(sg: number): number {
-  assertWithin('Specific gravity', sg, 1, HIGHEST_SG);
-  const target = sg * seawaterDensity(0, SG_TEMPERATURE);
-  const t68 = SG_TEMPERATURE * T68_PER_T90;
-  let salinity = (sg - 1) * 1300;
-  // Density is almost a straight line in salinity: three steps reach the last bit, the rest costs nothing.
-  for (let step = 0; step < 8; step += 1) {
-    const excess = densityOf(salinity, t68) - target;
-    salinity = Math.min(SALINITY_LIMITS.max, Math.max(0, salinity - excess / densitySlope(salinity, t68)));
-  }
-  return salinity;
+export function salinityFromSpecificGravity(sg: number, scale: SgScale = '25/25'): number {
+  const { min, max } = SALINITY_LIMITS;
+  const rounded = (salinity: number, round: (x: number) => number) =>
+    round(specificGravity(salinity, scale) * 1e4) / 1e4;
+  assertWithin(`Specific gravity ${scale}`, sg, rounded(min, Math.floor), rounded(max, Math.ceil));
+  const { sampleC, waterC } = SG_SCALES[scale];
+  const target = sg * seawaterDensity(0, waterC);
+  const t68 = toT68(sampleC);
+  const excess = (salinity: number) => ({
+    value: densityOf(salinity, t68) - target,
+    slope: densitySlope(salinity, t68),
+  });
+  return risingRoot(excess, { low: min, high: max }, 35, 1e-12);
+}
+
+/** EOS-80 and PSS-78 are defined on the 1968 temperature scale; thermometers of today show ITS-90 (Saunders 1990). */
+export function toT68(t90: number): number {
+  return t90 * 1.00024;
 }
 
 function densityOf(s: number, t: number): number {
@@ -75,8 +88,4 @@ function saltTerms(t: number): { linear: number; power: number; square: number }
     power: polynomial(t, [-5.72466e-3, 1.0227e-4, -1.6546e-6]),
     square: 4.8314e-4,
   };
-}
-
-function polynomial(x: number, coefficients: readonly number[]): number {
-  return coefficients.reduceRight((sum, coefficient) => sum * x + coefficient, 0);
 }

@@ -1,5 +1,13 @@
 import { canonicalValue, readingValue } from './reading-value.ts';
-import { fromCanonical, MEQ_PER_DKH, PARAMETERS, type ParameterCode, unitOf, unitsOf } from './units.ts';
+import {
+  everydayUnitsOf,
+  fromCanonical,
+  MEQ_PER_DKH,
+  PARAMETERS,
+  type ParameterCode,
+  unitOf,
+  unitsOf,
+} from './units.ts';
 
 /** What was probably meant. */
 export interface Suggestion {
@@ -82,11 +90,11 @@ function suggest(asked: ParameterCode, value: number, unit: string, last: number
       ...{ parameter: asked, value: Number((value * factor).toPrecision(9)), unit },
       reason: 'decimal' as const,
     })),
-    ...unitsOf(asked)
+    ...everydayUnitsOf(asked)
       .filter((name) => name !== unit)
       .map((name) => ({ parameter: asked, value, unit: name, reason: 'unit' as const })),
     ...other.flatMap((code) =>
-      unitsOf(code).map((name) => ({ parameter: code, value, unit: name, reason: 'parameter' as const })),
+      everydayUnitsOf(code).map((name) => ({ parameter: code, value, unit: name, reason: 'parameter' as const })),
     ),
   ];
   const likely = thoughts.flatMap((each) => {

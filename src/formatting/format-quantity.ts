@@ -17,6 +17,9 @@ export interface QuantityParts {
   unit: string;
 }
 
+/** Where a unit is a curve, a difference is told as it is at the level that seawater has. */
+const USUAL_LEVEL: Partial<Record<Quantity, number>> = { salinity: 35 };
+
 /** A stored value in the unit a person chose, in parts. */
 export function quantityParts(
   quantity: Quantity,
@@ -51,7 +54,8 @@ export function formatQuantity(
 }
 
 function differenceIn(quantity: Quantity, unitName: string, canonical: number): number {
-  return fromCanonical(quantity, canonical, unitName) - fromCanonical(quantity, 0, unitName);
+  const from = USUAL_LEVEL[quantity] ?? 0;
+  return fromCanonical(quantity, from + canonical, unitName) - fromCanonical(quantity, from, unitName);
 }
 
 /** Units that aren't multiples stretch an error by their slope at the value. */

@@ -1,5 +1,7 @@
-import { salinityFromSpecificGravity, specificGravity } from '../seawater.ts';
-import { multiple, type Unit } from './linear.ts';
+import { conductivityOf, salinityFromConductivity } from '../conductivity.ts';
+import { salinityFromSpecificGravity, type SgScale, specificGravity } from '../seawater.ts';
+import { multiple, rare, STANDARD_WATER, type Unit } from './linear.ts';
+import { perKilogram } from './solutes.ts';
 
 /** 1 dKH is 10 mg of calcium oxide (56.077 g/mol, two equivalents) in a litre. The one factor in the product. */
 export const MEQ_PER_DKH = 20 / 56.077;
@@ -11,11 +13,30 @@ export const ALKALINITY = {
   'meq/L': multiple('meq/L', 1, 2),
   dKH: multiple('dKH', MEQ_PER_DKH, 1),
   ppm: multiple('ppm CaCO₃', 1 / CACO3_MG_PER_MEQ, 0),
+  'umol/kg': perKilogram(1 / 1000, 0),
 } as const satisfies Record<string, Unit>;
 
+function specificGravityOn(scale: SgScale, label: string): Unit {
+  return {
+    label,
+    decimals: 4,
+    toCanonical: (value) => salinityFromSpecificGravity(value, scale),
+    fromCanonical: (value) => specificGravity(value, scale),
+  };
+}
+
+/** Practical salinity; grams in a kilogram ("ppt") is the same within 0.5 %, and the word people use. */
 export const SALINITY = {
   ppt: multiple('ppt', 1, 1),
-  sg: { label: 'SG 25/25 °C', decimals: 4, toCanonical: salinityFromSpecificGravity, fromCanonical: specificGravity },
+  sg: specificGravityOn('25/25', 'SG 25/25 °C'),
+  'sg 60F': rare(specificGravityOn('60F/60F', 'SG 60/60 °F')),
+  'sg 20/4': rare(specificGravityOn('20/4', 'SG 20/4 °C')),
+  'mS/cm': {
+    label: 'mS/cm at 25 °C',
+    decimals: 1,
+    toCanonical: (value, { temperatureC } = STANDARD_WATER) => salinityFromConductivity(value, temperatureC),
+    fromCanonical: (value, { temperatureC } = STANDARD_WATER) => conductivityOf(value, temperatureC),
+  },
 } as const satisfies Record<string, Unit>;
 
 export const TEMPERATURE = {
@@ -29,10 +50,3 @@ export const TEMPERATURE = {
 } as const satisfies Record<string, Unit>;
 
 export const PH = { pH: multiple('pH', 1, 2) } as const satisfies Record<string, Unit>;
-
-/** Calcium and magnesium; a figure in ppm is taken as mg/L, as test kits mean it. */
-export const MAJOR_ION = { 'mg/L': multiple('mg/L', 1, 0) } as const satisfies Record<string, Unit>;
-
-export const NITRATE = { 'mg/L': multiple('mg/L', 1, 1) } as const satisfies Record<string, Unit>;
-
-export const PHOSPHATE = { 'mg/L': multiple('mg/L', 1, 3) } as const satisfies Record<string, Unit>;

@@ -53,6 +53,11 @@ describe('quantities', () => {
     expect(formatQuantity('temperature', 'F', 1, { difference: true, signed: true })).toBe('+1.8\u2009°F');
   });
 
+  it('a change of salinity in mS/cm is told as it is in seawater', () => {
+    // gsw 3.6.16 at 25 °C: S 35 conducts 53.07103 and S 36 conducts 54.41563 mS/cm.
+    expect(formatQuantity('salinity', 'mS/cm', 1, { difference: true, decimals: 2 })).toBe('1.34\u2009mS/cm at 25 °C');
+  });
+
   it('nothing is shown as a dash', () => {
     expect(formatQuantity('volume', 'L', null)).toBe('—');
   });

@@ -15,5 +15,5 @@ it.each(PARAMETERS.flatMap(({ code, plausible }) => unitsOf(code).map((unit) => 
 );
 
 it('readingValue: a unit that the parameter does not have is told with those it has', () => {
-  expect(readingValue('alkalinity', 8, 'mg/L').problem).toBe('Choose one of these units: meq/L, dKH, ppm.');
+  expect(readingValue('alkalinity', 8, 'mg/L').problem).toBe('Choose one of these units: meq/L, dKH, ppm, umol/kg.');
 });

@@ -1,6 +1,12 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { salinityFromSpecificGravity, seawaterDensity, specificGravity } from '../../../shared/domain/seawater.ts';
+import {
+  salinityFromSpecificGravity,
+  seawaterDensity,
+  SG_SCALES,
+  specificGravity,
+  type SgScale,
+} from '../../../shared/domain/seawater.ts';
 import reference from '../../reference/seawater.json' with { type: 'json' };
 import { domainErrorOf } from '../../support/domain-error.ts';
 
@@ -32,23 +38,30 @@ describe('density at one atmosphere', () => {
   });
 });
 
-describe('specific gravity 25/25', () => {
-  it.each(reference.specificGravities)('$id: S $salinity is $expected', ({ salinity, expected, tolerance }) => {
-    expect(Math.abs(specificGravity(salinity) - expected)).toBeLessThanOrEqual(tolerance);
-    expect(salinityFromSpecificGravity(expected)).toBeCloseTo(salinity, 4);
+const scales = Object.keys(SG_SCALES) as SgScale[]; // the keys of the table are the scales
+
+describe('specific gravity', () => {
+  // EOS-80: density of the sample over that of pure water, each at the scale's temperature.
+  it.each(reference.specificGravities)('$id: S $salinity is $expected on $scale', (row) => {
+    const scale = scales.find((each) => each === row.scale);
+    expect(Math.abs(specificGravity(row.salinity, scale) - row.expected)).toBeLessThanOrEqual(row.tolerance);
+    expect(salinityFromSpecificGravity(row.expected, scale)).toBeCloseTo(row.salinity, 4);
   });
 
-  it('comes back from every salinity', () => {
+  it.each(scales)('comes back from every salinity on %s', (scale) => {
     fc.assert(
       fc.property(fc.double({ min: 0, max: 42, noNaN: true }), (salinity) => {
-        expect(Math.abs(salinityFromSpecificGravity(specificGravity(salinity)) - salinity)).toBeLessThan(1e-11);
+        const back = salinityFromSpecificGravity(specificGravity(salinity, scale), scale);
+        expect(Math.abs(back - salinity)).toBeLessThan(1e-11);
       }),
     );
   });
 
-  it('is one for fresh water', () => {
+  it('is one for fresh water, where both are as warm', () => {
     expect(specificGravity(0)).toBe(1);
-    expect(salinityFromSpecificGravity(1)).toBe(0);
+    expect(specificGravity(0, '60F/60F')).toBe(1);
+    expect(salinityFromSpecificGravity(1)).toBeCloseTo(0, 12);
+    expect(specificGravity(0, '20/4')).toBeLessThan(1);
   });
 
   it.each([0.9999, 1.0318, 35, Number.NaN])('when %d is no specific gravity of seawater, refuses', (sg) => {
