@@ -8,7 +8,7 @@ import { createColony } from '../services/colony-service.ts';
 import { createLine } from '../services/line-service.ts';
 import { createListing } from '../services/listing-service.ts';
 import { createRack } from '../services/rack-service.ts';
-import { createReservoir } from '../services/reservoir-service.ts';
+import { createReservoir } from '../services/reservoir-set-up.ts';
 import { createStore } from '../services/store-service.ts';
 import { createItem, createSupplier } from '../services/supply-items.ts';
 import { createSystem, createTank } from '../services/system-service.ts';

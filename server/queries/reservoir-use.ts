@@ -1,11 +1,15 @@
 import { and, asc, desc, eq, gte, lt, sql } from 'drizzle-orm';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
-import { onlineSpans } from '../../shared/domain/reservoir-state.ts';
-import { reservoirUse, type UseInterval } from '../../shared/domain/reservoir-use.ts';
+import { onlineSpans, type ReservoirEventKind } from '../../shared/domain/reservoir-state.ts';
+import { feedsAt, partOfSystem } from '../../shared/domain/reservoir-shares.ts';
+import { reservoirUse, type ReservoirEvent, type UseInterval } from '../../shared/domain/reservoir-use.ts';
 import type { Db } from '../db/client.ts';
-import { reservoirEvents, reservoirs } from '../db/schema/index.ts';
+import { reservoirEvents } from '../db/schema/index.ts';
+import { feedSets, reservoirsOfSystem } from './reservoir-feeds.ts';
 
 const USUAL_DAYS = 60;
+
+type EventRow = typeof reservoirEvents.$inferSelect;
 
 export interface OnlineUse {
   /** What a system got between two looks at the level. */
@@ -21,18 +25,12 @@ export interface OnlineUse {
 /**
  * What was drawn from a reservoir while it was online. What left it at other times (cleaning, a drained rest) fed no
  * system and is not counted.
+ *
+ * @param events of the reservoir in order, as `recentEvents` gives them
  */
-export function onlineUse(db: Db, reservoirId: string, now: number, days: number = USUAL_DAYS): OnlineUse {
-  const events = recentEvents(db, reservoirId, now - days * MS_PER_DAY);
+export function onlineUse(events: readonly EventRow[]): OnlineUse {
   const spans = onlineSpans(events);
-  const use = reservoirUse(
-    events.map(({ kind, at, levelBeforeL, levelL, alkalinityMeqL }) =>
-      kind === 'refill'
-        ? { kind, at, litresBefore: levelBeforeL, litresAfter: levelL, alkalinityMeqL }
-        : { kind: 'level', at, litres: levelL },
-    ),
-    events[0]?.alkalinityMeqL ?? 0,
-  );
+  const use = reservoirUse(events.map(toLookOrChange), events[0]?.alkalinityMeqL ?? 0);
   const open = spans.at(-1);
   return {
     intervals: use.intervals.filter((each) =>
@@ -45,18 +43,25 @@ export function onlineUse(db: Db, reservoirId: string, now: number, days: number
   };
 }
 
-/** Use of all reservoirs of a system. */
+/** What a system got from all reservoirs that feed it, by its share of each. */
 export function systemUse(db: Db, systemId: string, now: number, days: number): OnlineUse[] {
-  return db
-    .select({ id: reservoirs.id })
-    .from(reservoirs)
-    .where(eq(reservoirs.systemId, systemId))
-    .all()
-    .map(({ id }) => onlineUse(db, id, now, days));
+  return reservoirsOfSystem(db, systemId).map(({ id, systemId: ownSystemId }) => {
+    const use = onlineUse(recentEvents(db, id, now, days));
+    const sets = feedSets(db, id);
+    if (sets.length === 0) return use;
+    const share = feedsAt(sets, ownSystemId, now).find((feed) => feed.systemId === systemId)?.share ?? 0;
+    return {
+      ...use,
+      intervals: partOfSystem(use.intervals, sets, { ownSystemId, systemId }),
+      onlineSince: share > 0 ? use.onlineSince : null,
+      levelL: use.levelL * share,
+    };
+  });
 }
 
-/** Events from an instant on, led by the changeover before them, so that it is known whether the reservoir was online. */
-function recentEvents(db: Db, reservoirId: string, from: number) {
+/** Events of the last days, led by the changeover before them, so that it is known whether the reservoir was online. */
+export function recentEvents(db: Db, reservoirId: string, now: number, days: number = USUAL_DAYS): EventRow[] {
+  const from = now - days * MS_PER_DAY;
   const ofReservoir = eq(reservoirEvents.reservoirId, reservoirId);
   const change = db
     .select({ at: reservoirEvents.at })
@@ -71,4 +76,15 @@ function recentEvents(db: Db, reservoirId: string, from: number) {
     .where(and(ofReservoir, gte(reservoirEvents.at, change?.at ?? from)))
     .orderBy(asc(reservoirEvents.at), asc(sql`rowid`))
     .all();
+}
+
+/** Events that change what stands in a reservoir, or its strength, other than by use. */
+const CHANGES: ReadonlySet<ReservoirEventKind> = new Set([
+  ...(['refill', 'topped_up', 'strength', 'sludge_removed', 'cleaned'] as const),
+]);
+
+function toLookOrChange({ kind, at, levelBeforeL, levelL, alkalinityMeqL }: EventRow): ReservoirEvent {
+  return CHANGES.has(kind)
+    ? { kind: 'change', at, litresBefore: levelBeforeL, litresAfter: levelL, alkalinityMeqL }
+    : { kind: 'level', at, litres: levelL };
 }

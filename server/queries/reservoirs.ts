@@ -1,14 +1,13 @@
-import { and, asc, count, desc, eq, lt, or, sql, type SQL } from 'drizzle-orm';
+import { and, asc, count, desc, eq, inArray, isNotNull, isNull, lt, or, sql, type SQL } from 'drizzle-orm';
 import { z } from 'zod';
 import type { Page } from '../../shared/contracts/common.ts';
 import type { Reservoir, ReservoirEvent } from '../../shared/contracts/reservoirs.ts';
-import { emptyAt, litresPerDay } from '../../shared/domain/reservoir-use.ts';
-import { stateAt } from '../../shared/domain/reservoir-state.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { reservoirEvents, reservoirs, systems } from '../db/schema/index.ts';
 import { pageFrom, readCursor } from './cursor.ts';
-import { onlineUse } from './reservoir-use.ts';
+import { fedSystems, reservoirsOfSystem } from './reservoir-feeds.ts';
+import { toReservoir } from './reservoir-view.ts';
 
 export type ReservoirRow = typeof reservoirs.$inferSelect;
 export type ReservoirEventRow = typeof reservoirEvents.$inferSelect;
@@ -20,15 +19,27 @@ export function reservoirRow(db: Db, reservoirId: string): ReservoirRow {
   return row;
 }
 
-export function listReservoirs(db: Db, now: number, systemId?: string): Reservoir[] {
+/** Reservoirs that feed a system, or all; those that were put away only when they are asked for. */
+export function listReservoirs(db: Db, now: number, systemId?: string, retired: 'no' | 'only' = 'no'): Reservoir[] {
   return db
     .select({ reservoir: reservoirs, system: systems })
     .from(reservoirs)
     .innerJoin(systems, eq(systems.id, reservoirs.systemId))
-    .where(systemId ? eq(reservoirs.systemId, systemId) : undefined)
+    .where(
+      and(
+        retired === 'only' ? isNotNull(reservoirs.retiredAt) : isNull(reservoirs.retiredAt),
+        systemId === undefined ? undefined : inArray(reservoirs.id, feeding(db, systemId, now)),
+      ),
+    )
     .orderBy(asc(systems.code), asc(reservoirs.code))
     .all()
     .map((row) => toReservoir(db, row, now));
+}
+
+function feeding(db: Db, systemId: string, now: number): string[] {
+  return reservoirsOfSystem(db, systemId)
+    .filter((reservoir) => fedSystems(db, reservoir, now).includes(systemId))
+    .map(({ id }) => id);
 }
 
 export function showReservoir(db: Db, reservoirId: string, now: number): Reservoir {
@@ -87,25 +98,4 @@ export function listEvents(
 function before(cursor: string): SQL | undefined {
   const [at, order] = readCursor(cursor, z.tuple([z.number(), z.number()]));
   return or(lt(reservoirEvents.at, at), and(eq(reservoirEvents.at, at), lt(sql`rowid`, order)));
-}
-
-function toReservoir(
-  db: Db,
-  { reservoir, system }: { reservoir: ReservoirRow; system: typeof systems.$inferSelect },
-  now: number,
-): Reservoir {
-  const { id, code, systemId, volumeL, levelL, alkalinityMeqL, readyAt, version } = reservoir;
-  const last = lastEvent(db, reservoir.id);
-  const perDay = litresPerDay(onlineUse(db, reservoir.id, now).intervals, now);
-  const isOnline = reservoir.state === 'online' && last !== undefined;
-  return {
-    ...{ id, code, systemId, volumeL, levelL, alkalinityMeqL, readyAt, version },
-    systemCode: system.code,
-    systemName: system.name,
-    state: stateAt(reservoir, now),
-    levelAt: last?.at ?? null,
-    litresPerDay: perDay,
-    emptyAt: isOnline && perDay !== null ? emptyAt(reservoir.levelL, perDay, last.at) : null,
-    wholeDoseMeqL: (reservoir.levelL * reservoir.alkalinityMeqL) / system.netVolumeL,
-  };
 }

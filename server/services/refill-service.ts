@@ -1,13 +1,15 @@
-import type { RefillReservoir, RefillResult } from '../../shared/contracts/reservoirs.ts';
+import type { RefillReservoir } from '../../shared/contracts/reservoir-acts.ts';
+import type { RefillResult } from '../../shared/contracts/reservoirs.ts';
 import { mixLimewater, USUAL_ACID_PERCENT, USUAL_LIME_PURITY } from '../../shared/domain/limewater.ts';
 import { strengthAfterRefill } from '../../shared/domain/reservoir-state.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Write } from '../db/write.ts';
+import { feedsOf } from '../queries/reservoir-feeds.ts';
 import { reservoirRow, showReservoir } from '../queries/reservoirs.ts';
 import { waterItem, type WaterItemRow } from '../queries/water-items.ts';
 import { actTime } from './act-time.ts';
 import { addEvent, assertFits } from './reservoir-events.ts';
-import { useSupply } from './supply-use.ts';
+import { useSharedSupply } from './shared-supply-use.ts';
 
 /** Logs a mix: lime and vinegar leave the supplies, the reservoir settles with the strength that the mix and the rest make. */
 export function refillReservoir(write: Write, reservoirId: string, input: RefillReservoir): RefillResult {
@@ -35,9 +37,10 @@ export function refillReservoir(write: Write, reservoirId: string, input: Refill
     undissolvedG: mix.undissolvedG,
     calciumMgL: mix.calciumMgL,
   });
-  const cause = { cause: 'refill', causeId: event.id, systemId: reservoir.systemId, at } as const;
-  if (lime) useSupply(write, { itemId: lime.id, quantity: limeG, ...cause });
-  if (vinegar) useSupply(write, { itemId: vinegar.id, quantity: vinegarMl, ...cause });
+  const feeds = feedsOf(write.tx, reservoir, at);
+  const cause = { cause: 'refill', causeId: event.id, at } as const;
+  if (lime) useSharedSupply(write, { itemId: lime.id, quantity: limeG, ...cause }, feeds);
+  if (vinegar) useSharedSupply(write, { itemId: vinegar.id, quantity: vinegarMl, ...cause }, feeds);
   const { vinegarHelps, shortOf, saturation } = mix;
   return { reservoir: showReservoir(write.tx, reservoirId, write.now), event, vinegarHelps, shortOf, saturation };
 }

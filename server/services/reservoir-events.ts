@@ -15,10 +15,18 @@ const DONE_WORDS: Record<ReservoirEventRow['kind'], string> = {
   level: 'level_read',
   online: 'put_online',
   offline: 'taken_offline',
+  topped_up: 'topped_up',
+  strength: 'strength_checked',
+  sludge_removed: 'sludge_removed',
+  spent: 'marked_spent',
+  cleaned: 'cleaned',
 };
 
 /** Writes one event of a reservoir and brings its row in step. */
 export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent): ReservoirEventRow {
+  if (reservoir.retiredAt !== null) {
+    throw new DomainError('rule.refused', `${reservoir.code} is put away. Bring it back first.`);
+  }
   assertInOrder(write, reservoir, event.at);
   const row = write.tx
     .insert(reservoirEvents)

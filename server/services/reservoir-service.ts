@@ -1,49 +1,23 @@
-import { and, eq } from 'drizzle-orm';
 import type {
-  ChangeOver,
-  ChangeOverResult,
-  CreateReservoir,
-  EditReservoir,
+  CheckStrength,
+  CleanReservoir,
   LogLevel,
-  Reservoir,
-  ReservoirEvent,
-} from '../../shared/contracts/reservoirs.ts';
+  MarkSpent,
+  RemoveSludge,
+  TopUp,
+} from '../../shared/contracts/reservoir-acts.ts';
+import type { ReservoirChange, ReservoirEvent } from '../../shared/contracts/reservoirs.ts';
+import { strengthAfterRefill } from '../../shared/domain/reservoir-state.ts';
+import { strengthByConductivity, vinegarMlPerL, VINEGAR_THAT_SPOILS } from '../../shared/domain/reservoir-strength.ts';
 import { DomainError } from '../../shared/errors.ts';
-import { reservoirs } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
-import { lastEvent, reservoirRow, type ReservoirRow, showReservoir } from '../queries/reservoirs.ts';
-import { systemRow } from '../queries/systems.ts';
+import { farmOf } from '../queries/farm.ts';
+import { limewaterHabits } from '../queries/limewater-habits.ts';
+import { recentEvents } from '../queries/reservoir-use.ts';
+import { reservoirRow, showReservoir } from '../queries/reservoirs.ts';
 import { actTime } from './act-time.ts';
-import { assertVersion } from './edit-check.ts';
-import { addEvent, assertFits, removeEvent } from './reservoir-events.ts';
-import { returnSupply } from './supply-return.ts';
-
-export function createReservoir(write: Write, input: CreateReservoir): Reservoir {
-  systemRow(write.tx, input.systemId);
-  const reservoirId = write.newId();
-  write.tx
-    .insert(reservoirs)
-    .values({ id: reservoirId, ...input, createdAt: write.now })
-    .run();
-  const after = showReservoir(write.tx, reservoirId, write.now);
-  write.audit({ action: 'reservoir.created', entity: 'reservoir', entityId: reservoirId, after });
-  return after;
-}
-
-export function editReservoir(write: Write, reservoirId: string, ifMatch: number, edit: EditReservoir): Reservoir {
-  const row = reservoirRow(write.tx, reservoirId);
-  const before = showReservoir(write.tx, reservoirId, write.now);
-  assertVersion(row, ifMatch, before);
-  assertFits({ ...row, volumeL: edit.volumeL ?? row.volumeL }, row.levelL, 'volumeL');
-  write.tx
-    .update(reservoirs)
-    .set({ ...edit, version: row.version + 1 })
-    .where(eq(reservoirs.id, reservoirId))
-    .run();
-  const after = showReservoir(write.tx, reservoirId, write.now);
-  write.audit({ action: 'reservoir.changed', entity: 'reservoir', entityId: reservoirId, before, after });
-  return after;
-}
+import { changeLimewaterHabits } from './limewater-habits-service.ts';
+import { addEvent, assertFits } from './reservoir-events.ts';
 
 export function logLevel(write: Write, reservoirId: string, { at, levelL, note }: LogLevel): ReservoirEvent {
   const reservoir = reservoirRow(write.tx, reservoirId);
@@ -52,61 +26,95 @@ export function logLevel(write: Write, reservoirId: string, { at, levelL, note }
   return addEvent(write, reservoir, { kind: 'level', at: actTime(write, at), levelL, alkalinityMeqL, note });
 }
 
-/** Puts a reservoir online for its system; the one that was online comes off at the same instant. */
-export function changeOver(
-  write: Write,
-  reservoirId: string,
-  { at, formerLevelL, note }: ChangeOver,
-): ChangeOverResult {
-  const next = reservoirRow(write.tx, reservoirId);
-  if (next.state === 'online') throw new DomainError('rule.refused', `${next.code} is online already.`);
-  if (next.levelL === 0) {
-    throw new DomainError('rule.refused', `${next.code} is empty. Mix limewater in it first.`);
-  }
-  const instant = actTime(write, at);
-  const former = onlineOf(write, next.systemId);
-  if (former) {
-    const levelL = formerLevelL ?? former.levelL;
-    assertFits(former, levelL, 'formerLevelL');
-    addEvent(write, former, { kind: 'offline', at: instant, levelL, alkalinityMeqL: former.alkalinityMeqL, note });
-  }
-  const { levelL, alkalinityMeqL } = next;
-  const event = addEvent(write, next, { kind: 'online', at: instant, levelL, alkalinityMeqL, note });
+/** Plain water joins what stands in it: it dilutes. */
+export function topUp(write: Write, reservoirId: string, input: TopUp): ReservoirChange {
+  const reservoir = reservoirRow(write.tx, reservoirId);
+  const { waterL, note } = input;
+  const levelBeforeL = input.levelBeforeL ?? reservoir.levelL;
+  assertFits(reservoir, levelBeforeL, 'levelBeforeL');
+  assertFits(reservoir, levelBeforeL + waterL, 'waterL');
+  const before = { levelL: levelBeforeL, alkalinityMeqL: reservoir.alkalinityMeqL };
+  const event = addEvent(write, reservoir, {
+    ...{ kind: 'topped_up', at: actTime(write, input.at), note, levelBeforeL, levelL: levelBeforeL + waterL, waterL },
+    alkalinityMeqL: strengthAfterRefill(before, { waterL, alkalinityMeqL: 0 }),
+  });
   return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
 }
 
 /**
- * Takes back the last event of a reservoir. A refill gives its lime and vinegar back; a changeover puts the reservoir
- * that was online before back online, where nothing was logged for it since.
+ * Takes the strength that a conductivity reading finds as what stands in it from now on. Where vinegar is in the mix the
+ * reading says too little: it is kept, but the strength stays.
  */
-export function undoLastEvent(write: Write, reservoirId: string, eventId: string): void {
+export function checkStrength(write: Write, reservoirId: string, input: CheckStrength): ReservoirChange {
   const reservoir = reservoirRow(write.tx, reservoirId);
-  const event = lastEvent(write.tx, reservoirId);
-  if (event?.id !== eventId) {
-    throw new DomainError('rule.refused', 'Something was logged after this. Take the last event back first.');
-  }
-  if (event.kind === 'offline' && onlineOf(write, reservoir.systemId)) {
-    throw new DomainError('rule.refused', 'Another reservoir is online now. Take its changeover back instead.');
-  }
-  if (event.kind === 'refill') {
-    returnSupply(write, 'refill', event.id, 'Log the level that stands in the reservoir now instead.');
-  }
-  removeEvent(write, reservoir, event);
-  if (event.kind === 'online') bringFormerBack(write, reservoir, event.at);
+  const { conductivityMsCm, note } = input;
+  const levelL = input.levelL ?? reservoir.levelL;
+  assertFits(reservoir, levelL, 'levelL');
+  if (levelL === 0) throw new DomainError('rule.refused', `${reservoir.code} is empty. There is nothing to check.`);
+  const freshMsCm = freshReading(write, input.freshMsCm);
+  const found = holdsVinegar(write, reservoirId) ? null : strengthByConductivity(conductivityMsCm, freshMsCm);
+  const expected = reservoir.alkalinityMeqL;
+  const event = addEvent(write, reservoir, {
+    ...{ kind: 'strength', at: actTime(write, input.at), note, levelBeforeL: levelL, levelL },
+    ...{ conductivityMsCm, freshMsCm, alkalinityMeqL: found ?? expected },
+    strengthLeft: found === null || expected === 0 ? null : found / expected,
+  });
+  return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
 }
 
-function bringFormerBack(write: Write, { id, systemId }: ReservoirRow, at: number): void {
-  const others = write.tx.select().from(reservoirs).where(eq(reservoirs.systemId, systemId)).all();
-  for (const other of others.filter((each) => each.id !== id)) {
-    const event = lastEvent(write.tx, other.id);
-    if (event?.kind === 'offline' && event.at === at) removeEvent(write, other, event);
+/** Takes out the sediment, and with it the litres that went along. */
+export function removeSludge(write: Write, reservoirId: string, input: RemoveSludge): ReservoirChange {
+  const reservoir = reservoirRow(write.tx, reservoirId);
+  const { levelL, note } = input;
+  const levelBeforeL = input.levelBeforeL ?? reservoir.levelL;
+  assertFits(reservoir, levelBeforeL, 'levelBeforeL');
+  if (levelL > levelBeforeL) {
+    const message = 'Taking sludge out can not raise the level. Enter what is left in it.';
+    throw new DomainError('input.invalid', message, { fields: [{ path: 'levelL', message }] });
   }
+  const { alkalinityMeqL } = reservoir;
+  const at = actTime(write, input.at);
+  const event = addEvent(write, reservoir, { kind: 'sludge_removed', at, note, levelBeforeL, levelL, alkalinityMeqL });
+  return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
 }
 
-function onlineOf(write: Write, systemId: string): ReservoirRow | undefined {
-  return write.tx
-    .select()
-    .from(reservoirs)
-    .where(and(eq(reservoirs.systemId, systemId), eq(reservoirs.state, 'online')))
-    .get();
+/** Takes a reservoir off with nothing in its place. */
+export function markSpent(write: Write, reservoirId: string, input: MarkSpent): ReservoirChange {
+  const reservoir = reservoirRow(write.tx, reservoirId);
+  if (reservoir.state === 'spent') throw new DomainError('rule.refused', `${reservoir.code} is spent already.`);
+  const levelL = input.levelL ?? reservoir.levelL;
+  assertFits(reservoir, levelL, 'levelL');
+  const { alkalinityMeqL } = reservoir;
+  const at = actTime(write, input.at);
+  const event = addEvent(write, reservoir, { kind: 'spent', at, note: input.note, levelL, alkalinityMeqL });
+  return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
+}
+
+/** Empties it, scrapes it out: it stands by, empty, and its sludge is gone. */
+export function cleanReservoir(write: Write, reservoirId: string, input: CleanReservoir): ReservoirChange {
+  const reservoir = reservoirRow(write.tx, reservoirId);
+  if (reservoir.state === 'online') {
+    throw new DomainError('rule.refused', `${reservoir.code} is online. Put another online, or mark it spent first.`);
+  }
+  const levelBeforeL = input.levelBeforeL ?? reservoir.levelL;
+  assertFits(reservoir, levelBeforeL, 'levelBeforeL');
+  const event = addEvent(write, reservoir, {
+    ...{ kind: 'cleaned', at: actTime(write, input.at), note: input.note, levelBeforeL, levelL: 0, alkalinityMeqL: 0 },
+  });
+  return { reservoir: showReservoir(write.tx, reservoirId, write.now), event };
+}
+
+/** The farm's own reading of fresh limewater: the one that is given, which is kept, or the one that was kept. */
+function freshReading(write: Write, given: number | undefined): number {
+  const { freshMsCm } = limewaterHabits(farmOf(write.tx));
+  if (given !== undefined && given !== freshMsCm) changeLimewaterHabits(write, { freshMsCm: given });
+  const fresh = given ?? freshMsCm;
+  if (fresh !== null) return fresh;
+  const message = 'Enter your own reading of fresh saturated limewater: strength is told from the ratio of the two.';
+  throw new DomainError('input.invalid', message, { fields: [{ path: 'freshMsCm', message }] });
+}
+
+/** Whether enough vinegar is in what stands in it to spoil the reading. */
+function holdsVinegar(write: Write, reservoirId: string): boolean {
+  return vinegarMlPerL(recentEvents(write.tx, reservoirId, write.now)) > VINEGAR_THAT_SPOILS;
 }

@@ -23,21 +23,38 @@ export interface SupplyUse {
  */
 export function useSupply(write: Write, use: SupplyUse): number {
   if (use.quantity === 0) return 0;
-  const open = write.tx
-    .select()
-    .from(lots)
-    .where(and(eq(lots.itemId, use.itemId), gt(lots.remaining, 0)))
-    .orderBy(asc(lots.receivedOn), asc(lots.createdAt), asc(lots.id))
-    .all();
-  const onHand = open.reduce((sum, lot) => sum + lot.remaining, 0);
-  if (onHand < use.quantity) throw notEnough(write, use, onHand);
-
+  const open = openLots(write, use.itemId);
+  assertEnough(write, use, open);
   const { takes, costMicro } = fifo(
     open.map((lot) => ({ lotId: lot.id, quantity: lot.remaining, costMicro: lot.remainingMicro })),
     use.quantity,
   );
   for (const take of takes) takeFromLot(write, use, take);
   return costMicro;
+}
+
+/** @throws {DomainError} `supply.not_enough` when the lots hold less */
+export function assertOnHand(write: Write, use: Pick<SupplyUse, 'itemId' | 'quantity'>): void {
+  assertEnough(write, use, openLots(write, use.itemId));
+}
+
+function assertEnough(
+  write: Write,
+  use: Pick<SupplyUse, 'itemId' | 'quantity'>,
+  open: readonly { remaining: number }[],
+): void {
+  const onHand = open.reduce((sum, lot) => sum + lot.remaining, 0);
+  if (onHand < use.quantity) throw notEnough(write, use, onHand);
+}
+
+/** Lots that still hold something, in the order in which they are used up. */
+function openLots(write: Write, itemId: string) {
+  return write.tx
+    .select()
+    .from(lots)
+    .where(and(eq(lots.itemId, itemId), gt(lots.remaining, 0)))
+    .orderBy(asc(lots.receivedOn), asc(lots.createdAt), asc(lots.id))
+    .all();
 }
 
 function takeFromLot(write: Write, use: SupplyUse, take: LotTake): void {
@@ -67,7 +84,7 @@ function takeFromLot(write: Write, use: SupplyUse, take: LotTake): void {
     .run();
 }
 
-function notEnough(write: Write, use: SupplyUse, onHand: number): DomainError {
+function notEnough(write: Write, use: Pick<SupplyUse, 'itemId' | 'quantity'>, onHand: number): DomainError {
   const item = write.tx.select().from(items).where(eq(items.id, use.itemId)).get();
   const name = item?.name ?? 'this item';
   const unit = item?.unit ?? '';

@@ -1,8 +1,18 @@
 import { blendStrength } from './limewater.ts';
 
+/**
+ * What can happen to a reservoir: mixed (refill), level read, put online, taken off for another (offline), topped up with
+ * plain water, strength checked, sludge taken out, marked spent, emptied and cleaned.
+ */
+export const RESERVOIR_EVENT_KINDS = [
+  ...(['refill', 'level', 'online', 'offline', 'topped_up'] as const),
+  ...(['strength', 'sludge_removed', 'spent', 'cleaned'] as const),
+] as const;
+export type ReservoirEventKind = (typeof RESERVOIR_EVENT_KINDS)[number];
+
 /** What an event left behind in a reservoir. Instants are epoch ms. */
 export interface ReservoirStep {
-  kind: 'refill' | 'level' | 'online' | 'offline';
+  kind: ReservoirEventKind;
   at: number;
   levelL: number;
   alkalinityMeqL: number;
@@ -35,17 +45,35 @@ export function standingAfter(
   volumeL: number,
   before: ReservoirStanding = EMPTY,
 ): ReservoirStanding {
-  let standing: ReservoirStanding = { ...before };
-  for (const step of steps) {
-    const { levelL, alkalinityMeqL } = step;
-    standing = { ...standing, levelL, alkalinityMeqL };
-    if (step.kind === 'refill') standing = { ...standing, state: 'settling', readyAt: step.at + SETTLING_MS };
-    if (step.kind === 'online') standing = { ...standing, state: 'online', readyAt: null };
-    if (step.kind === 'offline') {
-      standing = { ...standing, state: levelL < SPENT_BELOW * volumeL ? 'spent' : 'standby', readyAt: null };
-    }
+  return steps.reduce<ReservoirStanding>(
+    (standing, step) => ({
+      ...standing,
+      ...{ levelL: step.levelL, alkalinityMeqL: step.alkalinityMeqL },
+      ...stateAfter(step, volumeL),
+    }),
+    { ...before },
+  );
+}
+
+/** The state that an event brings; a level, a top-up, a strength check or less sludge leaves it as it is. */
+function stateAfter(
+  { kind, at, levelL }: ReservoirStep,
+  volumeL: number,
+): Partial<Pick<ReservoirStanding, 'state' | 'readyAt'>> {
+  switch (kind) {
+    case 'refill':
+      return { state: 'settling', readyAt: at + SETTLING_MS };
+    case 'online':
+      return { state: 'online', readyAt: null };
+    case 'offline':
+      return { state: levelL < SPENT_BELOW * volumeL ? 'spent' : 'standby', readyAt: null };
+    case 'spent':
+      return { state: 'spent', readyAt: null };
+    case 'cleaned':
+      return { state: 'standby', readyAt: null };
+    default:
+      return {};
   }
-  return standing;
 }
 
 /** The state as people see it: what has settled stands by. */
@@ -58,7 +86,7 @@ export function stateAt(
 }
 
 /**
- * Strength after new water joined what was left.
+ * Strength after new water joined what was left. Plain water has a strength of zero, so it only dilutes.
  *
  * @param before what stood in the reservoir
  * @param added the new mix
@@ -73,16 +101,21 @@ export function strengthAfterRefill(
   ]);
 }
 
+/** Events after which a reservoir feeds nothing until it is put online again. */
+const ENDS_FEEDING: ReadonlySet<ReservoirEventKind> = new Set(['offline', 'refill', 'spent', 'cleaned']);
+
 /**
  * Times during which a reservoir fed its system; the last one may still be open.
  */
-export function onlineSpans(steps: readonly ReservoirStep[]): { from: number; to: number | null }[] {
+export function onlineSpans(
+  steps: readonly Pick<ReservoirStep, 'kind' | 'at'>[],
+): { from: number; to: number | null }[] {
   const spans: { from: number; to: number | null }[] = [];
   for (const { kind, at } of steps) {
     const open = spans.at(-1);
     const isOpen = open?.to === null;
     if (kind === 'online' && !isOpen) spans.push({ from: at, to: null });
-    if ((kind === 'offline' || kind === 'refill') && open && isOpen) open.to = at;
+    if (ENDS_FEEDING.has(kind) && open && isOpen) open.to = at;
   }
   return spans;
 }

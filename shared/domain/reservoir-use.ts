@@ -1,9 +1,12 @@
 import { MS_PER_DAY } from './days.ts';
 
-/** A dated fact about a reservoir. Instants are epoch ms; litres are what stood in it. */
+/**
+ * A dated fact about a reservoir: a look at its level, or a change other than by use (a mix, plain water added, sludge
+ * taken out, a strength found). Instants are epoch ms; litres are what stood in it.
+ */
 export type ReservoirEvent =
   | { kind: 'level'; at: number; litres: number }
-  | { kind: 'refill'; at: number; litresBefore: number; litresAfter: number; alkalinityMeqL: number };
+  | { kind: 'change'; at: number; litresBefore: number; litresAfter: number; alkalinityMeqL: number };
 
 /** Limewater that left the reservoir between two looks at its level. */
 export interface UseInterval {
@@ -14,7 +17,7 @@ export interface UseInterval {
   alkalinityMeq: number;
 }
 
-/** A level that stood higher than before although no refill was logged: a missing refill or a wrong reading. */
+/** A level that stood higher than before although no change was logged: a missing mix or a wrong reading. */
 export interface UnexplainedRise {
   at: number;
   litres: number;
@@ -37,7 +40,7 @@ export interface SupplyInterval {
 }
 
 /**
- * What was used from a reservoir, from its level readings and refills in any order. A level that fell between two points
+ * What was used from a reservoir, from its level readings and changes in any order. A level that fell between two points
  * was used evenly between them at the strength that stood in it then.
  *
  * @param startAlkalinityMeqL strength before the first refill; 0 where nothing is known, so nothing is made up
@@ -46,7 +49,7 @@ export function reservoirUse(events: readonly ReservoirEvent[], startAlkalinityM
   const use: ReservoirUse = { intervals: [], rises: [], level: null, alkalinityMeqL: startAlkalinityMeqL };
   for (const event of [...events].sort((a, b) => a.at - b.at)) {
     notice(use, event.at, event.kind === 'level' ? event.litres : event.litresBefore);
-    if (event.kind === 'refill') {
+    if (event.kind === 'change') {
       use.level = { at: event.at, litres: event.litresAfter };
       use.alkalinityMeqL = event.alkalinityMeqL;
     }

@@ -1,10 +1,13 @@
 import type { LogReadings } from '../../shared/contracts/readings.ts';
-import type { CreateReservoir, RefillReservoir } from '../../shared/contracts/reservoirs.ts';
+import type { RefillReservoir } from '../../shared/contracts/reservoir-acts.ts';
+import type { CreateReservoir } from '../../shared/contracts/reservoir-set-up.ts';
 import type { CreateSystem } from '../../shared/contracts/systems.ts';
 import type { ParameterCode } from '../../shared/domain/units.ts';
 import { logReadings } from '../../server/services/reading-service.ts';
 import { refillReservoir } from '../../server/services/refill-service.ts';
-import { changeOver, createReservoir, logLevel } from '../../server/services/reservoir-service.ts';
+import { changeOver } from '../../server/services/reservoir-changeover.ts';
+import { logLevel } from '../../server/services/reservoir-service.ts';
+import { createReservoir } from '../../server/services/reservoir-set-up.ts';
 import { createSystem, createTank } from '../../server/services/system-service.ts';
 import type { TestFarm } from './start-farm.ts';
 

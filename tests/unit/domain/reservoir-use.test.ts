@@ -16,7 +16,7 @@ import {
 const day = (count: number) => count * MS_PER_DAY;
 const level = (at: number, litres: number): ReservoirEvent => ({ kind: 'level', at: day(at), litres });
 const refill = (at: number, litresBefore: number, litresAfter: number, alkalinityMeqL = 40): ReservoirEvent => ({
-  ...{ kind: 'refill', at: day(at), litresBefore, litresAfter, alkalinityMeqL },
+  ...{ kind: 'change', at: day(at), litresBefore, litresAfter, alkalinityMeqL },
 });
 
 describe('what a reservoir gave', () => {
@@ -66,7 +66,7 @@ describe('what a reservoir gave', () => {
     const anEvent = fc.oneof(
       fc.record({ kind: fc.constant('level' as const), litres: fc.integer({ min: 0, max: 100 }) }),
       fc.record({
-        kind: fc.constant('refill' as const),
+        kind: fc.constant('change' as const),
         litresBefore: fc.integer({ min: 0, max: 40 }),
         litresAfter: fc.integer({ min: 40, max: 100 }),
         alkalinityMeqL: fc.integer({ min: 10, max: 45 }),
@@ -78,7 +78,7 @@ describe('what a reservoir gave', () => {
         const { intervals, rises, level: last } = reservoirUse(events);
         const [first] = events;
         const start = first?.kind === 'level' ? first.litres : (first?.litresBefore ?? 0);
-        const filled = events.reduce((sum, e) => sum + (e.kind === 'refill' ? e.litresAfter - e.litresBefore : 0), 0);
+        const filled = events.reduce((sum, e) => sum + (e.kind === 'change' ? e.litresAfter - e.litresBefore : 0), 0);
         const used = intervals.reduce((sum, { litres }) => sum + litres, 0);
         const risen = rises.reduce((sum, { litres }) => sum + litres, 0);
         expect(start + filled - used + risen).toBe(last?.litres);
