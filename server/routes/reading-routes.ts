@@ -4,17 +4,14 @@ import { UNITS } from '../../shared/domain/units.ts';
 import type { Api } from '../http/api.ts';
 import { type CsvColumns, csvFile } from '../http/csv-file.ts';
 import { logSheet, readingPeople } from '../queries/log-sheet.ts';
-import { readingSeries } from '../queries/reading-series.ts';
 import { allReadings, listReadings } from '../queries/readings.ts';
 import { editReading, logReadings, removeReading } from '../services/reading-service.ts';
 
 export function readingRoutes(api: Api): void {
-  const { clock } = api.deps;
   api.read(readingEndpoints.list, (db, { query }) => listReadings(db, query));
   api.read(readingEndpoints.export, (db, { query }) => csvFile('readings.csv', COLUMNS, allReadings(db, query)));
   api.read(readingEndpoints.logSheet, (db, { params, caller }) => logSheet(db, params.id, caller.name));
   api.read(readingEndpoints.people, (db) => ({ items: readingPeople(db) }));
-  api.read(readingEndpoints.series, (db, { params, query }) => readingSeries(db, params.id, query, clock.now()));
   api.write(readingEndpoints.log, (write, { body }) => ({ items: logReadings(write, body) }));
   api.write(readingEndpoints.edit, (write, { params, body, ifMatch }) => editReading(write, params.id, ifMatch, body));
   api.write(readingEndpoints.remove, (write, { params }) => {

@@ -128,21 +128,6 @@ export const LogSheet = z.object({
 });
 export type LogSheet = z.infer<typeof LogSheet>;
 
-export const SERIES_DAYS = [7, 30, 90, 365] as const;
-export type SeriesDays = (typeof SERIES_DAYS)[number];
-
-export const ReadingSeries = z.object({
-  parameter: parameterCode,
-  from: instant,
-  to: instant,
-  /** Each with half of the 95 % interval of its test. */
-  points: z.array(z.object({ at: instant, value: z.number(), error: z.number() })),
-  /** Readings in the period; more than points where the server left some out. */
-  total: z.int(),
-  band: TargetBand.nullable(),
-});
-export type ReadingSeries = z.infer<typeof ReadingSeries>;
-
 export const readingEndpoints = {
   list: {
     method: 'get',
@@ -202,20 +187,5 @@ export const readingEndpoints = {
     summary: 'Names that readings were logged under',
     query: nothing,
     response: z.object({ items: z.array(z.string()) }),
-  },
-  series: {
-    method: 'get',
-    path: '/api/systems/:id/series',
-    access: 'water.read',
-    summary: 'Readings of one parameter for a chart',
-    params: idParams,
-    query: z.strictObject({
-      parameter: parameterCode,
-      days: z.coerce
-        .number()
-        .pipe(z.union(SERIES_DAYS.map((days) => z.literal(days))))
-        .default(90),
-    }),
-    response: ReadingSeries,
   },
 } as const satisfies Record<string, Endpoint>;

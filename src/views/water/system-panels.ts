@@ -1,25 +1,28 @@
-import type { ReadingSeries } from '@shared/contracts/readings.ts';
+import type { Timeline, TimelineSeries } from '@shared/contracts/timeline.ts';
 import type { SystemDemand } from '@shared/contracts/water.ts';
-import { unitOf } from '@shared/domain/units.ts';
-import type { Mark, Panel } from '@/components/charts/series.ts';
+import { MS_PER_DAY } from '@shared/domain/days.ts';
+import { type ParameterCode, unitOf } from '@shared/domain/units.ts';
+import type { Bar, Lane, LinePoint, Panel, SeriesPoint } from '@/components/charts/series.ts';
 import type { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 import { parameterOf } from '@/views/water/water-labels.ts';
 
 type Units = ReturnType<typeof useUnitChoicesStore>;
 
+/** Litres a day are told over half a day at least: two looks within minutes tell nothing. */
+const SHORTEST_USE_DAYS = 0.25;
+
 /** Readings with the 95 % error of their test, over the target band. */
-export function readingPanel({ parameter, points, band }: ReadingSeries, units: Units): Panel {
+export function readingPanel({ parameter, points, band }: TimelineSeries, units: Units): Panel {
   const shown = (value: number) => units.toShown(parameter, value);
   return {
     key: parameter,
     series: [
       {
         ...{ key: parameter, label: parameterOf(parameter).label.toLowerCase(), unit: units.labelFor(parameter) },
-        ...{ tone: 'plum', decimals: unitOf(parameter, units.unitFor(parameter)).decimals },
-        points: points.map(({ at, value, error }) => ({
-          at,
-          value: shown(value),
-          error: Math.abs(shown(value + error) - shown(value)),
+        ...{ tone: 'plum', decimals: decimalsOf(parameter, units) },
+        points: points.map(({ at, value, error, method }): SeriesPoint => ({
+          ...{ at, value: shown(value), error: Math.abs(shown(value + error) - shown(value)) },
+          ...(method === '' ? {} : { note: method }),
         })),
       },
     ],
@@ -27,33 +30,74 @@ export function readingPanel({ parameter, points, band }: ReadingSeries, units: 
   };
 }
 
-/** Demand week by week with its 95 % band. */
-export function demandPanel(history: SystemDemand['history'], units: Units): Panel {
+/** Demand with its 95 % band. */
+export function demandPanel({ history }: SystemDemand, units: Units): Panel {
   const shown = (rate: number) => units.toShown('alkalinity', rate);
+  const line = history.map(({ at, demand, low, high }): LinePoint => ({
+    at,
+    value: shown(demand),
+    low: shown(low),
+    high: shown(high),
+  }));
   return {
     key: 'demand',
     fromZero: true,
     series: [
       {
         ...{ key: 'demand', label: 'demand, with 95 % band', unit: `${units.labelFor('alkalinity')} a day` },
-        ...{ tone: 'slate', decimals: 2 },
-        line: history.map(({ at, demand, low, high }) => ({
-          ...{ at, value: shown(demand), low: shown(low), high: shown(high) },
-        })),
+        ...{ tone: 'slate', decimals: decimalsOf('alkalinity', units) + 1, line },
       },
     ],
   };
 }
 
-/** Water changes inside the period that is shown. */
-export function chartMarks(demand: SystemDemand | undefined, series: ReadingSeries | undefined, units: Units): Mark[] {
-  if (!demand || !series) return [];
-  return demand.waterChanges
-    .filter(({ at }) => at >= series.from)
-    .map(({ at, litres }) => ({
-      at,
-      label: 'water change',
-      note: units.say('volume', litres, { decimals: 0 }),
-      tone: 'slate',
-    }));
+/** Limewater that was drawn between the looks at its level. */
+export function limewaterPanel(limewater: Timeline['limewater'], units: Units): Panel {
+  const bars = limewater.flatMap(({ from, to, litres }): Bar[] => {
+    const days = (to - from) / MS_PER_DAY;
+    return days < SHORTEST_USE_DAYS ? [] : [{ from, to, value: units.toShown('volume', litres / days) }];
+  });
+  return {
+    key: 'limewater',
+    fromZero: true,
+    height: 72,
+    series: [
+      {
+        ...{ key: 'limewater', label: 'limewater used', unit: `${units.labelFor('volume')} a day` },
+        ...{ tone: 'plum', decimals: 0, bars },
+      },
+    ],
+  };
+}
+
+/** What was done to the water, a lane for each kind that was. */
+export function actLanes({ waterChanges, doses, changeOvers }: Timeline, units: Units): Lane[] {
+  const level = (meqL: number, difference: boolean) =>
+    units.say('alkalinity', meqL, { difference, signed: difference });
+  const lanes: Lane[] = [
+    {
+      ...{ key: 'changes', label: 'water change', tone: 'slate', shape: 'triangle' },
+      marks: waterChanges.map(({ at, litres, alkalinityMeqL }) => ({
+        ...{ at, note: `${units.say('volume', litres, { decimals: 0 })} at ${level(alkalinityMeqL, false)}` },
+      })),
+    },
+    {
+      ...{ key: 'doses', label: 'other dose', tone: 'ochre', shape: 'diamond' },
+      marks: doses.map(({ at, name, amount, unit, meqL }) => ({
+        at,
+        note: `${name}, ${amount} ${unit}${meqL > 0 ? `, ${level(meqL, true)}` : ''}`,
+      })),
+    },
+    {
+      ...{ key: 'online', label: 'reservoir put online', tone: 'plum', shape: 'post' },
+      marks: changeOvers.map(({ at, code, alkalinityMeqL }) => ({
+        ...{ at, note: `${code} of ${alkalinityMeqL.toFixed(1)} meq/L` },
+      })),
+    },
+  ];
+  return lanes.filter(({ marks }) => marks.length > 0);
+}
+
+function decimalsOf(parameter: ParameterCode, units: Units): number {
+  return unitOf(parameter, units.unitFor(parameter)).decimals;
 }

@@ -1,0 +1,102 @@
+import { area, curveMonotoneX, line } from 'd3-shape';
+import { type Bar, type LinePoint, type Series, type SeriesPoint, visible } from '@/components/charts/series.ts';
+import type { Span } from '@/components/charts/zoom.ts';
+
+type Scale = (value: number) => number;
+
+export interface Plot {
+  x: Scale;
+  y: Scale;
+  span: Span;
+  /** Where the drawing starts and ends across, and its height, px. */
+  left: number;
+  right: number;
+  height: number;
+}
+
+/** A reading that stands apart, with its word. */
+export interface FlagMark {
+  at: number;
+  cx: number;
+  cy: number;
+  word: string;
+}
+
+export interface DrawnSeries {
+  line: string;
+  band: string;
+  ahead: string;
+  aheadBand: string;
+  /** The areas under the bars, and their upper edges. */
+  bars: string;
+  barTops: string;
+  dots: string;
+  errors: string;
+  flags: FlagMark[];
+}
+
+const RADIUS = 2.6;
+const DENSE_RADIUS = 1.5;
+/** Error bars that stand closer than this, px, would only make a grey cloud. */
+const LEAST_BAR_GAP = 5;
+
+/** Everything of a series as a few paths: a thousand dots cost one element. */
+export function drawSeries(series: Series, plot: Plot): DrawnSeries {
+  const seen = visible(series.points ?? [], plot.span);
+  const plain = seen.filter(({ flag }) => flag === undefined);
+  const dense = plain.length > (plot.right - plot.left) / LEAST_BAR_GAP;
+  const known = visible(series.line ?? [], plot.span);
+  const ahead = visible(series.ahead ?? [], plot.span);
+  const bars = (series.bars ?? []).filter(({ from, to }) => to >= plot.span[0] && from <= plot.span[1]);
+  return {
+    ...{ line: linePath(known, plot), band: bandPath(known, plot) },
+    ...{ ahead: linePath(ahead, plot), aheadBand: bandPath(ahead, plot) },
+    bars: bars.map((bar) => barPath(bar, plot)).join(''),
+    barTops: bars.map((bar) => barTop(bar, plot)).join(''),
+    dots: plain.map((point) => dotPath(point, dense ? DENSE_RADIUS : RADIUS, plot)).join(''),
+    errors: dense ? '' : plain.map((point) => errorPath(point, plot)).join(''),
+    flags: seen.flatMap((point) => (point.flag === undefined ? [] : [flagMark(point, point.flag, plot)])),
+  };
+}
+
+function linePath(points: readonly LinePoint[], { x, y }: Plot): string {
+  const draw = line<LinePoint>(
+    (each) => x(each.at),
+    (each) => y(each.value),
+  ).curve(curveMonotoneX);
+  return draw([...points]) ?? '';
+}
+
+function bandPath(points: readonly LinePoint[], { x, y }: Plot): string {
+  const draw = area<LinePoint>(
+    (each) => x(each.at),
+    (each) => y(each.low ?? each.value),
+    (each) => y(each.high ?? each.value),
+  ).curve(curveMonotoneX);
+  return draw(points.filter(({ low, high }) => low !== undefined && high !== undefined)) ?? '';
+}
+
+function barPath(bar: Bar, plot: Plot): string {
+  return `${barTop(bar, plot)}V${round(plot.y(0))}H${round(plot.x(bar.from))}Z`;
+}
+
+function barTop({ from, to, value }: Bar, { x, y }: Plot): string {
+  return `M${round(x(from))} ${round(y(value))}H${round(x(to))}`;
+}
+
+function dotPath({ at, value }: SeriesPoint, radius: number, { x, y }: Plot): string {
+  return `M${round(x(at) - radius)} ${round(y(value))}a${radius} ${radius} 0 1 0 ${2 * radius} 0a${radius} ${radius} 0 1 0 ${-2 * radius} 0`;
+}
+
+function errorPath({ at, value, error }: SeriesPoint, { x, y }: Plot): string {
+  return error === undefined ? '' : `M${round(x(at))} ${round(y(value + error))}V${round(y(value - error))}`;
+}
+
+/** A reading far off the scale stands at its edge. */
+function flagMark({ at, value }: SeriesPoint, word: string, { x, y, height }: Plot): FlagMark {
+  return { at, word, cx: x(at), cy: Math.min(Math.max(y(value), 5), height - 5) };
+}
+
+function round(px: number): number {
+  return Math.round(px * 10) / 10;
+}
