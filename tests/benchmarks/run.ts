@@ -3,6 +3,7 @@ import path from 'node:path';
 import { ensureBuilt, root } from '../../server/tasks/prepare.mjs';
 import { copyOf, DATABASE, makeTemplate, removeFolder } from '../browser/support/template.ts';
 import { startServer, type RunningServer } from '../browser/support/server.ts';
+import { carbonateRates } from './chemistry.ts';
 import { firstLoad } from './first-load.ts';
 import { medianOf } from './measure.ts';
 import { openBenchFarm, type BenchFarm } from './farm.ts';
@@ -23,7 +24,12 @@ async function main(): Promise<void> {
   const folder = copyOf(template);
   const farm = openBenchFarm(path.join(folder, DATABASE));
   try {
-    const rows = [...(await startUp(template)), ...weights(), ...(await lookUpAndOrder(template, farm))];
+    const rows = [
+      ...(await startUp(template)),
+      ...weights(),
+      ...carbonateRates(),
+      ...(await lookUpAndOrder(template, farm)),
+    ];
     for (const [what, value] of rows) console.log(`${what.padEnd(46)} ${value.padStart(12)}`);
   } finally {
     farm.sqlite.close();

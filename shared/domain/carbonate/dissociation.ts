@@ -10,7 +10,7 @@ export function carbonicAcid(salinity: number, kelvin: number): { k1: number; k2
   const lnT = Math.log(kelvin);
   const pK1 = 3633.86 / kelvin - 61.2172 + 9.6777 * lnT - 0.011555 * s + 0.0001152 * s * s;
   const pK2 = 471.78 / kelvin + 25.929 - 3.16967 * lnT - 0.01781 * s + 0.0001122 * s * s;
-  return { k1: 10 ** -pK1, k2: 10 ** -pK2 };
+  return { k1: Math.exp(-pK1 * Math.LN10), k2: Math.exp(-pK2 * Math.LN10) };
 }
 
 /** Boric acid, total scale. @see Dickson 1990, Deep-Sea Res. 37:755 */

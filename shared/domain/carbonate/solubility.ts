@@ -35,7 +35,7 @@ export function carbonateMinerals(salinity: number, kelvin: number): { aragonite
     (-0.77712 + 0.0028426 * kelvin + 178.34 / kelvin) * root -
     0.07711 * s +
     0.0041249 * s * root;
-  return { aragonite: 10 ** aragonite, calcite: 10 ** calcite };
+  return { aragonite: Math.exp(aragonite * Math.LN10), calcite: Math.exp(calcite * Math.LN10) };
 }
 
 /**

@@ -71,7 +71,7 @@ function phOfAlkalinity(
   carbon: (h: number) => Sloped,
 ): number {
   const excess = (ph: number) => {
-    const h = 10 ** -ph;
+    const h = Math.exp(-Math.LN10 * ph);
     const fromCarbon = carbon(h);
     const rest = restOfAlkalinity(constants, phosphate, h);
     return { value: fromCarbon.value + rest.value - alkalinity, slope: fromCarbon.perPh + rest.perPh };
