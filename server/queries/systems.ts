@@ -36,8 +36,8 @@ export function toSystem(db: Db, row: SystemRow): System {
 }
 
 /** What a system is, without what belongs to it. */
-export function systemFacts({ id, code, name, kind, netVolumeL, note, createdAt, version }: SystemRow) {
-  return { id, code, name, kind, netVolumeL, note, createdAt, version };
+export function systemFacts({ id, code, name, kind, netVolumeL, surfaceM2, note, createdAt, version }: SystemRow) {
+  return { id, code, name, kind, netVolumeL, surfaceM2, note, createdAt, version };
 }
 
 export function toTank({ id, systemId, code, name }: typeof tanks.$inferSelect): Tank {

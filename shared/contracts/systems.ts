@@ -29,6 +29,8 @@ export const System = z.object({
   name: z.string(),
   kind: z.enum(SYSTEM_KINDS),
   netVolumeL: z.number(),
+  /** Open water of all tanks and sumps; null where nobody measured it. */
+  surfaceM2: z.number().nullable(),
   note: z.string(),
   bands: z.array(TargetBand),
   tanks: z.array(Tank),
@@ -36,6 +38,8 @@ export const System = z.object({
   version,
 });
 export type System = z.infer<typeof System>;
+
+const surfaceM2 = z.number().min(0.01, 'At least 0.01 m².').max(1_000_000, 'At most 1,000,000 m².').nullable().optional();
 
 const bands = z
   .array(TargetBand)
@@ -56,6 +60,7 @@ export const CreateSystem = z.strictObject({
   name: shortText,
   kind: z.enum(SYSTEM_KINDS, 'Choose what the system is for.'),
   netVolumeL: litres,
+  surfaceM2,
   note: noteText.default(''),
   bands: bands.default([]),
 });
@@ -65,6 +70,7 @@ export const EditSystem = z.strictObject({
   name: shortText.optional(),
   kind: z.enum(SYSTEM_KINDS).optional(),
   netVolumeL: litres.optional(),
+  surfaceM2,
   note: noteText.optional(),
   bands: bands.optional(),
 });

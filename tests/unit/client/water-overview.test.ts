@@ -21,6 +21,7 @@ function glance(code: string, level: number, { takes = 1, gets = 1 as number | n
       name: `Bay ${code}`,
       kind: 'growout',
       netVolumeL: 1000,
+      surfaceM2: null,
       note: '',
       createdAt: 0,
       version: 1,
