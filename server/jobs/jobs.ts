@@ -8,6 +8,7 @@ import { forgetOldTries } from '../services/sign-in-slowdown.ts';
 import { bookDosingDays } from './book-dosing.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
+import { raiseAlerts } from './raise-alerts.ts';
 import { sendDueMails } from './send-due-mails.ts';
 import { sendRefunds } from './send-refunds.ts';
 import { shareCosts } from './share-costs.ts';
@@ -31,6 +32,7 @@ const JOBS: readonly Job[] = [
   { name: 'forget old sign-in tries', everyMs: 3600 * SECOND, run: (deps) => inWrite(deps, SYSTEM, forgetOldTries) },
   { name: 'forget loose photos', everyMs: 3600 * SECOND, run: forgetLoosePhotos },
   { name: 'book steady dosing', everyMs: 600 * SECOND, run: bookDosingDays },
+  { name: 'raise alerts', everyMs: 60 * SECOND, run: raiseAlerts },
   { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },
 ];
 

@@ -4,6 +4,7 @@ import { readingPhotoRoutes } from './reading-photo-routes.ts';
 import { readingRoutes } from './reading-routes.ts';
 import { reservoirRoutes } from './reservoir-routes.ts';
 import { systemRoutes } from './system-routes.ts';
+import { alertRoutes } from './alert-routes.ts';
 import { taskRoutes } from './task-routes.ts';
 import { testMethodRoutes } from './test-method-routes.ts';
 import { timelineRoutes } from './timeline-routes.ts';
@@ -48,6 +49,7 @@ export function registerRoutes(api: Api): void {
   auditRoutes(api);
   todayRoutes(api);
   taskRoutes(api);
+  alertRoutes(api);
   waterRoutes(api);
   additionRoutes(api);
   saltBatchRoutes(api);

@@ -1,7 +1,7 @@
 import { eq, sql } from 'drizzle-orm';
 import type { CountItem, Receive } from '../../shared/contracts/supplies.ts';
 import { dayOf, type Day } from '../../shared/domain/days.ts';
-import { microFromMinor } from '../../shared/domain/money.ts';
+import { microFromMinor, minorFromMicro } from '../../shared/domain/money.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { lots, supplyCounts } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
@@ -95,6 +95,17 @@ function onHand(write: Write, itemId: string): number {
     .where(eq(lots.itemId, itemId))
     .get();
   return row?.amount ?? 0;
+}
+
+/** A lot that the farm made itself, at what went into it; its price in minor units is that, rounded. */
+export function addMadeLot(
+  write: Write,
+  lot: Pick<NewLot, 'itemId' | 'code' | 'receivedOn' | 'quantity' | 'costMicro'>,
+): typeof lots.$inferSelect {
+  const { currency } = farmOf(write.tx);
+  const row = addLot(write, { ...lot, expiresOn: null, costMinor: minorFromMicro(lot.costMicro, currency) });
+  write.audit({ action: 'lot.made', entity: 'lot', entityId: row.id, after: row });
+  return row;
 }
 
 interface NewLot {
