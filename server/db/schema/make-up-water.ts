@@ -1,5 +1,5 @@
 import { sql } from 'drizzle-orm';
-import { check, index, integer, real, sqliteTable, text } from 'drizzle-orm/sqlite-core';
+import { type AnySQLiteColumn, check, index, integer, real, sqliteTable, text } from 'drizzle-orm/sqlite-core';
 import { CARTRIDGE_STAGES } from '../../../shared/domain/cartridges.ts';
 import { day, id, instant, version } from './columns.ts';
 import { items } from './supplies.ts';
@@ -35,6 +35,8 @@ export const cartridges = sqliteTable(
     lifeL: real('life_l'),
     limit: real('limit_value'),
     removedOn: day('removed_on'),
+    /** The one that it took the place of. */
+    replacesId: text('replaces_id').references((): AnySQLiteColumn => cartridges.id),
     by: text('by').notNull(),
     note: text('note').notNull().default(''),
     version: version(),

@@ -1,0 +1,1 @@
+ALTER TABLE `cartridge` ADD `replaces_id` text REFERENCES cartridge(id);
