@@ -12,6 +12,8 @@ import { waterRoutes } from './water-routes.ts';
 import { additionRoutes } from './addition-routes.ts';
 import { dosingRoutes } from './dosing-routes.ts';
 import { stockSolutionRoutes } from './stock-solution-routes.ts';
+import { makeUpRoutes } from './make-up-routes.ts';
+import { waterChangePlanRoutes } from './water-change-plan-routes.ts';
 import { saltBatchRoutes } from './salt-batch-routes.ts';
 import { listingRoutes } from './listing-routes.ts';
 import { orderRoutes } from './order-routes.ts';
@@ -55,6 +57,8 @@ export function registerRoutes(api: Api): void {
   saltBatchRoutes(api);
   stockSolutionRoutes(api);
   dosingRoutes(api);
+  makeUpRoutes(api);
+  waterChangePlanRoutes(api);
   timelineRoutes(api);
   systemRoutes(api);
   reservoirRoutes(api);

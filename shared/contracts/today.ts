@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { UNITS, type Quantity } from '../domain/units.ts';
-import { calendarDay, instant, nothing } from './common.ts';
+import { calendarDay, id, instant, nothing } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 
 const quantities = Object.keys(UNITS) as [Quantity, ...Quantity[]]; // the table has at least one quantity
@@ -30,6 +30,10 @@ export const TodayEntry = z.object({
   title: TodayText,
   detail: TodayText,
   act: z.object({ label: z.string(), to: z.string() }),
+  /** The alert behind it, for who may say that they know. */
+  alertId: id.optional(),
+  /** The task behind it, for who may say that it is done; not a test, which is done with its reading. */
+  task: z.object({ id, dueOn: calendarDay }).optional(),
 });
 export type TodayEntry = z.infer<typeof TodayEntry>;
 
@@ -39,6 +43,8 @@ export const Today = z.object({
   frags: z.object({ saleable: z.int(), held: z.int() }),
   /** Packed orders that wait for their carrier; null for who may not see orders. */
   boxesToShip: z.int().nullable(),
+  /** Alerts that somebody knows of: they wait on their own page. */
+  quietAlerts: z.int(),
 });
 export type Today = z.infer<typeof Today>;
 

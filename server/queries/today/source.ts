@@ -3,10 +3,13 @@ import type { Day } from '../../../shared/domain/days.ts';
 import type { Access } from '../../../shared/permissions.ts';
 import type { Db } from '../../db/client.ts';
 import type { BatchStock } from '../batch-stock.ts';
+import type { TaskReader } from '../tasks.ts';
 
 export interface TodayContext {
   now: number;
   today: Day;
+  /** Whose tasks are shown. */
+  reader: TaskReader;
   /** Stock of every batch with living pieces. */
   stock: readonly BatchStock[];
   /** Whether the reader may do something; who may not is shown it, but not asked to do it. */

@@ -123,9 +123,13 @@ describe('tasks', () => {
   it('when one is skipped, the reason is kept and it can be taken back until more is said', async () => {
     const farm = await startFarm();
     const task = givenTask(farm);
-    const grower = await farm.as('grower');
-    const skip = await grower.post(`/api/tasks/${task.id}/skips`).send({ dueOn: task.dueOn, reason: 'No socks left' });
+    const skip = await (
+      await farm.as('grower')
+    )
+      .post(`/api/tasks/${task.id}/skips`)
+      .send({ dueOn: task.dueOn, reason: 'No socks left' });
     farm.wait(DAY);
+    const grower = await farm.as('grower');
     const done = await grower.post(`/api/tasks/${task.id}/completions`).send({ dueOn: skip.body.task.dueOn });
 
     const early = await grower.delete(`/api/task-outcomes/${skip.body.outcomeId}`);

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { raiseAlerts } from '../../../server/jobs/raise-alerts.ts';
 import type { TodayEntry } from '../../../shared/contracts/today.ts';
 import { MEQ_PER_DKH } from '../../../shared/domain/units.ts';
 import type { Role } from '../../../shared/permissions.ts';
@@ -21,6 +22,7 @@ const DAY = 24 * HOUR;
 const BAND = [{ parameter: 'alkalinity' as const, low: 7.5 * MEQ_PER_DKH, high: 9 * MEQ_PER_DKH }];
 
 async function todayFor(farm: TestFarm, role: Role = 'owner') {
+  raiseAlerts(farm.deps);
   const reply = await (await farm.as(role)).get('/api/today');
   expect(reply.status).toBe(200);
   return reply.body;
@@ -44,6 +46,7 @@ describe('what needs doing today', () => {
       entries: [],
       frags: { saleable: 0, held: 0 },
       boxesToShip: 0,
+      quietAlerts: 0,
     });
   });
 
