@@ -77,11 +77,17 @@ function bandPath(points: readonly LinePoint[], { x, y }: Plot): string {
 }
 
 function barPath(bar: Bar, plot: Plot): string {
-  return `${barTop(bar, plot)}V${round(plot.y(0))}H${round(plot.x(bar.from))}Z`;
+  return `${barTop(bar, plot)}V${round(plot.y(0))}H${sidesOf(bar, plot)[0]}Z`;
 }
 
-function barTop({ from, to, value }: Bar, { x, y }: Plot): string {
-  return `M${round(x(from))} ${round(y(value))}H${round(x(to))}`;
+function barTop(bar: Bar, plot: Plot): string {
+  const [start, end] = sidesOf(bar, plot);
+  return `M${start} ${round(plot.y(bar.value))}H${end}`;
+}
+
+/** Where a bar starts and ends across, as far as it is in sight. */
+function sidesOf({ from, to }: Bar, { x, span }: Plot): [number, number] {
+  return [round(x(Math.max(from, span[0]))), round(x(Math.min(to, span[1])))];
 }
 
 function dotPath({ at, value }: SeriesPoint, radius: number, { x, y }: Plot): string {
