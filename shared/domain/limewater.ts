@@ -137,8 +137,20 @@ export function limewaterCeiling(evaporationLPerDay: number, alkalinityMeqL: num
   return (evaporationLPerDay * alkalinityMeqL) / systemVolumeL;
 }
 
+/**
+ * What a millilitre of vinegar holds and lets dissolve.
+ *
+ * @param acidPercent acidity, % w/v, 0–100
+ * @returns acid, and calcium hydroxide beyond what the water alone dissolves, mol
+ */
+export function strengthOfVinegar(acidPercent: number): { acidMolPerMl: number; roomMolPerMl: number } {
+  assertWithin('Acidity (%)', acidPercent, 0, 100);
+  const acidMolPerMl = acidPercent / 100 / ACETIC_ACID_G_PER_MOL;
+  return { acidMolPerMl, roomMolPerMl: VINEGAR_YIELD * (acidMolPerMl / 2) };
+}
+
 function acidIn({ vinegarMl, acidPercent = USUAL_ACID_PERCENT }: { vinegarMl: number; acidPercent?: number }): number {
-  return (vinegarMl * acidPercent) / 100 / ACETIC_ACID_G_PER_MOL;
+  return vinegarMl * strengthOfVinegar(acidPercent).acidMolPerMl;
 }
 
 function roomFor(mix: Omit<LimewaterMix, 'limeG'>): { waterMol: number; totalMol: number } {
