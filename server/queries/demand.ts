@@ -1,55 +1,84 @@
-import type { Carried, Demand, LimeCeiling, SystemDemand } from '../../shared/contracts/water.ts';
+import type { Carried, Demand, DemandParameter, LimeCeiling, SystemDemand } from '../../shared/contracts/demand.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
-import { DEFAULT_WINDOW_DAYS, demandHistory, estimateDemand } from '../../shared/domain/demand.ts';
+import { toldBy } from '../../shared/domain/demand/told.ts';
+import { REACH_95, type DemandPoint, type Estimate } from '../../shared/domain/demand/track-demand.ts';
 import { groupBy } from '../../shared/domain/group-by.ts';
 import { limewaterCeiling } from '../../shared/domain/limewater.ts';
 import { saturatedStrength, USUAL_VINEGAR_ML_PER_L } from '../../shared/domain/limewater-ceiling.ts';
-import { supplyWithin } from '../../shared/domain/reservoir-use.ts';
+import { supplyWithin, type UseInterval } from '../../shared/domain/reservoir-use.ts';
 import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
 import { carriedNow, evaporationOf } from './carried.ts';
-import { type SystemSupply, systemSupply } from './demand-inputs.ts';
+import { perMeqOfLimewater, type SystemSupply } from './demand-inputs.ts';
+import { rangeOf, type SystemTrack, trackSystem } from './demand-track.ts';
 import { systemRow, type SystemRow } from './systems.ts';
 
+const USUAL_HISTORY_DAYS = 90;
+const FORECAST_DAYS = 28;
+
+export interface DemandQuestion {
+  historyDays?: number;
+  parameter?: DemandParameter;
+}
+
 /** Demand of a system now, with its history, its ceiling and how it was made. */
-export function systemDemand(db: Db, systemId: string, now: number, historyDays = 90): SystemDemand {
+export function systemDemand(
+  db: Db,
+  systemId: string,
+  now: number,
+  { historyDays = USUAL_HISTORY_DAYS, parameter = 'alkalinity' }: DemandQuestion = {},
+): SystemDemand {
   const system = systemRow(db, systemId);
-  const supply = systemSupply(db, system, now - (historyDays + DEFAULT_WINDOW_DAYS) * MS_PER_DAY, now);
-  const demand = demandNow(supply, now);
+  const past = Array.from({ length: historyDays }, (_, index) => now - (historyDays - index) * MS_PER_DAY);
+  const ahead = Array.from({ length: FORECAST_DAYS }, (_, index) => now + (index + 1) * MS_PER_DAY);
+  const found = trackSystem(db, system, { now, marks: [...past, ...ahead], solute: parameter });
+  const { supply, demand } = found;
   const from = now - historyDays * MS_PER_DAY;
+  const days = daysTold(found);
   return {
-    systemId,
-    netVolumeL: system.netVolumeL,
-    demand,
+    ...{ systemId, parameter, netVolumeL: system.netVolumeL, demand },
     carried: carriedNow(system, supply, now),
     ceiling: ceilingOf(system, supply, now),
-    history: demandHistory(supply.demandInputs, from, now).map((each) => ({
-      ...{ at: each.to, demand: each.demandMeqLPerDay, low: each.low, high: each.high },
-    })),
+    history: days.map(({ at, smoothedDemand }) => ({ at, ...rangeOf(smoothedDemand) })),
+    levels: days.map(({ at, smoothedLevel }) => ({ at, ...levelRange(smoothedLevel) })),
+    forecast: demand.enough
+      ? found.track.points.filter(({ at }) => at > now).map((point) => ({ at: point.at, ...rangeOf(point.demand) }))
+      : [],
+    flagged: flaggedSince(found, from),
+    checks: [],
     waterChanges: supply.waterChanges.filter(({ at }) => at >= from).map(({ at, litres }) => ({ at, litres })),
-    inputs: inputsOf(system, supply, demand),
+    inputs: inputsOf(found),
   };
 }
 
 /** What a system takes and is given now, alone: for lists. */
 export function currentDemand(db: Db, system: SystemRow, now: number): { demand: Demand; carried: Carried } {
-  const supply = systemSupply(db, system, now - 2 * DEFAULT_WINDOW_DAYS * MS_PER_DAY, now);
-  return { demand: demandNow(supply, now), carried: carriedNow(system, supply, now) };
+  const { supply, demand } = trackSystem(db, system, { now });
+  return { demand, carried: carriedNow(system, supply, now) };
 }
 
-function demandNow(supply: SystemSupply, now: number): Demand {
-  const estimate = estimateDemand(supply.demandInputs, now);
-  const { from, to, readings } = estimate;
-  const basis = { from, to, readings, windowDays: DEFAULT_WINDOW_DAYS };
-  if (!estimate.enough) return { enough: false, ...basis, reason: estimate.reason };
-  const { demandMeqLPerDay, low, high } = estimate;
-  return { enough: true, ...basis, demand: demandMeqLPerDay, low, high };
+/** The days up to now on which tests before or after them told something. */
+function daysTold({ track, trusted, now }: SystemTrack): DemandPoint[] {
+  const tellsAt = (at: number) => toldBy(trusted, at).lacks === null;
+  return track.points.filter(({ at, reading }) => !reading && at <= now && tellsAt(at));
+}
+
+function levelRange({ value, sd }: Estimate) {
+  return { level: value, low: value - REACH_95 * sd, high: value + REACH_95 * sd };
+}
+
+function flaggedSince({ track, supply }: SystemTrack, from: number): SystemDemand['flagged'] {
+  return track.points.flatMap(({ at, flagged, expected }) => {
+    const test = flagged && at >= from ? supply.tests.find((each) => each.at === at) : undefined;
+    return test && expected ? [{ readingId: test.id, at, value: test.value, expected: expected.value }] : [];
+  });
 }
 
 function ceilingOf({ netVolumeL }: SystemRow, supply: SystemSupply, now: number): LimeCeiling | null {
   const evaporationLPerDay = evaporationOf(supply, now);
   if (evaporationLPerDay === null) return null;
-  const at = (strength: number) => limewaterCeiling(evaporationLPerDay, strength, netVolumeL);
+  const at = (strength: number) =>
+    limewaterCeiling(evaporationLPerDay, strength, netVolumeL) * perMeqOfLimewater(supply.solute);
   return {
     evaporationLPerDay,
     saturated: at(saturatedStrength()),
@@ -58,29 +87,37 @@ function ceilingOf({ netVolumeL }: SystemRow, supply: SystemSupply, now: number)
   };
 }
 
-function inputsOf(system: SystemRow, supply: SystemSupply, { from, to }: Demand): SystemDemand['inputs'] {
-  const within = (at: number) => at > from && at <= to;
-  const litresIn = (spans: SystemSupply['use']) =>
+function inputsOf({ supply, demand, track, now }: SystemTrack): SystemDemand['inputs'] {
+  // Readings end where the last test is, while what is given counts up to now.
+  const { from, to } = demand;
+  const within = (at: number) => at > from && at <= now;
+  const sumOf = (spans: SystemSupply['use'], of: (span: UseInterval) => number) =>
     supplyWithin(
-      spans.map((span) => ({ from: span.from, to: span.to, meqL: span.litres })),
+      spans.map((span) => ({ from: span.from, to: span.to, meqL: of(span) })),
       from,
-      to,
+      now,
     );
+  const all = [...supply.use, ...supply.assumed];
+  const { drift, supplyError, testScale } = track.noise;
   return {
-    limewaterL: litresIn([...supply.use, ...supply.assumed]),
-    limewaterMeq: supplyWithin(supply.limewater, from, to) * system.netVolumeL,
-    assumedL: litresIn(supply.assumed),
+    limewaterL: sumOf(all, ({ litres }) => litres),
+    limewaterMeq: sumOf(all, ({ alkalinityMeq }) => alkalinityMeq),
+    assumedL: sumOf(supply.assumed, ({ litres }) => litres),
     doses: supply.doses.filter(({ to: at }) => within(at)).length,
     waterChanges: supply.waterChanges.filter(({ at }) => within(at)).length,
-    tests: testsUsed(supply.tests.filter(({ at }) => at >= from && at <= to)),
+    tests: testsUsed(supply, (at) => at >= from && at <= to),
     knownSince: supply.knownSince,
+    salinity: supply.salinityAt(now)?.value ?? null,
+    noise: { drift, supplyError, testScale },
   };
 }
 
 /** The tests by their methods, the most used first. */
-function testsUsed(tests: SystemSupply['tests']): SystemDemand['inputs']['tests'] {
-  const errors = tests.map(({ method }) => testErrorOf('alkalinity', method));
-  return [...groupBy(errors, ({ method }) => method).entries()]
+function testsUsed({ tests, solute }: SystemSupply, isUsed: (at: number) => boolean): SystemDemand['inputs']['tests'] {
+  const used = tests
+    .filter(({ at }) => isUsed(at))
+    .map(({ method, sd }) => ({ method: testErrorOf(solute, method).method, half: REACH_95 * sd }));
+  return [...groupBy(used, ({ method }) => method).entries()]
     .map(([method, same]) => ({ method, count: same.length, error: same[0]?.half ?? 0 }))
     .sort((a, b) => b.count - a.count);
 }

@@ -28,7 +28,7 @@ const STILL: Move = { keep: 1, reach: 0, input: 0, perDrift: NOTHING, perSupplyE
 
 /**
  * The readings in order of time, with further instants between and after them, and what moved the level from each to
- * the next. A water change at the instant of a test comes after it: people test, then change.
+ * the next. A water change or a dose at the instant of a test comes after it: people test, then act.
  *
  * @param marks instants that estimates are wanted for; those before the first reading are left out
  */

@@ -53,12 +53,12 @@ function grown({ at, rate, amount, square }: Mark, to: number): Supplied {
   return { amount: amount + rate * days, square: square + rate ** 2 * days };
 }
 
-/** Sums up to an instant, what was dosed at that very instant included. */
+/** Sums up to an instant. What was dosed at that very instant comes after it: people test, then dose. */
 function sumsAt(marks: readonly Mark[], at: number): Supplied {
   let [low, high] = [0, marks.length];
   while (low < high) {
     const middle = (low + high) >> 1;
-    if ((marks[middle]?.at ?? Infinity) <= at) low = middle + 1;
+    if ((marks[middle]?.at ?? Infinity) < at) low = middle + 1;
     else high = middle;
   }
   const last = marks[low - 1];

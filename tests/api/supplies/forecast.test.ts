@@ -143,7 +143,7 @@ it('when the demand of a system is known, the powder that would bring all of it 
   const { use } = await look(farm, limeId);
 
   // 0.25 meq/L a day in 2,000 L are 500 meq: 0.25 mol of hydroxide of 74.093 g, in powder of 95 %.
-  expect(use.demandPerDay).toBeCloseTo((0.25 * 74.093) / 0.95, 2);
+  expect(use.demandPerDay).toBeCloseTo((0.25 * 74.093) / 0.95, 1);
 });
 
 it('when supplies run down, each gets its word and the most urgent comes first', async () => {

@@ -40,7 +40,8 @@ it('when tests and levels tell a steady system, the demand that made them comes 
   const { body } = await viewer.get(`/api/systems/${systemId}/demand`);
 
   expect(body.demand).toMatchObject({ enough: true, readings: 11 });
-  expect(body.demand.demand / MEQ_PER_DKH).toBeCloseTo(2.5, 6);
+  // What was taken for it before any test still pulls a little, far less than its error.
+  expect(body.demand.demand / MEQ_PER_DKH).toBeCloseTo(2.5, 2);
   expect(body.demand.low).toBeLessThan(body.demand.demand);
   expect(body.demand.high).toBeGreaterThan(body.demand.demand);
   // 20 L a day of what stands in the reservoir, over 1,000 L.
@@ -90,7 +91,8 @@ it('when tests reach back before any limewater was logged, those are left out', 
 
   expect(body.demand.readings).toBe(11);
   expect(body.inputs.knownSince).toBe(start);
-  expect(body.demand.demand / MEQ_PER_DKH).toBeCloseTo(2.5, 6);
+  // What was taken for it before any test still pulls a little, far less than its error.
+  expect(body.demand.demand / MEQ_PER_DKH).toBeCloseTo(2.5, 2);
 });
 
 it('when a weaker mix goes online, limewater carries less from then on', async () => {
