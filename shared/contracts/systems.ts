@@ -39,7 +39,12 @@ export const System = z.object({
 });
 export type System = z.infer<typeof System>;
 
-const surfaceM2 = z.number().min(0.01, 'At least 0.01 m².').max(1_000_000, 'At most 1,000,000 m².').nullable().optional();
+const surfaceM2 = z
+  .number()
+  .min(0.01, 'At least 0.01 m².')
+  .max(1_000_000, 'At most 1,000,000 m².')
+  .nullable()
+  .optional();
 
 const bands = z
   .array(TargetBand)

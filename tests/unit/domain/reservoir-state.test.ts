@@ -1,6 +1,8 @@
+import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import {
   onlineSpans,
+  RESERVOIR_EVENT_KINDS,
   type ReservoirStep,
   SETTLING_MS,
   standingAfter,
@@ -31,6 +33,40 @@ it('standingAfter: a reservoir that comes off with a good rest stands by', () =>
   expect(standingAfter([step('online', 0, 60), step('offline', 1, 6)], 60).state).toBe('standby');
 });
 
+it('standingAfter: plain water, a check, a look and less sludge leave the state as it is', () => {
+  const quiet = (['topped_up', 'strength', 'level', 'sludge_removed'] as const).map((kind) => step(kind, 5, 40, 30));
+
+  for (const event of quiet) {
+    expect(standingAfter([step('refill', 0, 60), step('online', 3, 60), event], 60)).toEqual({
+      ...{ state: 'online', levelL: 40, alkalinityMeqL: 30, readyAt: null },
+    });
+  }
+});
+
+it('standingAfter: spent is spent whatever is left; cleaned stands by, empty', () => {
+  const spent = standingAfter([step('online', 0, 60), step('spent', 4, 45)], 60);
+
+  expect(spent).toMatchObject({ state: 'spent', levelL: 45 });
+  expect(standingAfter([step('cleaned', 5, 0, 0)], 60, spent)).toEqual({
+    ...{ state: 'standby', levelL: 0, alkalinityMeqL: 0, readyAt: null },
+  });
+});
+
+it('standingAfter: told one by one or all at once, it stands the same', () => {
+  const anEvent = fc.record({
+    kind: fc.constantFrom(...RESERVOIR_EVENT_KINDS),
+    levelL: fc.integer({ min: 0, max: 60 }),
+    alkalinityMeqL: fc.integer({ min: 0, max: 45 }),
+  });
+  fc.assert(
+    fc.property(fc.array(anEvent), (list) => {
+      const steps = list.map((event, at) => ({ ...event, at }));
+      const oneByOne = steps.reduce((standing, each) => standingAfter([each], 60, standing), standingAfter([], 60));
+      expect(oneByOne).toEqual(standingAfter(steps, 60));
+    }),
+  );
+});
+
 it('stateAt: settling ends at the instant that it is ready', () => {
   const standing = standingAfter([step('refill', 1000, 60)], 60);
 
@@ -48,6 +84,18 @@ it('onlineSpans: a refill or a changeover ends a span; the last one stays open',
     { from: 10, to: 20 },
     { from: 30, to: 40 },
     { from: 50, to: null },
+  ]);
+});
+
+it('onlineSpans: a reservoir that is spent or cleaned feeds no more; plain water and checks go on', () => {
+  const history = [
+    ...[step('online', 10, 60), step('topped_up', 12, 60), step('strength', 14, 50), step('sludge_removed', 16, 48)],
+    ...[step('spent', 20, 40), step('online', 30, 40), step('cleaned', 35, 0)],
+  ];
+
+  expect(onlineSpans(history)).toEqual([
+    { from: 10, to: 20 },
+    { from: 30, to: 35 },
   ]);
 });
 
