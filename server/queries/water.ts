@@ -1,24 +1,18 @@
-import { asc, eq, sql } from 'drizzle-orm';
+import { eq, sql } from 'drizzle-orm';
 import type { BandState, LatestValue, SystemGlance } from '../../shared/contracts/water.ts';
 import type { TargetBand } from '../../shared/contracts/systems.ts';
 import type { Db } from '../db/client.ts';
-import { racks, stockAccounts, stockBalances, systems, tanks } from '../db/schema/index.ts';
+import { racks, stockAccounts, stockBalances, tanks } from '../db/schema/index.ts';
 import { currentDemand } from './demand.ts';
 import { latestReadings } from './readings.ts';
 import { listReservoirs } from './reservoirs.ts';
 import { bandsOf, systemFacts, systemRow, type SystemRow } from './systems.ts';
 
-/** Every system at a glance, in the order of their codes. */
-export function waterOverview(db: Db, now: number): SystemGlance[] {
-  const rows = db.select().from(systems).orderBy(asc(systems.code)).all();
-  return rows.map((row) => glanceOf(db, row, now));
-}
-
 export function systemGlance(db: Db, systemId: string, now: number): SystemGlance {
   return glanceOf(db, systemRow(db, systemId), now);
 }
 
-function glanceOf(db: Db, row: SystemRow, now: number): SystemGlance {
+export function glanceOf(db: Db, row: SystemRow, now: number): SystemGlance {
   const held = listReservoirs(db, now, row.id);
   return {
     system: systemFacts(row),

@@ -110,14 +110,6 @@ export const WaterItem = z.object({
 export type WaterItem = z.infer<typeof WaterItem>;
 
 export const waterEndpoints = {
-  overview: {
-    method: 'get',
-    path: '/api/water',
-    access: 'water.read',
-    summary: 'Every system at a glance',
-    query: nothing,
-    response: z.object({ items: z.array(SystemGlance) }),
-  },
   glance: {
     method: 'get',
     path: '/api/systems/:id/glance',

@@ -1,6 +1,7 @@
 import { useQuery, useQueryClient } from '@tanstack/vue-query';
 import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { additionEndpoints } from '@shared/contracts/additions.ts';
+import { waterOverviewEndpoints } from '@shared/contracts/water-overview.ts';
 import { waterEndpoints } from '@shared/contracts/water.ts';
 import { callApi } from '@/api/call-api.ts';
 
@@ -17,8 +18,7 @@ export const waterKeys = {
 export function useWaterOverview() {
   return useQuery({
     queryKey: waterKeys.overview(),
-    queryFn: ({ signal }) => callApi(waterEndpoints.overview, { signal }),
-    select: ({ items }) => items,
+    queryFn: ({ signal }) => callApi(waterOverviewEndpoints.show, { signal }),
   });
 }
 

@@ -1,7 +1,9 @@
-import type { LatestValue, SystemGlance } from '@shared/contracts/water.ts';
+import type { SystemGlance } from '@shared/contracts/water.ts';
 import { systemTitle } from '@shared/domain/system-title.ts';
+import { type LevelFacts, byUrgency } from '@shared/domain/water-urgency.ts';
 import { joinWords, plural } from '@/formatting/plural.ts';
 import { type DemandWords, driftOf, netOf, shownChange } from '@/views/water/demand-sentence.ts';
+import { alkalinityOf } from '@/views/water/glance-words.ts';
 
 /** So many systems are named with their numbers; the rest is counted. */
 const MOST_NAMED = 3;
@@ -10,7 +12,7 @@ const MOST_NAMED = 3;
 export function overviewSentence(glances: readonly SystemGlance[], words: DemandWords): string {
   const pressing = glances
     .filter((glance) => isOut(glance) || isMoving(glance))
-    .sort((a, b) => daysInBand(a) - daysInBand(b) || distanceOut(b) - distanceOut(a));
+    .sort((a, b) => byUrgency(factsOf(a), factsOf(b)));
   const unknown = glances.filter((glance) => driftOf(glance) === 'unknown');
   const said = pressing
     .slice(0, MOST_NAMED)
@@ -42,10 +44,6 @@ function movement(glance: SystemGlance, words: DemandWords): string[] {
   return [`${net.change < 0 ? 'slips' : 'rises'} ${change} a day`];
 }
 
-function alkalinityOf({ latest }: SystemGlance): LatestValue | undefined {
-  return latest.find(({ parameter }) => parameter === 'alkalinity');
-}
-
 function isOut(glance: SystemGlance): boolean {
   const state = alkalinityOf(glance)?.state;
   return state === 'below' || state === 'above';
@@ -56,17 +54,8 @@ function isMoving(glance: SystemGlance): boolean {
   return drift === 'slips' || drift === 'rises';
 }
 
-/** Days until the band is left at today's change; 0 when it is left already. */
-function daysInBand(glance: SystemGlance): number {
-  if (isOut(glance)) return 0;
+/** The level with its band and how it changes now, for the order of urgency. */
+function factsOf(glance: SystemGlance): LevelFacts | null {
   const latest = alkalinityOf(glance);
-  const change = netOf(glance)?.change ?? 0;
-  if (!latest?.band || change === 0) return Number.MAX_VALUE;
-  return (change < 0 ? latest.value - latest.band.low : latest.band.high - latest.value) / Math.abs(change);
-}
-
-function distanceOut(glance: SystemGlance): number {
-  const latest = alkalinityOf(glance);
-  if (!latest?.band) return 0;
-  return Math.max(latest.band.low - latest.value, latest.value - latest.band.high);
+  return latest ? { level: latest.value, band: latest.band, changePerDay: netOf(glance)?.change ?? null } : null;
 }
