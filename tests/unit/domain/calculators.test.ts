@@ -87,6 +87,46 @@ describe('density', () => {
   });
 });
 
+describe('salinity', () => {
+  it('of 42.914 mS/cm at 15 °C (IPTS-68) is 35, by the definition of PSS-78 (UNESCO 1983)', () => {
+    const { salinity } = calculate('salinity', { conductivity_mS_cm: 42.914, temperature_C: 15 / 1.00024 });
+    expect(salinity).toBeCloseTo(35, 6);
+  });
+});
+
+describe('demand', () => {
+  const tests = Array.from({ length: 30 }, (_, day) => [day, 2.9 + (day % 2 ? 0.02 : -0.02)]);
+  const steady = { readings: tests, supply: [[0, 30, 0.4]], water_changes: [], test_sd_meq_L: 0.05 };
+
+  it('when a level holds on 0.4 meq/L a day, is that within its error, in the order of the days', () => {
+    const found = calculate('demand', { ...steady, readings: [...tests].reverse() });
+    expect(found.days).toEqual(tests.map(([day]) => expect.closeTo(day ?? NaN, 9)));
+    const [last, sd] = [(found.demand as number[]).at(-1) ?? NaN, (found.demand_sd as number[]).at(-1) ?? NaN];
+    expect(Math.abs(last - 0.4)).toBeLessThan(2 * sd);
+    expect((found.demand_smoothed_sd as number[])[15]).toBeLessThan((found.demand_sd as number[])[15] ?? NaN);
+    expect(found.flagged).toEqual(tests.map(() => false));
+  });
+
+  it('when a test was mistyped, flags it alone', () => {
+    const readings = tests.map(([day, value]) => [day, day === 20 ? 9.2 : value]);
+    const { flagged } = calculate('demand', { ...steady, readings });
+    expect(flagged).toEqual(tests.map(([day]) => day === 20));
+  });
+
+  it('when there are no tests, has nothing to tell', () => {
+    expect(calculate('demand', { ...steady, readings: [] })).toMatchObject({ days: [], demand: [], flagged: [] });
+  });
+
+  it.each([
+    ['a supply that ends before it begins', { supply: [[5, 4, 0.4]] }],
+    ['a water change of more than all', { water_changes: [[3, 1.2, 2.9]] }],
+    ['a reading without its day', { readings: [[2.9]] }],
+    ['tests without error', { test_sd_meq_L: 0 }],
+  ])('refuses %s', (_, wrong) => {
+    expect(domainErrorOf(() => calculate('demand', { ...steady, ...wrong })).code).toBe('input.invalid');
+  });
+});
+
 describe('survival', () => {
   it.each(survival.cases)(
     'of $id is the curve that R survival has (Freireich et al. 1963)',

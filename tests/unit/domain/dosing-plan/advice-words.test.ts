@@ -29,7 +29,7 @@ function said(changes: Parameters<typeof adviceFacts>[0] = {}): string {
 describe('the sentence of an advice', () => {
   it('when the strength should change, names the lime, the evaporation and the rest', () => {
     expect(said({ supplements: [BICARBONATE, CALCIUM_CHLORIDE], limewater: { onlineMeqL: 20 } })).toBe(
-      'The corals take 1.12 dKH a day. Mix limewater with 1.02 g of lime a litre for the 20 L that evaporate a day, and dose 279 mL of Bicarbonate solution a day and 249 mL of Calcium solution a day.',
+      'The corals take 1.12 dKH a day. Mix limewater with 1.02 g of lime a litre for the 20 L that evaporate a day, and dose 279 mL of Bicarbonate solution a day and 250 mL of Calcium solution a day.',
     );
   });
 
