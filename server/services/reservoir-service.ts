@@ -52,7 +52,7 @@ export function checkStrength(write: Write, reservoirId: string, input: CheckStr
   assertFits(reservoir, levelL, 'levelL');
   if (levelL === 0) throw new DomainError('rule.refused', `${reservoir.code} is empty. There is nothing to check.`);
   const freshMsCm = freshReading(write, input.freshMsCm);
-  const found = holdsVinegar(write, reservoirId) ? null : strengthByConductivity(conductivityMsCm, freshMsCm);
+  const found = holdsVinegar(write, reservoirId) ? null : strengthFound(conductivityMsCm, freshMsCm);
   const expected = reservoir.alkalinityMeqL;
   const event = addEvent(write, reservoir, {
     ...{ kind: 'strength', at: actTime(write, input.at), note, levelBeforeL: levelL, levelL },
@@ -112,6 +112,16 @@ function freshReading(write: Write, given: number | undefined): number {
   if (fresh !== null) return fresh;
   const message = 'Enter your own reading of fresh saturated limewater: strength is told from the ratio of the two.';
   throw new DomainError('input.invalid', message, { fields: [{ path: 'freshMsCm', message }] });
+}
+
+function strengthFound(conductivityMsCm: number, freshMsCm: number): number {
+  try {
+    return strengthByConductivity(conductivityMsCm, freshMsCm);
+  } catch (error) {
+    if (!(error instanceof DomainError)) throw error;
+    const message = 'This is far above your fresh reading. Check the probe, or take the fresh reading again.';
+    throw new DomainError('input.invalid', message, { fields: [{ path: 'conductivityMsCm', message }] });
+  }
 }
 
 /** Whether enough vinegar is in what stands in it to spoil the reading. */

@@ -111,6 +111,7 @@ it.each([
   ['sludge-removals', { levelBeforeL: 70, levelL: 30 }, 'levelBeforeL'],
   ['strength-checks', { conductivityMsCm: 0, freshMsCm: 10 }, 'conductivityMsCm'],
   ['strength-checks', { conductivityMsCm: 90, freshMsCm: 10 }, 'conductivityMsCm'],
+  ['strength-checks', { conductivityMsCm: 15, freshMsCm: 10 }, 'conductivityMsCm'],
   ['spent', { levelL: 70 }, 'levelL'],
   ['cleanings', { levelBeforeL: 61 }, 'levelBeforeL'],
 ])('when %s get %o, it is refused at %s and nothing is written', async (path, body, field) => {
