@@ -9,6 +9,9 @@ import { bookDosingDays } from './book-dosing.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
 import { raiseAlerts } from './raise-alerts.ts';
+import { importReadings } from './import-readings.ts';
+import { sendAlertMails } from './send-alert-mails.ts';
+import { sendDigests } from './send-digests.ts';
 import { sendDueMails } from './send-due-mails.ts';
 import { sendRefunds } from './send-refunds.ts';
 import { shareCosts } from './share-costs.ts';
@@ -24,6 +27,7 @@ interface Job {
 
 const JOBS: readonly Job[] = [
   { name: 'send mails', everyMs: 2 * SECOND, run: sendDueMails },
+  { name: 'import readings', everyMs: SECOND, run: importReadings },
   { name: 'expire holds', everyMs: 15 * SECOND, run: expireHolds },
   { name: 'close checkouts', everyMs: 15 * SECOND, run: closeCheckouts },
   { name: 'send refunds', everyMs: 3 * SECOND, run: sendRefunds },
@@ -33,6 +37,8 @@ const JOBS: readonly Job[] = [
   { name: 'forget loose photos', everyMs: 3600 * SECOND, run: forgetLoosePhotos },
   { name: 'book steady dosing', everyMs: 600 * SECOND, run: bookDosingDays },
   { name: 'raise alerts', everyMs: 60 * SECOND, run: raiseAlerts },
+  { name: 'send alert mails', everyMs: 15 * SECOND, run: sendAlertMails },
+  { name: 'send daily mails', everyMs: 60 * SECOND, run: sendDigests },
   { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },
 ];
 

@@ -6,6 +6,7 @@ import type { Deps } from '../deps.ts';
 import { hasUsers } from '../queries/session.ts';
 import { assertCurrency, assertTimeZone } from './farm-checks.ts';
 import { hashPassword } from './passwords.ts';
+import { addUsualMethods } from './test-method-service.ts';
 import { assertStrongPassword } from './weak-passwords.ts';
 
 /**
@@ -23,6 +24,7 @@ export async function setUpFarm(deps: Deps, input: SetUpFarm): Promise<string> {
   inWrite(deps, owner, (write) => {
     assertEmpty(write.tx);
     insertFarm(write, input);
+    addUsualMethods(write);
     write.tx
       .insert(users)
       .values({

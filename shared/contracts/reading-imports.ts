@@ -4,11 +4,17 @@ import { done, id, idParams, instant } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 import { parameterCode } from './systems.ts';
 
-export const IMPORT_MAX_BYTES = 5_000_000;
+/** Enough for as many rows as are allowed, of the widest file that the product itself writes. */
+export const IMPORT_MAX_BYTES = 25_000_000;
 export const IMPORT_MAX_ROWS = 100_000;
 export const IMPORT_MAX_COLUMNS = 60;
 
-export const COLUMN_ROLES = ['ignore', 'taken', 'day', 'time', 'system', 'method', 'note', ...PARAMETER_CODES] as const;
+/** A column of its own for each parameter; or one value a row, with columns that name its parameter and unit. */
+export const COLUMN_ROLES = [
+  ...(['ignore', 'taken', 'day', 'time', 'system', 'method', 'lot', 'tester', 'note'] as const),
+  ...PARAMETER_CODES,
+  ...(['parameter', 'value', 'unit'] as const),
+] as const;
 export type ColumnRole = (typeof COLUMN_ROLES)[number];
 
 export const DATE_ORDERS = ['ymd', 'dmy', 'mdy'] as const;
@@ -21,6 +27,9 @@ export const ImportMapping = z.strictObject({
     .min(1)
     .max(IMPORT_MAX_COLUMNS),
   dateOrder: z.enum(DATE_ORDERS),
+  /** Zone of times that name none; the farm's when empty. */
+  timeZone: z.string().max(60).default(''),
+  decimalMark: z.enum(['point', 'comma']).default('point'),
   /** The system of all rows, where no column names it. */
   systemId: id.nullable().default(null),
 });
@@ -57,6 +66,8 @@ export const ImportPreview = z.object({
   /** Rows that would be left out; the first problems of all. */
   badRows: z.int(),
   problems: z.array(ImportProblem),
+  /** Times that came twice when the clocks went back, and were taken as the first. */
+  twiceTimes: z.int(),
   first: z
     .array(
       z.object({
@@ -74,7 +85,15 @@ export type ImportPreview = z.infer<typeof ImportPreview>;
 export const ReadingImport = z.object({
   id,
   fileName: z.string(),
+  state: z.enum(['waiting', 'running', 'finished', 'failed']),
+  rows: z.int(),
+  rowsDone: z.int(),
+  /** Stored so far. */
   readings: z.int(),
+  duplicates: z.int(),
+  badRows: z.int(),
+  /** Why it failed; nothing of it is stored then. */
+  failure: z.string().nullable(),
   at: instant,
   by: z.string(),
 });
@@ -107,17 +126,34 @@ export const readingImportEndpoints = {
     method: 'post',
     path: '/api/reading-imports',
     access: 'water.log',
-    summary: 'Import the good rows of a file',
+    summary: 'Import the good rows of a file; a large one goes on after the answer',
     body: CommitImport,
     upload,
     response: ReadingImport,
     creates: true,
   },
+  problems: {
+    method: 'post',
+    path: '/api/reading-imports/problems',
+    access: 'water.log',
+    summary: 'The rows of a file that would be left out, with the reasons, as a CSV file',
+    body: CommitImport,
+    upload,
+    answer: 'file',
+  },
+  show: {
+    method: 'get',
+    path: '/api/reading-imports/:id',
+    access: 'water.read',
+    summary: 'How far an import is',
+    params: idParams,
+    response: ReadingImport,
+  },
   undo: {
     method: 'delete',
     path: '/api/reading-imports/:id',
     access: 'water.log',
-    summary: 'Take a whole import back',
+    summary: 'Take a whole import back, or stop one that is under way',
     params: idParams,
     response: done,
   },

@@ -118,7 +118,8 @@ function dayFromUtc(utcMs: number): Day {
   return new Date(utcMs).toISOString().slice(0, 10);
 }
 
-function offsetAt(instantMs: number, timeZone: string): number {
+/** How far the clocks of a zone are ahead of UTC at an instant, ms. */
+export function offsetAt(instantMs: number, timeZone: string): number {
   return wallClockAsUtc(instantMs, timeZone) - Math.floor(instantMs / 1000) * 1000;
 }
 

@@ -39,10 +39,13 @@ export function assertReadingValue(code: ParameterCode, value: number, unit: str
   throw new DomainError('input.invalid', read.problem, { fields: [{ path, message: read.problem }] });
 }
 
-/** A value in the canonical unit; null where the conversion refuses it, as a specific gravity of no seawater. */
+/**
+ * A value in the canonical unit, which an empty `unit` means too; null where the conversion refuses it, as a specific
+ * gravity of no seawater.
+ */
 export function canonicalValue(code: ParameterCode, value: number, unit: string): number | null {
   try {
-    return toCanonical(code, value, unit);
+    return unit === '' ? value : toCanonical(code, value, unit);
   } catch (error) {
     if (error instanceof DomainError) return null;
     throw error;

@@ -1,47 +1,35 @@
 import type { ColumnRole, DateOrder, ImportMapping } from '../../../shared/contracts/reading-imports.ts';
-import { numberFromText } from '../../../shared/domain/number-text.ts';
-import type { ParameterCode } from '../../../shared/domain/units.ts';
+import { type DecimalMark, numberFromFile } from '../../../shared/domain/number-text.ts';
+import { PARAMETER_CODES } from '../../../shared/domain/units.ts';
 import type { CsvTable } from './csv-table.ts';
+import { parameterNamed, plainWords, unitNamed } from './words.ts';
 
 const SAMPLE_ROWS = 200;
 
-/** The first that fits wins. `mg` is magnesium only where it is not part of a unit; units are cut off before. */
+/** Meanings of columns other than a parameter's own; the first that fits wins. */
 const ROLE_WORDS: readonly [ColumnRole, RegExp][] = [
-  ['alkalinity', /^(alk|alkalinity|kh|dkh|ta)\b/],
-  ['calcium', /^(ca|calcium)\b/],
-  ['magnesium', /^(mg|magnesium)\b/],
-  ['salinity', /^(sal|salinity|sg|specific gravity|density)\b/],
-  ['temperature', /^(temp|temperature|water temp)/],
-  ['ph', /^ph\b/],
-  ['nitrate', /^(nitrate|no3)\b/],
-  ['phosphate', /^(phosphate|po4)\b/],
-  ['taken', /^(taken|date ?\/? ?time|datetime|timestamp|measured|sampled|when)/],
+  ['taken', /^(taken|date ?\/? ?time|datetime|timestamp|measured at|sampled|when)/],
   ['day', /^(date|day)\b/],
   ['time', /^(time|clock|hour)\b/],
   ['system', /^(system|tank|raceway)\b/],
+  ['parameter', /^(parameter|param|quantity)\b/],
+  ['value', /^(value|result|reading)\b/],
+  ['unit', /^units?\b/],
+  ['lot', /^(kit lot|lot|kit no|batch)\b/],
   ['method', /^(method|kit|test)\b/],
+  ['tester', /^(by|tester|operator|tested by|person)\b/],
   ['note', /^(note|notes|comment|comments|remark|remarks)\b/],
-];
-
-/** Units as they are written in heads, for each quantity that can be in more than one. */
-const UNIT_WORDS: readonly [ParameterCode, string, RegExp][] = [
-  ['alkalinity', 'dKH', /\bd?kh\b|°dh|\bdh\b/],
-  ['alkalinity', 'meq/L', /meq|mval|mmol/],
-  ['alkalinity', 'ppm', /ppm|mg ?\/ ?l|caco3/],
-  ['salinity', 'sg', /\bsg\b|specific gravity|density/],
-  ['salinity', 'ppt', /ppt|psu|‰|g ?\/ ?kg/],
-  ['temperature', 'F', /°f|\bf\b|fahrenheit/],
-  ['temperature', 'C', /°c|\bc\b|celsius/],
 ];
 
 /** What the columns of a file probably mean, for a person to look over. */
 export function guessMapping({ heads, rows }: CsvTable, systemId: string | null): ImportMapping {
   const sample = rows.slice(0, SAMPLE_ROWS);
+  const decimalMark = decimalMarkOf(sample);
   const taken = new Set<ColumnRole>();
   const columns = heads.map((head, index) => {
     const role = roleOf(head, taken);
     if (role !== 'ignore') taken.add(role);
-    return { role, unit: unitOf(head, role, valuesOf(sample, index)) };
+    return { role, unit: unitOf(head, role, valuesOf(sample, index, decimalMark)) };
   });
   // "Date" beside a column of times is a day; alone it may hold both.
   const dayOnly = taken.has('day') && !taken.has('time') && !taken.has('taken');
@@ -49,22 +37,22 @@ export function guessMapping({ heads, rows }: CsvTable, systemId: string | null)
     ? columns.map((each) => (each.role === 'day' ? { ...each, role: 'taken' as const } : each))
     : columns;
   const dateColumn = dated.findIndex(({ role }) => role === 'taken' || role === 'day');
-  return { columns: dated, dateOrder: dateOrderOf(sample.map(({ cells }) => cells[dateColumn] ?? '')), systemId };
+  const dateOrder = dateOrderOf(sample.map(({ cells }) => cells[dateColumn] ?? ''));
+  return { columns: dated, dateOrder, timeZone: '', decimalMark, systemId };
 }
 
 function roleOf(head: string, taken: ReadonlySet<ColumnRole>): ColumnRole {
-  const words = head
-    .toLowerCase()
-    .replace(/[([{].*$/, '')
-    .replace(/[_,;:]+/g, ' ')
-    .trim();
-  const found = ROLE_WORDS.find(([role, pattern]) => pattern.test(words) && !taken.has(role));
-  return found?.[0] ?? 'ignore';
+  const words = plainWords(head);
+  const parameter = parameterNamed(head);
+  if (parameter && !taken.has(parameter)) return parameter;
+  return ROLE_WORDS.find(([role, pattern]) => pattern.test(words) && !taken.has(role))?.[0] ?? 'ignore';
 }
 
 function unitOf(head: string, role: ColumnRole, values: readonly number[]): string {
-  const named = UNIT_WORDS.find(([quantity, , pattern]) => quantity === role && pattern.test(head.toLowerCase()));
-  if (named) return named[1];
+  const parameter = PARAMETER_CODES.find((code) => code === role);
+  if (!parameter) return '';
+  const named = unitNamed(parameter, head);
+  if (named !== null) return named;
   const middle = [...values].sort((a, b) => a - b)[Math.floor(values.length / 2)];
   if (middle === undefined) return '';
   // The ranges of seawater in these units do not meet.
@@ -74,8 +62,14 @@ function unitOf(head: string, role: ColumnRole, values: readonly number[]): stri
   return '';
 }
 
-function valuesOf(rows: CsvTable['rows'], index: number): number[] {
-  return rows.flatMap(({ cells }) => numberFromText(cells[index] ?? '') ?? []);
+function valuesOf(rows: CsvTable['rows'], index: number, mark: DecimalMark): number[] {
+  return rows.flatMap(({ cells }) => numberFromFile(cells[index] ?? '', mark) ?? []);
+}
+
+/** A comma before other than three digits, or after a single zero, groups no thousands. */
+function decimalMarkOf(rows: CsvTable['rows']): DecimalMark {
+  const isComma = /^[+-]?(\d+,(\d{1,2}|\d{4,})|0,\d+)$/;
+  return rows.some(({ cells }) => cells.some((cell) => isComma.test(cell))) ? 'comma' : 'point';
 }
 
 function dateOrderOf(dates: readonly string[]): DateOrder {

@@ -1,109 +1,162 @@
-import { eq, sql } from 'drizzle-orm';
-import type { ImportMapping, ImportPreview, ReadingImport } from '../../../shared/contracts/reading-imports.ts';
+import { eq } from 'drizzle-orm';
+import { z } from 'zod';
+import { ImportMapping, type ImportPreview, type ReadingImport } from '../../../shared/contracts/reading-imports.ts';
+import { ROLES } from '../../../shared/permissions.ts';
 import { DomainError } from '../../../shared/errors.ts';
 import type { Db } from '../../db/client.ts';
-import { readingImports, readings, systems } from '../../db/schema/index.ts';
+import { readingImportFiles, readingImports, readings } from '../../db/schema/index.ts';
 import type { Write } from '../../db/write.ts';
-import { farmOf } from '../../queries/farm.ts';
-import { type CsvTable, readCsvTable } from './csv-table.ts';
+import { readingImport } from '../../queries/reading-imports.ts';
+import { breathe } from './breathe.ts';
+import { type CsvTable, readCsvTable, readCsvTableInPieces } from './csv-table.ts';
 import { guessMapping } from './guess-mapping.ts';
-import { leaveOutKnown, type Sifted } from './leave-out-known.ts';
-import { type ImportValue, readRows } from './read-rows.ts';
+import { type SiftedPiece, siftFile } from './sift-file.ts';
+import { storeValues } from './store-values.ts';
 
 interface ImportFile {
   fileName: string;
   content: Buffer;
 }
 
+/** What an import that goes on after its answer has to keep. */
+export const ImportOrder = z.object({
+  mapping: ImportMapping,
+  actor: z.object({
+    userId: z.string().nullable(),
+    name: z.string(),
+    role: z.enum([...ROLES, 'system']),
+    storeId: z.string().nullable(),
+  }),
+});
+
 const SAMPLE_ROWS = 5;
 const FIRST_VALUES = 20;
 const PROBLEMS_SHOWN = 100;
-const CLOCK_SLACK_MS = 5 * 60_000;
+/** A file up to here is imported within the answer: less than half a second's work. */
+const AT_ONCE_BYTES = 100_000;
 
 /** What an import would do, and nothing of it: the file comes again with the commit. */
-export function previewImport(
+export async function previewImport(
   db: Db,
   file: ImportFile,
   { mapping, systemId, now }: { mapping?: ImportMapping | undefined; systemId?: string | undefined; now: number },
-): ImportPreview {
-  const table = readCsvTable(file.content);
+): Promise<ImportPreview> {
+  const table = await readCsvTableInPieces(file.content);
   const used = mapping ?? guessMapping(table, systemId ?? null);
-  const sifted = sift(db, table, used, now);
-  return {
+  const preview: ImportPreview = {
     ...{ fileName: file.fileName, heads: table.heads, mapping: used, rows: table.rows.length },
     sample: table.rows.slice(0, SAMPLE_ROWS).map(({ cells }) => cells),
-    ...{ readings: sifted.fresh.length, duplicates: sifted.duplicates, badRows: sifted.badRows },
-    problems: sifted.problems.slice(0, PROBLEMS_SHOWN),
-    first: sifted.fresh.slice(0, FIRST_VALUES),
+    ...{ readings: 0, duplicates: 0, badRows: 0, twiceTimes: 0, problems: [], first: [] },
   };
+  for await (const piece of inPieces(siftFile(db, table, used, now))) {
+    preview.readings += piece.fresh.length;
+    preview.duplicates += piece.duplicates;
+    preview.badRows += piece.badRows;
+    preview.twiceTimes += piece.twiceTimes;
+    preview.problems.push(...piece.problems.slice(0, PROBLEMS_SHOWN - preview.problems.length));
+    preview.first.push(...piece.fresh.slice(0, FIRST_VALUES - preview.first.length));
+  }
+  return preview;
 }
 
-/** Stores all good rows of a file as one import. */
-export function commitImport(write: Write, file: ImportFile, mapping: ImportMapping): ReadingImport {
-  const { fresh } = sift(write.tx, readCsvTable(file.content), mapping, write.now);
-  if (fresh.length === 0) {
-    throw new DomainError('rule.refused', 'This file brings no new reading. Look at the preview for the reasons.');
+/** A row that would be left out, with all that is wrong with it. */
+export interface BadRow {
+  line: number;
+  reasons: string;
+  cells: string[];
+}
+
+/** Every row that would be left out, to be mended and sent again. */
+export async function badRowsOf(
+  db: Db,
+  file: ImportFile,
+  { mapping, now }: { mapping: ImportMapping; now: number },
+): Promise<{ heads: string[]; rows: BadRow[] }> {
+  const table = await readCsvTableInPieces(file.content);
+  const reasons = new Map<number, string[]>();
+  for await (const { problems } of inPieces(siftFile(db, table, mapping, now))) {
+    for (const { line, column, message } of problems) {
+      reasons.set(line, [...(reasons.get(line) ?? []), column === '' ? message : `${column}: ${message}`]);
+    }
   }
-  const row = write.tx
+  const rows = table.rows.flatMap(({ line, cells }) => {
+    const found = reasons.get(line);
+    return found ? [{ line, reasons: found.join(' '), cells }] : [];
+  });
+  return { heads: table.heads, rows };
+}
+
+/**
+ * Imports the good rows of a file: a small one at once, a large one by a job that goes on after the answer.
+ * @throws {DomainError} `input.invalid`; `rule.refused` where a small file brings nothing
+ */
+export function startImport(write: Write, file: ImportFile, mapping: ImportMapping): ReadingImport {
+  const id = write.newId();
+  const isSmall = file.content.length <= AT_ONCE_BYTES;
+  write.tx
     .insert(readingImports)
     .values({
-      ...{ id: write.newId(), fileName: file.fileName.slice(0, 200), readings: fresh.length },
-      ...{ at: write.now, by: write.actor.name },
+      ...{ id, fileName: file.fileName.slice(0, 200), readings: 0, at: write.now, by: write.actor.name },
+      state: 'waiting',
     })
-    .returning()
-    .get();
-  storeValues(write, row.id, fresh);
-  write.audit({ action: 'reading_import.committed', entity: 'reading_import', entityId: row.id, after: row });
-  return row;
+    .run();
+  if (isSmall) importAtOnce(write, id, readCsvTable(file.content), mapping);
+  else {
+    const { userId, name, role, storeId } = write.actor;
+    const order: z.infer<typeof ImportOrder> = { mapping, actor: { userId, name, role, storeId } };
+    write.tx.insert(readingImportFiles).values({ importId: id, content: file.content, mapping: order }).run();
+  }
+  return readingImport(write.tx, id);
 }
 
-/** Takes a whole import back: every reading that it brought and that is still there. */
+function importAtOnce(write: Write, importId: string, table: CsvTable, mapping: ImportMapping): void {
+  write.tx.update(readingImports).set({ rows: table.rows.length }).where(eq(readingImports.id, importId)).run();
+  for (const piece of siftFile(write.tx, table, mapping, write.now)) storePiece(write, importId, piece);
+  finishImport(write, importId);
+}
+
+/** Stores a piece and counts it. @returns false where the import was taken back meanwhile */
+export function storePiece(write: Write, importId: string, piece: SiftedPiece): boolean {
+  const row = write.tx.select().from(readingImports).where(eq(readingImports.id, importId)).get();
+  if (!row) return false;
+  const stored = storeValues(write, importId, piece.fresh);
+  write.tx
+    .update(readingImports)
+    .set({
+      rowsDone: piece.rowsDone,
+      readings: row.readings + stored,
+      duplicates: row.duplicates + piece.duplicates + piece.fresh.length - stored,
+      badRows: row.badRows + piece.badRows,
+    })
+    .where(eq(readingImports.id, importId))
+    .run();
+  return true;
+}
+
+/** @throws {DomainError} `rule.refused` where the file brought nothing */
+export function finishImport(write: Write, importId: string): void {
+  if (readingImport(write.tx, importId).readings === 0) {
+    throw new DomainError('rule.refused', 'This file brings no new reading. Look at the preview for the reasons.');
+  }
+  write.tx.update(readingImports).set({ state: 'finished' }).where(eq(readingImports.id, importId)).run();
+  write.tx.delete(readingImportFiles).where(eq(readingImportFiles.importId, importId)).run();
+  const after = readingImport(write.tx, importId);
+  write.audit({ action: 'reading_import.committed', entity: 'reading_import', entityId: importId, after });
+}
+
+/** Takes a whole import back: every reading that it brought and that is still there. One under way is stopped. */
 export function undoImport(write: Write, importId: string): void {
-  const before = write.tx.select().from(readingImports).where(eq(readingImports.id, importId)).get();
-  if (!before) throw new DomainError('record.not_found', 'This import is gone. Someone took it back.');
+  const before = readingImport(write.tx, importId);
   write.tx.delete(readings).where(eq(readings.importId, importId)).run();
+  write.tx.delete(readingImportFiles).where(eq(readingImportFiles.importId, importId)).run();
   write.tx.delete(readingImports).where(eq(readingImports.id, importId)).run();
   write.audit({ action: 'reading_import.undone', entity: 'reading_import', entityId: importId, before });
 }
 
-function sift(db: Db, table: CsvTable, mapping: ImportMapping, now: number): Sifted {
-  assertMapping(table, mapping);
-  const all = db.select({ id: systems.id, code: systems.code, name: systems.name }).from(systems).all();
-  const byName = new Map(
-    all.flatMap((system) => [system.name, system.code].map((name) => [name.toLowerCase(), system] as const)),
-  );
-  const rows = readRows(table, {
-    mapping,
-    timeZone: farmOf(db).timeZone,
-    latest: now + CLOCK_SLACK_MS,
-    systemByName: (name) => byName.get(name.toLowerCase()),
-    systemById: (id) => all.find((system) => system.id === id),
-  });
-  return leaveOutKnown(db, rows);
-}
-
-/** One statement, prepared once: an import can bring hundreds of thousands of values. */
-function storeValues(write: Write, importId: string, values: readonly ImportValue[]): void {
-  const given = (name: keyof ImportValue | 'id') => sql.placeholder(name);
-  const insert = write.tx
-    .insert(readings)
-    .values({
-      ...{ id: given('id'), systemId: given('systemId'), parameter: given('parameter'), value: given('value') },
-      ...{ method: given('method'), note: given('note'), takenAt: given('takenAt') },
-      ...{ importId, by: write.actor.name, createdAt: write.now },
-    })
-    .prepare();
-  for (const value of values) insert.run({ id: write.newId(), ...value });
-}
-
-/** @throws {DomainError} `input.invalid` where a mapping belongs to another file, or names one meaning twice */
-function assertMapping({ heads }: CsvTable, { columns }: ImportMapping): void {
-  const roles = columns.map(({ role }) => role).filter((role) => role !== 'ignore');
-  const message =
-    columns.length !== heads.length
-      ? 'The file has other columns than before. Choose it again.'
-      : new Set(roles).size < roles.length
-        ? 'Two columns have the same meaning. Choose another for one of them.'
-        : null;
-  if (message) throw new DomainError('input.invalid', message, { fields: [{ path: 'mapping', message }] });
+/** The pieces of long work, with a pause after each. */
+export async function* inPieces<T>(pieces: Iterable<T>): AsyncGenerator<T> {
+  for (const piece of pieces) {
+    yield piece;
+    await breathe();
+  }
 }

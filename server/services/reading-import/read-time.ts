@@ -1,5 +1,6 @@
 import type { DateOrder } from '../../../shared/contracts/reading-imports.ts';
-import { instantAt, isDay } from '../../../shared/domain/days.ts';
+import { isDay } from '../../../shared/domain/days.ts';
+import type { ClockTime, ZoneClock } from './zone-clock.ts';
 
 const YEAR_FIRST = /^(\d{4})[-/.](\d{1,2})[-/.](\d{1,2})/;
 const YEAR_LAST = /^(\d{1,2})[-/.](\d{1,2})[-/.](\d{4}|\d{2})(?!\d)/;
@@ -9,12 +10,13 @@ const CLOCK = /^(\d{1,2}):(\d{2})(?::(\d{2})(?:\.\d+)?)?\s*([ap]m)?\s*(z|[+-]\d{
 const NOON = 12 * 60;
 
 /**
- * The instant that a cell of a file names, in the farm's zone where it names no other; null where it is none.
+ * The instant that a cell of a file names, by the clocks given where it names no offset of its own; null where it is
+ * none.
  *
  * @param text a day, or a day and a time
  * @param order how days are written where the year stands last
  */
-export function readTime(text: string, order: DateOrder, timeZone: string): number | null {
+export function readTime(text: string, order: DateOrder, clock: ZoneClock): ClockTime | null {
   const found = YEAR_FIRST.exec(text) ?? YEAR_LAST.exec(text);
   if (!found) return null;
   const day = dayFrom(found.slice(1), order);
@@ -23,14 +25,14 @@ export function readTime(text: string, order: DateOrder, timeZone: string): numb
     .slice(found[0].length)
     .replace(/^[T,\s]+/i, '')
     .trim();
-  if (rest === '') return instantAt(day, NOON, timeZone);
-  const clock = CLOCK.exec(rest);
-  const minutes = clock ? minutesOf(clock) : null;
-  if (!clock || minutes === null) return null;
-  const offset = clock[5];
-  return offset === undefined
-    ? instantAt(day, minutes, timeZone)
-    : Date.parse(`${day}T00:00:00Z`) + Math.round(minutes * 60 - offsetMinutes(offset) * 60) * 1000;
+  if (rest === '') return clock.instant(day, NOON);
+  const time = CLOCK.exec(rest);
+  const minutes = time ? minutesOf(time) : null;
+  if (!time || minutes === null) return null;
+  const offset = time[5];
+  if (offset === undefined) return clock.instant(day, minutes);
+  const utc = Date.parse(`${day}T00:00:00Z`) + Math.round((minutes - offsetMinutes(offset)) * 60) * 1000;
+  return { at: utc, jump: null };
 }
 
 function dayFrom(parts: readonly string[], order: DateOrder): string {

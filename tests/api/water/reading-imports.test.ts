@@ -1,5 +1,6 @@
 import { expect, it } from 'vitest';
 import { readingImports, readings } from '../../../server/db/schema/index.ts';
+import { IMPORT_MAX_BYTES } from '../../../shared/contracts/reading-imports.ts';
 import { startFarm, type TestClient } from '../../support/start-farm.ts';
 import { givenReading, givenSystem } from '../../support/given-water.ts';
 
@@ -33,7 +34,7 @@ it('when a file is previewed, its columns, units and dates are recognised and no
     { role: 'time', unit: '' },
     { role: 'system', unit: '' },
     { role: 'alkalinity', unit: 'dKH' },
-    { role: 'calcium', unit: '' },
+    { role: 'calcium', unit: 'mg/L' },
     { role: 'temperature', unit: 'F' },
     { role: 'note', unit: '' },
   ]);
@@ -136,7 +137,7 @@ it.each([
 it('when the file is too large or of another kind, refuses it; a made-up mapping gets a message', async () => {
   const { grower } = await importFarm();
 
-  const large = await send(grower, '/api/reading-imports/preview', 'x'.repeat(5_000_001));
+  const large = await send(grower, '/api/reading-imports/preview', 'x'.repeat(IMPORT_MAX_BYTES + 1));
   const image = await grower
     .post('/api/reading-imports/preview')
     .attach('file', Buffer.from('x'), { filename: 'x.png', contentType: 'image/png' });
@@ -150,21 +151,97 @@ it('when the file is too large or of another kind, refuses it; a made-up mapping
   expect(twice.body.fields[0].message).toMatch(/same meaning/);
 });
 
-it('when a file has as many rows as is allowed, it is imported whole; with one more it is refused', async () => {
+it('when times fall where the clocks go forward, says so; where they go back, takes the first and counts them', async () => {
+  const { grower } = await importFarm();
+  const file = [
+    'taken,system,alk dKH',
+    '2025-03-30 01:30,B,8.2',
+    '2025-10-26 01:30,B,8.3',
+    '2025-10-26T01:30Z,B,8.4',
+  ].join('\n');
+
+  const { body } = await send(grower, '/api/reading-imports/preview', file);
+
+  expect(body).toMatchObject({ readings: 2, badRows: 1, twiceTimes: 1 });
+  expect(body.problems[0].message).toMatch(/never was in Europe\/Lisbon: the clocks went forward/);
+  expect(body.first.map(({ takenAt }: { takenAt: number }) => takenAt)).toEqual([
+    Date.parse('2025-10-26T00:30:00Z'),
+    Date.parse('2025-10-26T01:30:00Z'),
+  ]);
+});
+
+it('when another time zone is chosen, times without an offset are by its clocks; a made-up zone is refused', async () => {
+  const { farm, grower } = await importFarm();
+  const file = 'taken,system,alk dKH\n2026-02-01 08:00,B,8.2\n';
+  const { body } = await send(grower, '/api/reading-imports/preview', file);
+
+  await send(grower, '/api/reading-imports', file, {
+    mapping: JSON.stringify({ ...body.mapping, timeZone: 'America/New_York' }),
+  });
+  const odd = await send(grower, '/api/reading-imports', file, {
+    mapping: JSON.stringify({ ...body.mapping, timeZone: 'Moon/Crater' }),
+  });
+
+  expect(farm.db.select().from(readings).all()[0]?.takenAt).toBe(Date.parse('2026-02-01T13:00:00Z'));
+  expect(odd.status).toBe(400);
+});
+
+it('when a file groups thousands, the mark before its decimals is recognised', async () => {
+  const { grower } = await importFarm();
+  const point = 'taken,system,mg\n2026-02-01 08:00,B,"1,345"\n';
+  const comma = 'taken;system;mg;po4\n2026-02-01 08:00;B;1.345;0,045\n';
+
+  const first = await send(grower, '/api/reading-imports/preview', point);
+  const second = await send(grower, '/api/reading-imports/preview', comma);
+
+  expect(first.body).toMatchObject({ mapping: { decimalMark: 'point' }, first: [{ value: 1345 }] });
+  expect(second.body).toMatchObject({ mapping: { decimalMark: 'comma' }, first: [{ value: 1345 }, { value: 0.045 }] });
+});
+
+it('when a value can not be, its row says what was probably meant', async () => {
+  const { grower } = await importFarm();
+
+  const { body } = await send(grower, '/api/reading-imports/preview', 'taken,system,alk dKH\n2026-02-01 08:00,B,83\n');
+
+  expect(body.problems).toEqual([
+    { line: 2, column: 'alk dKH', message: expect.stringMatching(/Did you mean 8\.3 dKH\?/) },
+  ]);
+});
+
+it('when rows are left out, they can be had as a file of their own, mended and imported again', async () => {
+  const { farm, grower } = await importFarm();
+  const file = 'taken,system,alk dKH\n2026-02-01 08:00,B,8.2\n2026-02-02 08:00,Z,8.3\n';
+  const { body } = await send(grower, '/api/reading-imports/preview', file);
+  const mapping = JSON.stringify(body.mapping);
+  await send(grower, '/api/reading-imports', file, { mapping });
+
+  const left = await send(grower, '/api/reading-imports/problems', file, { mapping });
+  expect(left.headers['content-disposition']).toContain('rows-left-out.csv');
+  expect(left.text).toContain('2026-02-02 08:00,Z,8.3,3,There is no system “Z”.');
+  const mended = left.text.replace(',Z,', ',B,');
+  const again = await send(grower, '/api/reading-imports/preview', mended);
+  await send(grower, '/api/reading-imports', mended, { mapping: JSON.stringify(again.body.mapping) });
+
+  expect(farm.db.select().from(readings).all()).toHaveLength(2);
+});
+
+it('when readings are exported, the file can be imported again: all of it is there already, and it restores what is lost', async () => {
   const { farm, systemId, grower } = await importFarm();
-  const start = Date.parse('2020-01-01T00:00:00Z');
-  const rows = Array.from(
-    { length: 100_000 },
-    (_, index) => `${new Date(start + index * 60_000).toISOString().slice(0, 16)}Z,8.1`,
-  );
-  const file = ['taken,ph', ...rows].join('\n');
-  const { body } = await send(grower, '/api/reading-imports/preview', file, { systemId });
+  const takenAt = Date.parse('2026-02-01T08:00:00Z');
+  givenReading(farm, systemId, 8.2, { takenAt, method: 'Photometer', note: '=1+1' });
+  givenReading(farm, systemId, 1345, { parameter: 'magnesium', unit: 'mg/L', takenAt });
+  givenReading(farm, systemId, 1.0261, { parameter: 'salinity', unit: 'sg', takenAt });
+  const before = farm.db.select().from(readings).all();
+  const { text } = await grower.get('/api/readings/export');
 
-  const whole = await send(grower, '/api/reading-imports', file, { mapping: JSON.stringify(body.mapping) });
-  const more = await send(grower, '/api/reading-imports/preview', `${file}\n2026-01-01T00:00Z,8.1`, { systemId });
+  const known = await send(grower, '/api/reading-imports/preview', text);
+  farm.db.delete(readings).run();
+  const { body } = await send(grower, '/api/reading-imports', text, { mapping: JSON.stringify(known.body.mapping) });
 
-  expect(whole.body.readings).toBe(100_000);
-  expect(farm.db.select().from(readings).all()).toHaveLength(100_000);
-  expect(more.status).toBe(400);
-  expect(more.body.fields[0].message).toMatch(/Split it/);
-}, 60_000);
+  expect(known.body).toMatchObject({ readings: 0, duplicates: 3, badRows: 0 });
+  expect(body).toMatchObject({ state: 'finished', readings: 3 });
+  const after = farm.db.select().from(readings).all();
+  const facts = (rows: typeof before) =>
+    rows.map(({ parameter, value, method, note, by, takenAt: at }) => ({ parameter, value, method, note, by, at }));
+  expect(facts(after)).toEqual(facts(before));
+});

@@ -1,6 +1,6 @@
 import { reservoirEvents } from '../../../server/db/schema/index.ts';
 import type { Endpoint } from '../../../shared/contracts/endpoint.ts';
-import { commitImport } from '../../../server/services/reading-import/import-service.ts';
+import { startImport } from '../../../server/services/reading-import/import-service.ts';
 import { createSupplier } from '../../../server/services/supply-items.ts';
 import { fakePayments } from '../given-orders.ts';
 import { givenColony } from '../given-stock.ts';
@@ -8,6 +8,7 @@ import { givenItem, givenLot } from '../given-supplies.ts';
 import { startFarm, TEST_PASSWORD, type TestFarm } from '../start-farm.ts';
 import type { KnownValues } from './sample-request.ts';
 import { givenPeople, givenSales, givenStock, givenWater } from './worked-records.ts';
+import { givenTasksAndAlerts } from './worked-tasks.ts';
 
 export const READINGS_FILE = 'Day,Alkalinity\n2026-02-10,8.1\n2026-02-11,8.3\n';
 const NEW_PASSWORD = 'seven slow boats at dusk';
@@ -28,6 +29,7 @@ export async function workedFarm(): Promise<WorkedFarm> {
   const stock = givenStock(farm);
   const people = await givenPeople(farm);
   const supplies = givenSupplies(farm);
+  const work = givenTasksAndAlerts(farm);
   const imports = givenImport(farm, water.systemId);
   const { systemId } = water;
   const [code] = stock.codes;
@@ -81,6 +83,10 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/reservoirs': { id: water.emptyId, limeG: 0 },
     '/api/reservoirs/:id/changeovers': { id: water.standbyId },
     '/api/reservoirs/:id/undo': { id: water.standbyId },
+    '/api/tasks': { id: work.taskId, dueOn: work.dueOn, startsOn: '2026-03-02' },
+    '/api/task-outcomes': { id: work.outcomeId },
+    '/api/alerts': { id: work.alertId },
+    '/api/calendar': { token: work.calendarToken },
     '/api/readings': { value: 8, unit: 'dKH', id: water.readingId, takenAt: farm.deps.clock.now() - 60_000 },
     '/api/reading-imports': { mapping: imports.mapping, id: imports.importId },
   };
@@ -112,10 +118,10 @@ function givenImport(farm: TestFarm, systemId: string) {
     { role: 'day' as const, unit: '' },
     { role: 'alkalinity' as const, unit: 'dKH' },
   ];
-  const mapping = { columns, dateOrder: 'ymd' as const, systemId };
+  const mapping = { columns, dateOrder: 'ymd' as const, timeZone: '', decimalMark: 'point' as const, systemId };
   const file = { fileName: 'log.csv', content: Buffer.from('Day,Alkalinity\n2026-01-10,8.1\n') };
   return {
     mapping: JSON.stringify(mapping),
-    importId: farm.write((write) => commitImport(write, file, mapping)).id,
+    importId: farm.write((write) => startImport(write, file, mapping)).id,
   };
 }
