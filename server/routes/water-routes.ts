@@ -10,6 +10,8 @@ export function waterRoutes(api: Api): void {
   const { clock } = api.deps;
   api.read(waterOverviewEndpoints.show, (db) => waterOverview(db, clock.now()));
   api.read(waterEndpoints.glance, (db, { params }) => systemGlance(db, params.id, clock.now()));
-  api.read(waterEndpoints.demand, (db, { params, query }) => systemDemand(db, params.id, clock.now(), query.days));
+  api.read(waterEndpoints.demand, (db, { params, query }) =>
+    systemDemand(db, params.id, clock.now(), { historyDays: query.days, parameter: query.parameter }),
+  );
   api.read(waterEndpoints.items, (db) => ({ items: listWaterItems(db) }));
 }
