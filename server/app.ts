@@ -28,7 +28,7 @@ export function createApp(deps: Deps, sessionSecret: string): { app: Express; ap
   app.use('/api/webhooks', express.raw({ type: '*/*', limit: '1mb' }));
   app.use(express.json({ limit: '1mb' }));
   app.use(['/api/session', '/api/setup', '/api/password-resets', '/api/invitations', '/api/account'], limitGuessing());
-  app.use('/api/public', limitGuessing());
+  app.use(['/api/public', '/api/calendar'], limitGuessing());
   app.use('/api', sessionMiddleware(deps, sessionSecret), loadCaller(deps));
   // Routes match in any case, so this must too; a match that ends in a slash would be no prefix for Express.
   app.use(/^\/api(?!\/webhooks\/)/i, refuseForgedWrites(deps.config.publicUrl));

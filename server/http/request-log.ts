@@ -10,7 +10,7 @@ const SECRET_HEADERS = [
   'res.headers["set-cookie"]',
 ];
 /** Addresses whose last part lets someone in. */
-const TOKEN_IN_PATH = /(\/(?:invitations?|reset-password)\/)(?!accept\b)[\w-]{20,}/g;
+const TOKEN_IN_PATH = /(\/(?:invitations?|reset-password|calendar)\/)(?!accept\b)[\w-]{20,}/g;
 
 /** One log line a request, without anything that would let its reader in. */
 export function requestLog({ log, newId }: Deps): RequestHandler {

@@ -4,6 +4,7 @@ import { readingPhotoRoutes } from './reading-photo-routes.ts';
 import { readingRoutes } from './reading-routes.ts';
 import { reservoirRoutes } from './reservoir-routes.ts';
 import { systemRoutes } from './system-routes.ts';
+import { notificationRoutes } from './notification-routes.ts';
 import { alertRoutes } from './alert-routes.ts';
 import { taskRoutes } from './task-routes.ts';
 import { testMethodRoutes } from './test-method-routes.ts';
@@ -52,6 +53,7 @@ export function registerRoutes(api: Api): void {
   todayRoutes(api);
   taskRoutes(api);
   alertRoutes(api);
+  notificationRoutes(api);
   waterRoutes(api);
   additionRoutes(api);
   saltBatchRoutes(api);

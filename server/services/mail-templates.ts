@@ -2,6 +2,8 @@ import { outboxMails } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
 import type { Deps } from '../deps.ts';
 import type { Mail } from '../outside/mail-transport.ts';
+import { alertMail } from './mails/alert-mail.ts';
+import { digestMail } from './mails/digest-mail.ts';
 import { invitationMail } from './mails/invitation-mail.ts';
 import {
   orderCancelledMail,
@@ -17,6 +19,8 @@ type Template = (deps: Deps, data: Record<string, unknown>) => MailBody | Promis
 
 /** Every mail the product sends, by template name. Each area's mails live in `server/services/mails/`. */
 const TEMPLATES: Record<string, Template> = {
+  alerts: alertMail,
+  digest: digestMail,
   invitation: invitationMail,
   'order-cancelled': orderCancelledMail,
   'order-paid': orderPaidMail,

@@ -42,6 +42,7 @@ describe('who may call what', () => {
     const open = endpoints.filter(({ access }) => access === 'public').map(({ method, path }) => `${method} ${path}`);
 
     expect(open.sort()).toEqual([
+      'get /api/calendar/:token.ics',
       'get /api/health',
       'get /api/invitations/:token',
       'get /api/public/plugs/:code',
