@@ -60,4 +60,10 @@ export const waterRoutes: RouteRecordRaw[] = [
     props: true,
     meta: { title: 'Reservoir', access: 'water.read', place: 'water' },
   },
+  {
+    path: '/water/bench',
+    name: 'bench',
+    component: () => import('@/views/water/bench/BenchView.vue'),
+    meta: { title: 'Bench', access: 'water.read', place: 'water' },
+  },
 ];

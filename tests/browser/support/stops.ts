@@ -74,6 +74,7 @@ export const STOPS: readonly Stop[] = [
   of('mix-limewater', 'grower', SYSTEMS, ({ id }) => `/water/mix?system=${id}`),
   at('readings', 'grower', '/water/readings'),
   at('reading-import', 'grower', '/water/import'),
+  at('bench', 'grower', '/water/bench'),
   of('reservoir', 'grower', LIVE_RESERVOIRS, ({ id }) => `/water/reservoirs/${id}`),
   at('stock', 'grower', '/stock'),
   at('line-new', 'grower', '/stock/lines/new'),
