@@ -62,10 +62,11 @@ function byDay<Item extends { at: number }>(
   return days;
 }
 
-function pointWords({ decimals }: Series, { value, error, flag }: SeriesPoint): string {
+function pointWords({ decimals }: Series, { value, error, flag, signal }: SeriesPoint): string {
   const number = formatNumber(value, { decimals });
   const known = error === undefined ? number : `${number} ± ${formatNumber(error, { decimals })}`;
-  return flag === undefined ? known : `${known} (${flag})`;
+  const words = flag ?? signal;
+  return words === undefined ? known : `${known} (${words})`;
 }
 
 /** Series that are estimated or hold over a time stand at noon of the day; tested ones only where they were tested. */

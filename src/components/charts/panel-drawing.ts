@@ -1,4 +1,5 @@
 import { area, curveMonotoneX, line } from 'd3-shape';
+import { textWidth } from '@/components/charts/label-layout.ts';
 import { type Bar, type LinePoint, type Series, type SeriesPoint, visible } from '@/components/charts/series.ts';
 import type { Span } from '@/components/charts/zoom.ts';
 
@@ -19,7 +20,8 @@ export interface FlagMark {
   at: number;
   cx: number;
   cy: number;
-  word: string;
+  /** Left out where the word before it would be written over; the read-out says it too. */
+  word: string | null;
 }
 
 export interface DrawnSeries {
@@ -31,10 +33,14 @@ export interface DrawnSeries {
   bars: string;
   barTops: string;
   dots: string;
+  /** Readings that a control chart points at. */
+  signals: string;
   errors: string;
   flags: FlagMark[];
 }
 
+const FLAG_FONT = 12;
+const FLAG_WORD_GAP = 12;
 const RADIUS = 2.6;
 const DENSE_RADIUS = 1.5;
 /** Error bars that stand closer than this, px, would only make a grey cloud. */
@@ -45,6 +51,11 @@ export function drawSeries(series: Series, plot: Plot): DrawnSeries {
   const seen = visible(series.points ?? [], plot.span);
   const plain = seen.filter(({ flag }) => flag === undefined);
   const dense = plain.length > (plot.right - plot.left) / LEAST_BAR_GAP;
+  const dotsOf = (fits: (point: SeriesPoint) => boolean) =>
+    plain
+      .filter(fits)
+      .map((point) => dotPath(point, dense ? DENSE_RADIUS : RADIUS, plot))
+      .join('');
   const known = visible(series.line ?? [], plot.span);
   const ahead = visible(series.ahead ?? [], plot.span);
   const bars = (series.bars ?? []).filter(({ from, to }) => to >= plot.span[0] && from <= plot.span[1]);
@@ -53,9 +64,10 @@ export function drawSeries(series: Series, plot: Plot): DrawnSeries {
     ...{ ahead: linePath(ahead, plot), aheadBand: bandPath(ahead, plot) },
     bars: bars.map((bar) => barPath(bar, plot)).join(''),
     barTops: bars.map((bar) => barTop(bar, plot)).join(''),
-    dots: plain.map((point) => dotPath(point, dense ? DENSE_RADIUS : RADIUS, plot)).join(''),
+    dots: dotsOf(({ signal }) => signal === undefined),
+    signals: dotsOf(({ signal }) => signal !== undefined),
     errors: dense ? '' : plain.map((point) => errorPath(point, plot)).join(''),
-    flags: seen.flatMap((point) => (point.flag === undefined ? [] : [flagMark(point, point.flag, plot)])),
+    flags: flagMarks(seen, plot),
   };
 }
 
@@ -98,9 +110,16 @@ function errorPath({ at, value, error }: SeriesPoint, { x, y }: Plot): string {
   return error === undefined ? '' : `M${round(x(at))} ${round(y(value + error))}V${round(y(value - error))}`;
 }
 
-/** A reading far off the scale stands at its edge. */
-function flagMark({ at, value }: SeriesPoint, word: string, { x, y, height }: Plot): FlagMark {
-  return { at, word, cx: x(at), cy: Math.min(Math.max(y(value), 5), height - 5) };
+/** Readings that stand apart; one far off the scale stands at its edge. */
+function flagMarks(points: readonly SeriesPoint[], { x, y, height }: Plot): FlagMark[] {
+  let free = -Infinity;
+  return points.flatMap(({ at, value, flag }) => {
+    if (flag === undefined) return [];
+    const cx = x(at);
+    const word = cx >= free ? flag : null;
+    if (word !== null) free = cx + FLAG_WORD_GAP + textWidth(word, FLAG_FONT);
+    return [{ at, word, cx, cy: Math.min(Math.max(y(value), 5), height - 5) }];
+  });
 }
 
 function round(px: number): number {

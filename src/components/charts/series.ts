@@ -10,6 +10,8 @@ export interface SeriesPoint {
   note?: string;
   /** A word for a reading that stands apart; it is drawn apart and does not stretch the scale. */
   flag?: string;
+  /** What a control chart says of it; it is drawn filled. */
+  signal?: string;
 }
 
 /** An estimate with its 95 % band. */

@@ -61,7 +61,7 @@ function sayAt(series: Series, moment: number): string[] {
   const said: string[] = [];
   if (point) {
     const error = point.error === undefined ? '' : ` ± ${number(point.error)}`;
-    const notes = [point.flag, point.note].filter(Boolean).map((note) => `, ${note}`);
+    const notes = [point.flag, point.signal, point.note].filter(Boolean).map((note) => `, ${note}`);
     said.push(`${label} ${number(point.value)}${error}${THIN_SPACE}${unit}${notes.join('')}`);
   }
   if (estimate) {

@@ -2,6 +2,7 @@ import type { Timeline, TimelineSeries } from '@shared/contracts/timeline.ts';
 import type { SystemDemand } from '@shared/contracts/water.ts';
 import { MS_PER_DAY } from '@shared/domain/days.ts';
 import { type ParameterCode, unitOf } from '@shared/domain/units.ts';
+import { formatNumber } from '@/formatting/format-number.ts';
 import type { Bar, Lane, LinePoint, Panel, SeriesPoint } from '@/components/charts/series.ts';
 import type { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 import { parameterOf } from '@/views/water/water-labels.ts';
@@ -11,18 +12,27 @@ type Units = ReturnType<typeof useUnitChoicesStore>;
 /** Litres a day are told over half a day at least: two looks within minutes tell nothing. */
 const SHORTEST_USE_DAYS = 0.25;
 
-/** Readings with the 95 % error of their test, over the target band. */
-export function readingPanel({ parameter, points, band }: TimelineSeries, units: Units): Panel {
+type Estimated = Pick<SystemDemand, 'parameter' | 'levels' | 'flagged'>;
+
+/** Readings with the 95 % error of their test, over the target band; with the level that all tests tell, where known. */
+export function readingPanel({ parameter, points, band }: TimelineSeries, units: Units, estimated?: Estimated): Panel {
+  const known = estimated?.parameter === parameter ? estimated : undefined;
+  const flagged = new Set(known?.flagged.map(({ readingId }) => readingId));
+  const decimals = decimalsOf(parameter, units);
   const shown = (value: number) => units.toShown(parameter, value);
   return {
     key: parameter,
     series: [
       {
         ...{ key: parameter, label: parameterOf(parameter).label.toLowerCase(), unit: units.labelFor(parameter) },
-        ...{ tone: 'plum', decimals: decimalsOf(parameter, units) },
-        points: points.map(({ at, value, error, method }): SeriesPoint => ({
+        ...{ tone: 'plum', decimals },
+        points: points.map(({ id, at, value, error, method }): SeriesPoint => ({
           ...{ at, value: shown(value), error: Math.abs(shown(value + error) - shown(value)) },
           ...(method === '' ? {} : { note: method }),
+          ...(flagged.has(id) ? { flag: `flagged ${formatNumber(shown(value), { decimals })}` } : {}),
+        })),
+        line: (known?.levels ?? []).map(({ at, level, low, high }) => ({
+          ...{ at, value: shown(level), low: shown(low), high: shown(high) },
         })),
       },
     ],
@@ -30,22 +40,21 @@ export function readingPanel({ parameter, points, band }: TimelineSeries, units:
   };
 }
 
-/** Demand with its 95 % band. */
-export function demandPanel({ history }: SystemDemand, units: Units): Panel {
+/** Demand with its 95 % band, and as it goes on if nothing new happens. */
+export function demandPanel({ history, forecast }: SystemDemand, units: Units): Panel {
   const shown = (rate: number) => units.toShown('alkalinity', rate);
-  const line = history.map(({ at, demand, low, high }): LinePoint => ({
-    at,
-    value: shown(demand),
-    low: shown(low),
-    high: shown(high),
-  }));
+  const toPoint = ({ at, demand, low, high }: SystemDemand['history'][number]): LinePoint => ({
+    ...{ at, value: shown(demand), low: shown(low), high: shown(high) },
+  });
   return {
     key: 'demand',
     fromZero: true,
     series: [
       {
         ...{ key: 'demand', label: 'demand, with 95 % band', unit: `${units.labelFor('alkalinity')} a day` },
-        ...{ tone: 'slate', decimals: decimalsOf('alkalinity', units) + 1, line },
+        ...{ tone: 'slate', decimals: decimalsOf('alkalinity', units) + 1 },
+        line: history.map(toPoint),
+        ahead: [...history.slice(-1), ...forecast].map(toPoint),
       },
     ],
   };

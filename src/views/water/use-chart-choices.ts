@@ -1,6 +1,7 @@
 import { type WritableComputedRef, computed } from 'vue';
 import { useRoute, useRouter } from 'vue-router';
 import { PARAMETERS, type ParameterCode } from '@shared/domain/units.ts';
+import { LIMIT_CHOICES, type LimitChoice } from '@/views/water/control-panels.ts';
 
 /** Beside the parameters a chart can show what was done, what was drawn, and what the corals took. */
 const OTHERS = [
@@ -27,10 +28,12 @@ export const CHART_DAYS = [
 const USUAL_SHOWN: readonly Shown[] = ['alkalinity', 'acts', 'limewater', 'demand'];
 const USUAL_DAYS = 90;
 
-interface ChartChoices {
+export interface ChartChoices {
   days: WritableComputedRef<number>;
   /** What is shown, in the order in which it is drawn. */
   shown: WritableComputedRef<readonly Shown[]>;
+  /** Which limits the first parameter is seen against. */
+  limits: WritableComputedRef<LimitChoice>;
 }
 
 /** What a chart shows is part of the page's address, so that it can be sent to someone. */
@@ -56,5 +59,11 @@ export function useChartChoices(): ChartChoices {
       put({ show: value.join(',') });
     },
   });
-  return { days, shown };
+  const limits = computed<LimitChoice>({
+    get: () => LIMIT_CHOICES.find(({ value }) => value === route.query.limits)?.value ?? 'band',
+    set: (value) => {
+      put({ limits: value });
+    },
+  });
+  return { days, shown, limits };
 }
