@@ -44,10 +44,20 @@ export function trackSystem(
 function demandAt(track: DemandTrack, trusted: readonly DemandPoint[], now: number): Demand {
   const { lacks, ...told } = toldBy(trusted, now);
   const basis = { ...told, windowDays: TOLD_BY_DAYS };
-  const found = track.points.findLast(({ at, reading }) => at === now && !reading);
+  const found = pointAt(track, now);
   if (lacks || !found) return { enough: false, ...basis, reason: lacks ?? 'too_few_readings' };
   const { demand, low, high } = rangeOf(found.demand);
   return { enough: true, ...basis, demand, low, high };
+}
+
+/** Demand of now with its standard deviation; null where tests don't tell it. */
+export function demandNow({ track, demand, now }: SystemTrack): Estimate | null {
+  return demand.enough ? (pointAt(track, now)?.demand ?? null) : null;
+}
+
+/** What is known at one of the marks. */
+export function pointAt(track: DemandTrack, instant: number): DemandPoint | undefined {
+  return track.points.findLast(({ at, reading }) => at === instant && !reading);
 }
 
 export function rangeOf({ value, sd }: Estimate): { demand: number; low: number; high: number } {

@@ -10,9 +10,12 @@ import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
 import { carriedNow, evaporationOf } from './carried.ts';
 import { perMeqOfLimewater, type SystemSupply } from './demand-inputs.ts';
+import { CHANGE_DAYS } from './demand-change.ts';
+import { checksOf } from './demand-checks.ts';
 import { rangeOf, type SystemTrack, trackSystem } from './demand-track.ts';
 import { systemRow, type SystemRow } from './systems.ts';
 
+/** Charts reach back at least as far as demand is compared with what it was. */
 const USUAL_HISTORY_DAYS = 90;
 const FORECAST_DAYS = 28;
 
@@ -29,23 +32,24 @@ export function systemDemand(
   { historyDays = USUAL_HISTORY_DAYS, parameter = 'alkalinity' }: DemandQuestion = {},
 ): SystemDemand {
   const system = systemRow(db, systemId);
-  const past = Array.from({ length: historyDays }, (_, index) => now - (historyDays - index) * MS_PER_DAY);
+  const past = Array.from({ length: Math.max(historyDays, CHANGE_DAYS) }, (_, index) => now - (index + 1) * MS_PER_DAY);
   const ahead = Array.from({ length: FORECAST_DAYS }, (_, index) => now + (index + 1) * MS_PER_DAY);
   const found = trackSystem(db, system, { now, marks: [...past, ...ahead], solute: parameter });
   const { supply, demand } = found;
   const from = now - historyDays * MS_PER_DAY;
-  const days = daysTold(found);
+  const days = daysTold(found).filter(({ at }) => at >= from);
+  const biasSd = supply.tests.at(-1)?.biasSd ?? 0;
   return {
     ...{ systemId, parameter, netVolumeL: system.netVolumeL, demand },
     carried: carriedNow(system, supply, now),
     ceiling: ceilingOf(system, supply, now),
     history: days.map(({ at, smoothedDemand }) => ({ at, ...rangeOf(smoothedDemand) })),
-    levels: days.map(({ at, smoothedLevel }) => ({ at, ...levelRange(smoothedLevel) })),
+    levels: days.map(({ at, smoothedLevel }) => ({ at, ...levelRange(smoothedLevel, biasSd) })),
     forecast: demand.enough
       ? found.track.points.filter(({ at }) => at > now).map((point) => ({ at: point.at, ...rangeOf(point.demand) }))
       : [],
     flagged: flaggedSince(found, from),
-    checks: [],
+    checks: parameter === 'alkalinity' ? checksOf(db, system, found) : [],
     waterChanges: supply.waterChanges.filter(({ at }) => at >= from).map(({ at, litres }) => ({ at, litres })),
     inputs: inputsOf(found),
   };
@@ -63,8 +67,10 @@ function daysTold({ track, trusted, now }: SystemTrack): DemandPoint[] {
   return track.points.filter(({ at, reading }) => !reading && at <= now && tellsAt(at));
 }
 
-function levelRange({ value, sd }: Estimate) {
-  return { level: value, low: value - REACH_95 * sd, high: value + REACH_95 * sd };
+/** A kit's own bias moves all levels alike, so that it is no matter of demand. */
+function levelRange({ value, sd }: Estimate, biasSd: number) {
+  const reach = REACH_95 * Math.hypot(sd, biasSd);
+  return { level: value, low: value - reach, high: value + reach };
 }
 
 function flaggedSince({ track, supply }: SystemTrack, from: number): SystemDemand['flagged'] {

@@ -1,11 +1,10 @@
-import { eq, sql } from 'drizzle-orm';
 import type { BandState, LatestValue, SystemGlance } from '../../shared/contracts/water.ts';
 import type { TargetBand } from '../../shared/contracts/systems.ts';
 import type { Db } from '../db/client.ts';
-import { racks, stockAccounts, stockBalances, tanks } from '../db/schema/index.ts';
 import { currentDemand } from './demand.ts';
 import { latestReadings } from './readings.ts';
 import { listReservoirs } from './reservoirs.ts';
+import { piecesIn } from './standing-pieces.ts';
 import { bandsOf, systemFacts, systemRow, type SystemRow } from './systems.ts';
 
 export function systemGlance(db: Db, systemId: string, now: number): SystemGlance {
@@ -36,17 +35,4 @@ function bandStateOf(value: number, band: TargetBand | null): BandState {
   if (!band) return 'none';
   if (value < band.low) return 'below';
   return value > band.high ? 'above' : 'in';
-}
-
-/** Living pieces on the racks of a system's tanks. */
-function piecesIn(db: Db, systemId: string): number {
-  const row = db
-    .select({ pieces: sql<number>`coalesce(sum(${stockBalances.pieces}), 0)` })
-    .from(tanks)
-    .innerJoin(racks, eq(racks.tankId, tanks.id))
-    .innerJoin(stockAccounts, eq(stockAccounts.rackId, racks.id))
-    .innerJoin(stockBalances, eq(stockBalances.accountId, stockAccounts.id))
-    .where(eq(tanks.systemId, systemId))
-    .get();
-  return row?.pieces ?? 0;
 }
