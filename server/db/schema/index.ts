@@ -12,3 +12,4 @@ export * from './salt-batches.ts';
 export * from './dosing.ts';
 export * from './make-up-water.ts';
 export * from './plans.ts';
+export * from './demand.ts';
