@@ -5,6 +5,7 @@ import type { Api } from '../http/api.ts';
 import { type CsvColumns, csvFile } from '../http/csv-file.ts';
 import { logSheet, readingPeople } from '../queries/log-sheet.ts';
 import { allReadings, listReadings } from '../queries/readings.ts';
+import { withAlerts } from '../services/alert-service.ts';
 import { editReading, logReadings, removeReading } from '../services/reading-service.ts';
 
 export function readingRoutes(api: Api): void {
@@ -12,11 +13,16 @@ export function readingRoutes(api: Api): void {
   api.read(readingEndpoints.export, (db, { query }) => csvFile('readings.csv', COLUMNS, allReadings(db, query)));
   api.read(readingEndpoints.logSheet, (db, { params, caller }) => logSheet(db, params.id, caller.name));
   api.read(readingEndpoints.people, (db) => ({ items: readingPeople(db) }));
-  api.write(readingEndpoints.log, (write, { body }) => ({ items: logReadings(write, body) }));
-  api.write(readingEndpoints.edit, (write, { params, body, ifMatch }) => editReading(write, params.id, ifMatch, body));
+  api.write(readingEndpoints.log, (write, { body }) =>
+    withAlerts(write, body.systemId, { items: logReadings(write, body) }),
+  );
+  api.write(readingEndpoints.edit, (write, { params, body, ifMatch }) => {
+    const after = editReading(write, params.id, ifMatch, body);
+    return withAlerts(write, after.systemId, after);
+  });
   api.write(readingEndpoints.remove, (write, { params }) => {
-    removeReading(write, params.id);
-    return DONE;
+    const { systemId } = removeReading(write, params.id);
+    return withAlerts(write, systemId, DONE);
   });
 }
 

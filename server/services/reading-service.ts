@@ -12,6 +12,7 @@ import { definedOnly } from './defined-only.ts';
 import { assertVersion } from './edit-check.ts';
 import { assertOwnPhoto } from './reading-photos.ts';
 import { ReadingStatements } from './reading-statement.ts';
+import { reopenTasks, settleTasks } from './task-settling.ts';
 import { assertKit, checkOneValue, checkValues } from './tested-values.ts';
 
 /**
@@ -41,6 +42,13 @@ export function logReadings(write: Write, input: LogReadings): Reading[] {
   });
   for (const after of logged) {
     write.audit({ action: 'reading.logged', entity: 'reading', entityId: after.id, after });
+    settleTasks(write, {
+      kind: 'test',
+      systemId: after.systemId,
+      parameter: after.parameter,
+      at: takenAt,
+      cause: after.id,
+    });
   }
   return logged;
 }
@@ -82,11 +90,13 @@ export function editReading(write: Write, readingId: string, ifMatch: number, ed
   return after;
 }
 
-/** Takes a reading back; the audit log keeps what it was. */
-export function removeReading(write: Write, readingId: string): void {
+/** Takes a reading back; the audit log keeps what it was. @returns what it was */
+export function removeReading(write: Write, readingId: string): Reading {
   const before = showReading(write.tx, readingId);
   write.tx.delete(readings).where(eq(readings.id, readingId)).run();
   write.audit({ action: 'reading.removed', entity: 'reading', entityId: readingId, before });
+  reopenTasks(write, readingId);
+  return before;
 }
 
 function testsOf({ repeats, measured, value }: ReadingRow): number[] {

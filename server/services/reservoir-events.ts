@@ -1,9 +1,11 @@
 import { eq } from 'drizzle-orm';
 import { standingAfter, type ReservoirStanding } from '../../shared/domain/reservoir-state.ts';
+import type { TaskKind } from '../../shared/domain/task-kinds.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { reservoirEvents, reservoirs } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
 import { eventsInOrder, lastEvent, type ReservoirEventRow, type ReservoirRow } from '../queries/reservoirs.ts';
+import { reopenTasks, settleTasks } from './task-settling.ts';
 
 type NewEvent = Omit<typeof reservoirEvents.$inferInsert, 'id' | 'reservoirId' | 'by' | 'levelBeforeL'> & {
   id?: string;
@@ -40,6 +42,7 @@ export function addEvent(write: Write, reservoir: ReservoirRow, event: NewEvent)
   // It is the newest event, so what stands follows from the row alone, however long the history.
   stand(write, reservoir, standingAfter([row], reservoir.volumeL, reservoir));
   write.audit({ action: `reservoir.${DONE_WORDS[row.kind]}`, entity: 'reservoir', entityId: reservoir.id, after: row });
+  settleTasksOf(write, reservoir, row);
   return row;
 }
 
@@ -48,6 +51,25 @@ export function removeEvent(write: Write, reservoir: ReservoirRow, event: Reserv
   write.tx.delete(reservoirEvents).where(eq(reservoirEvents.id, event.id)).run();
   stand(write, reservoir, standingAfter(eventsInOrder(write.tx, reservoir.id), reservoir.volumeL));
   write.audit({ action: 'reservoir.event_undone', entity: 'reservoir', entityId: reservoir.id, before: event });
+  reopenTasks(write, event.id);
+}
+
+/** Mixes and changeovers are asked for by reservoir or by system, what is done to a vessel by the vessel alone. */
+const TASKS_OF: Partial<Record<ReservoirEventRow['kind'], TaskKind>> = {
+  refill: 'refill',
+  online: 'changeover',
+  sludge_removed: 'cleaning',
+  cleaned: 'cleaning',
+};
+
+function settleTasksOf(
+  write: Write,
+  { id: reservoirId, systemId }: ReservoirRow,
+  { id: cause, kind, at }: ReservoirEventRow,
+) {
+  const asked = TASKS_OF[kind];
+  if (asked === undefined) return;
+  settleTasks(write, { kind: asked, reservoirId, at, cause, ...(asked === 'cleaning' ? {} : { systemId }) });
 }
 
 /** @throws {DomainError} `input.invalid` at the field for more than the reservoir holds */

@@ -3,7 +3,7 @@ import type { Task } from '../../../shared/contracts/tasks.ts';
 import { auditLog, readings, taskOutcomes } from '../../../server/db/schema/index.ts';
 import { settleTasks } from '../../../server/services/task-settling.ts';
 import { givenTask } from '../../support/given-tasks.ts';
-import { givenSystem } from '../../support/given-water.ts';
+import { givenChangeOver, givenRefill, givenReservoir, givenSystem } from '../../support/given-water.ts';
 import { startFarm, type TestFarm } from '../../support/start-farm.ts';
 
 const HOUR = 3_600_000;
@@ -247,5 +247,36 @@ describe('what is logged settles the tasks that ask for it', () => {
     farm.write((write) => settleTasks(write, { ...test, systemId, at: farm.deps.clock.now() - 2 * DAY }));
 
     expect((await listed(farm)).items[0].dueOn).toBe('2026-03-02');
+  });
+
+  it('when the reading is taken back, its task is due again', async () => {
+    const farm = await startFarm();
+    const systemId = givenSystem(farm);
+    const task = givenTask(farm, { ...test, systemId });
+    const grower = await farm.as('grower');
+    const body = { systemId, values: [{ parameter: 'alkalinity', value: 8.1, unit: 'dKH' }] };
+    const logged = await grower.post('/api/readings').send(body);
+    const settled = (await listed(farm)).items[0];
+
+    await grower.delete(`/api/readings/${logged.body.items[0].id}`);
+
+    expect(settled).toMatchObject({ id: task.id, dueOn: '2026-03-03', last: { kind: 'done', by: 'Test grower' } });
+    expect((await listed(farm)).items[0]).toMatchObject({ dueOn: '2026-03-02', last: null });
+  });
+
+  it('when limewater is mixed and swapped, the tasks of the system and of the reservoir that ask for it are done', async () => {
+    const farm = await startFarm();
+    const systemId = givenSystem(farm);
+    const [reservoirId, otherId] = [givenReservoir(farm, systemId), givenReservoir(farm, systemId)];
+    const weekly = { repeat: { every: 'after_done' as const, days: 7 } };
+    const mix = givenTask(farm, { ...weekly, kind: 'refill', systemId });
+    const swap = givenTask(farm, { ...weekly, kind: 'changeover', systemId });
+    const other = givenTask(farm, { ...weekly, kind: 'refill', systemId, reservoirId: otherId });
+
+    givenRefill(farm, reservoirId);
+    givenChangeOver(farm, reservoirId);
+
+    const dueOn = new Map((await listed(farm)).items.map((task: Task) => [task.id, task.dueOn]));
+    expect([mix, swap, other].map(({ id }) => dueOn.get(id))).toEqual(['2026-03-09', '2026-03-09', '2026-03-02']);
   });
 });
