@@ -1,4 +1,4 @@
-import { and, asc, eq, gt, gte, lte } from 'drizzle-orm';
+import { and, asc, eq, gt, gte, inArray, lte } from 'drizzle-orm';
 import {
   LONGEST_TIMELINE_DAYS,
   type Timeline,
@@ -11,6 +11,7 @@ import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { Db } from '../db/client.ts';
 import { doses, items, reservoirEvents, reservoirs, waterChanges } from '../db/schema/index.ts';
 import { readingsWithError } from './reading-errors.ts';
+import { reservoirsOfSystem } from './reservoir-feeds.ts';
 import { systemUse } from './reservoir-use.ts';
 import { bandsOf, systemRow, type SystemRow } from './systems.ts';
 
@@ -101,19 +102,19 @@ function changesIn(db: Db, systemId: string, { from, to }: Span): Timeline['wate
 }
 
 function changeOversIn(db: Db, systemId: string, { from, to }: Span): Timeline['changeOvers'] {
+  const own = reservoirsOfSystem(db, systemId).map(({ id }) => id);
   return db
     .select({ at: reservoirEvents.at, code: reservoirs.code, alkalinityMeqL: reservoirEvents.alkalinityMeqL })
-    .from(reservoirs)
-    .innerJoin(
-      reservoirEvents,
+    .from(reservoirEvents)
+    .innerJoin(reservoirs, eq(reservoirs.id, reservoirEvents.reservoirId))
+    .where(
       and(
-        eq(reservoirEvents.reservoirId, reservoirs.id),
+        inArray(reservoirEvents.reservoirId, own),
         eq(reservoirEvents.kind, 'online'),
         gt(reservoirEvents.at, from),
         lte(reservoirEvents.at, to),
       ),
     )
-    .where(eq(reservoirs.systemId, systemId))
     .orderBy(asc(reservoirEvents.at))
     .all();
 }

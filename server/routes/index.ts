@@ -8,6 +8,7 @@ import { notificationRoutes } from './notification-routes.ts';
 import { alertRoutes } from './alert-routes.ts';
 import { taskRoutes } from './task-routes.ts';
 import { testMethodRoutes } from './test-method-routes.ts';
+import { systemLogRoutes } from './system-log-routes.ts';
 import { timelineRoutes } from './timeline-routes.ts';
 import { waterRoutes } from './water-routes.ts';
 import { additionRoutes } from './addition-routes.ts';
@@ -62,6 +63,7 @@ export function registerRoutes(api: Api): void {
   makeUpRoutes(api);
   waterChangePlanRoutes(api);
   timelineRoutes(api);
+  systemLogRoutes(api);
   systemRoutes(api);
   reservoirRoutes(api);
   readingRoutes(api);
