@@ -3,6 +3,7 @@ import type { Reservoir } from '@shared/contracts/reservoirs.ts';
 import { dayOf } from '@shared/domain/days.ts';
 import { systemTitle } from '@shared/domain/system-title.ts';
 import { formatClock, nearDay } from '@/formatting/format-day.ts';
+import { joinWords } from '@/formatting/plural.ts';
 import { useSessionStore } from '@/stores/session.ts';
 import { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 
@@ -14,34 +15,46 @@ export function useReservoirSentence(reservoir: Ref<Reservoir | undefined>): Com
   const litres = (value: number) => units.say('volume', value, { decimals: 0 });
   const day = (at: number) => nearDay(dayOf(at, session.timeZone), dayOf(Date.now(), session.timeZone));
 
+  function onlineWords({
+    usableL,
+    feeds,
+    emptyAt,
+    litresPerDay,
+    dueAt,
+    strengthLow,
+    systemCode,
+    systemName,
+  }: Reservoir) {
+    const fed =
+      feeds.length > 1
+        ? joinWords(feeds.map((feed) => feed.systemCode))
+        : systemTitle({ code: systemCode, name: systemName });
+    const use =
+      litresPerDay === null ? 'its use is not known until a level is logged' : `${litres(litresPerDay)} go a day`;
+    const end =
+      emptyAt === null
+        ? ''
+        : emptyAt <= Date.now()
+          ? ', so it should be empty by now'
+          : `, so it is empty ${day(emptyAt)}`;
+    const due =
+      dueAt === null || (emptyAt !== null && emptyAt <= dueAt) ? '' : ` By habit it is replaced ${day(dueAt)}.`;
+    const weak = strengthLow ? ' The last check found it weak: mix a fresh one.' : '';
+    return `Feeds ${fed} with ${litres(usableL)} left; ${use}${end}.${due}${weak}`;
+  }
+
   return computed(() => {
     if (!reservoir.value) return null;
-    const {
-      state,
-      levelL,
-      systemCode: code,
-      systemName: name,
-      emptyAt,
-      litresPerDay,
-      readyAt,
-      alkalinityMeqL,
-    } = reservoir.value;
+    const { state, levelL, usableL, readyAt, alkalinityMeqL, code, retiredAt } = reservoir.value;
+    if (retiredAt !== null) return `${code} is put away.`;
     if (state === 'settling' && readyAt !== null) {
       return `Settling until ${formatClock(readyAt, session.timeZone)}. Then draw only the clear water above the sediment.`;
     }
-    if (state === 'online') {
-      const use =
-        litresPerDay === null ? 'its use is not known until a level is logged' : `${litres(litresPerDay)} go a day`;
-      const end =
-        emptyAt === null
-          ? ''
-          : emptyAt <= Date.now()
-            ? ', so it should be empty by now'
-            : `, so it is empty ${day(emptyAt)}`;
-      return `Feeds ${systemTitle({ code, name })} with ${litres(levelL)} left; ${use}${end}.`;
-    }
-    if (levelL === 0 || state === 'spent') return 'Spent: clean out the sediment and mix again.';
+    if (state === 'online') return onlineWords(reservoir.value);
+    if (state === 'spent') return 'Spent: clean out the sediment and mix again.';
+    if (levelL === 0) return 'Empty and ready for a new mix.';
     if (alkalinityMeqL === 0) return `Holds ${litres(levelL)} without lime.`;
-    return `Ready with ${litres(levelL)}. Put it online when the one before runs low.`;
+    if (usableL === 0) return `Only ${litres(levelL)} are left, all below the intake. Clean it out and mix again.`;
+    return `Ready with ${litres(usableL)}. Put it online when the one before runs low.`;
   });
 }
