@@ -8,6 +8,7 @@ import { forgetOldTries } from '../services/sign-in-slowdown.ts';
 import { bookDosingDays } from './book-dosing.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
+import { keepDemands } from './keep-demands.ts';
 import { raiseAlerts } from './raise-alerts.ts';
 import { importReadings } from './import-readings.ts';
 import { sendAlertMails } from './send-alert-mails.ts';
@@ -36,6 +37,7 @@ const JOBS: readonly Job[] = [
   { name: 'forget old sign-in tries', everyMs: 3600 * SECOND, run: (deps) => inWrite(deps, SYSTEM, forgetOldTries) },
   { name: 'forget loose photos', everyMs: 3600 * SECOND, run: forgetLoosePhotos },
   { name: 'book steady dosing', everyMs: 600 * SECOND, run: bookDosingDays },
+  { name: 'keep demands', everyMs: 10 * SECOND, run: keepDemands },
   { name: 'raise alerts', everyMs: 60 * SECOND, run: raiseAlerts },
   { name: 'send alert mails', everyMs: 15 * SECOND, run: sendAlertMails },
   { name: 'send daily mails', everyMs: 60 * SECOND, run: sendDigests },

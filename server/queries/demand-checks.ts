@@ -8,7 +8,8 @@ import type { ParameterCode } from '../../shared/domain/units.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { CHANGE_DAYS, changeIn } from './demand-change.ts';
-import { demandNow, type SystemTrack, trackSystem } from './demand-track.ts';
+import { knownDemand } from './demand-state.ts';
+import { demandNow, type SystemTrack } from './demand-track.ts';
 import { readingsWithError } from './reading-errors.ts';
 import type { SystemRow } from './systems.ts';
 
@@ -23,7 +24,7 @@ export function checksOf(db: Db, system: SystemRow, found: SystemTrack): DemandC
   const ph = meanLately(db, system.id, 'ph', now);
   const facts: CheckFacts = {
     alkalinity: demandNow(found),
-    calcium: demandNow(trackSystem(db, system, { now, solute: 'calcium' })),
+    calcium: knownDemand(db, system, now, 'calcium').estimate,
     nitrateRise: nitrateRise(db, system.id, now),
     change: changeIn(db, system, found),
     ...{ ph, saturation: saturationOf(db, system.id, found, ph) },

@@ -9,15 +9,18 @@ import { supplyWithin, type UseInterval } from '../../shared/domain/reservoir-us
 import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
 import { carriedNow, evaporationOf } from './carried.ts';
-import { perMeqOfLimewater, type SystemSupply } from './demand-inputs.ts';
+import { perMeqOfLimewater, systemSupply, type SystemSupply } from './demand-inputs.ts';
 import { CHANGE_DAYS } from './demand-change.ts';
 import { checksOf } from './demand-checks.ts';
+import { knownDemand } from './demand-state.ts';
 import { rangeOf, type SystemTrack, trackSystem } from './demand-track.ts';
 import { systemRow, type SystemRow } from './systems.ts';
 
 /** Charts reach back at least as far as demand is compared with what it was. */
 const USUAL_HISTORY_DAYS = 90;
 const FORECAST_DAYS = 28;
+/** What is given now is told from the last two weeks; a level was read before them. */
+const CARRIED_DAYS = 28;
 
 export interface DemandQuestion {
   historyDays?: number;
@@ -57,8 +60,8 @@ export function systemDemand(
 
 /** What a system takes and is given now, alone: for lists. */
 export function currentDemand(db: Db, system: SystemRow, now: number): { demand: Demand; carried: Carried } {
-  const { supply, demand } = trackSystem(db, system, { now });
-  return { demand, carried: carriedNow(system, supply, now) };
+  const supply = systemSupply(db, system, { from: now - CARRIED_DAYS * MS_PER_DAY, now });
+  return { demand: knownDemand(db, system, now).demand, carried: carriedNow(system, supply, now) };
 }
 
 /** The days up to now on which tests before or after them told something. */

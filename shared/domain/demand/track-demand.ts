@@ -42,6 +42,8 @@ export interface DemandTrack {
   noise: DemandNoise & {
     /** Errors of tests beside those that were stated. */
     testScale: number;
+    /** What each day without a test adds to the variance of the demand: the mean of drift², at a mass of one. */
+    driftVariance: number;
   };
 }
 
@@ -147,5 +149,6 @@ function noiseOf(models: readonly Model[], weights: readonly number[]): DemandTr
     supplyError: mean(({ supplyError }) => supplyError),
     levelNoise: mean(({ levelNoise }) => levelNoise),
     testScale: mean(({ testScale }) => testScale),
+    driftVariance: mean(({ drift }) => drift ** 2),
   };
 }
