@@ -1,5 +1,13 @@
 import type { RouteRecordRaw } from 'vue-router';
 
+/** Amounts that a plan may ask for in the address of the mixing page. */
+const MIX_AMOUNTS = ['waterL', 'limeG', 'vinegarMl', 'limeGPerL', 'vinegarMlPerL'] as const;
+
+function amountIn(text: unknown): number | undefined {
+  const amount = typeof text === 'string' ? Number(text) : Number.NaN;
+  return Number.isFinite(amount) && amount >= 0 ? amount : undefined;
+}
+
 export const waterRoutes: RouteRecordRaw[] = [
   {
     path: '/water',
@@ -38,7 +46,10 @@ export const waterRoutes: RouteRecordRaw[] = [
     path: '/water/mix',
     name: 'mix-limewater',
     component: () => import('@/views/water/MixLimewaterView.vue'),
-    props: ({ query }) => ({ systemId: query.system, reservoirId: query.reservoir }),
+    props: ({ query }) => ({
+      ...{ systemId: query.system, reservoirId: query.reservoir },
+      ...Object.fromEntries(MIX_AMOUNTS.map((name) => [name, amountIn(query[name])])),
+    }),
     meta: { title: 'Mix limewater', access: 'water.log', place: 'water' },
   },
   {
@@ -46,6 +57,12 @@ export const waterRoutes: RouteRecordRaw[] = [
     name: 'readings',
     component: () => import('@/views/water/ReadingListView.vue'),
     meta: { title: 'Readings', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/methods',
+    name: 'test-methods',
+    component: () => import('@/views/water/TestMethodsView.vue'),
+    meta: { title: 'Test methods', access: 'water.read', place: 'water' },
   },
   {
     path: '/water/import',
@@ -65,5 +82,11 @@ export const waterRoutes: RouteRecordRaw[] = [
     name: 'bench',
     component: () => import('@/views/water/bench/BenchView.vue'),
     meta: { title: 'Bench', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/dosing',
+    name: 'dosing',
+    component: () => import('@/views/water/DosingView.vue'),
+    meta: { title: 'Dosing', access: 'water.read', place: 'water' },
   },
 ];
