@@ -1,15 +1,12 @@
 import type { LogReadings, TestedValue } from '../../shared/contracts/readings.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { assertReadingValue } from '../../shared/domain/reading-value.ts';
-import { suspectValue, type Suggestion } from '../../shared/domain/suspect-value.ts';
+import { LAST_COUNTS_DAYS, suspectValue, type Suggestion } from '../../shared/domain/suspect-value.ts';
 import { PARAMETERS, type ParameterCode } from '../../shared/domain/units.ts';
 import { DomainError, type FieldError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { valueBefore } from '../queries/readings.ts';
 import { kitLotRow, testMethodRow } from '../queries/test-methods.ts';
-
-/** An older value says little about this one. */
-export const LAST_COUNTS_DAYS = 14;
 
 /** A value with its unit gone and its method known. */
 export interface CheckedValue {

@@ -45,6 +45,9 @@ const HABITS: Readonly<Record<ParameterCode, Habit>> = {
   phosphate: { low: 0, high: 1, jump: 0.3 },
 };
 
+/** An older value says little about a new one. */
+export const LAST_COUNTS_DAYS = 14;
+
 const MOST_SUGGESTIONS = 3;
 const SLIPS = [0.1, 10, 0.01, 100, 0.001];
 
@@ -54,7 +57,7 @@ const SLIPS = [0.1, 10, 0.01, 100, 0.001];
  *
  * @param value as typed, in `unit`
  * @param unit name of a unit of the parameter; the canonical one when empty
- * @param last the value before, canonical; null where there is none, or none of late
+ * @param last the value before, canonical; null where there is none within {@link LAST_COUNTS_DAYS}
  */
 export function suspectValue(
   parameter: ParameterCode,
@@ -106,7 +109,10 @@ function suggest(asked: ParameterCode, value: number, unit: string, last: number
     return [{ each, far: farness(each, canonical, known) }];
   });
   likely.sort((a, b) => a.far - b.far);
-  return likely.map(({ each }) => each).slice(0, MOST_SUGGESTIONS);
+  const sorted = likely.map(({ each }) => each);
+  // Another field is thought of only where nothing fits this one.
+  const own = sorted.filter(({ parameter }) => parameter === asked);
+  return (own.length > 0 ? own : sorted).slice(0, MOST_SUGGESTIONS);
 }
 
 /** Nothing to ask: near the last value, or as coral water is where none is known. */
@@ -115,11 +121,9 @@ function isUsual(parameter: ParameterCode, canonical: number, last: number | nul
   return last === null ? canonical >= low && canonical <= high : Math.abs(canonical - last) <= jump;
 }
 
-/** Slips within the same field come before those into another one. */
-function farness({ parameter, reason }: Suggestion, canonical: number, last: number | null): number {
+function farness({ parameter }: Suggestion, canonical: number, last: number | null): number {
   const { low, high, jump } = HABITS[parameter];
-  const far = last === null ? Math.abs(canonical - (low + high) / 2) / (high - low) : Math.abs(canonical - last) / jump;
-  return far + (reason === 'parameter' ? 2 : 0);
+  return last === null ? Math.abs(canonical - (low + high) / 2) / (high - low) : Math.abs(canonical - last) / jump;
 }
 
 function labelOf(parameter: ParameterCode): string {
