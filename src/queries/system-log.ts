@@ -3,6 +3,9 @@ import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { type LogSubject, systemLogEndpoints } from '@shared/contracts/system-log.ts';
 import { callApi } from '@/api/call-api.ts';
 
+/** A page of a list that stands beside others. */
+const PAGE = 10;
+
 /** @param subject null for everything */
 export function useSystemLog(systemId: MaybeRefOrGetter<string>, subject: MaybeRefOrGetter<LogSubject | null>) {
   return useInfiniteQuery({
@@ -11,7 +14,11 @@ export function useSystemLog(systemId: MaybeRefOrGetter<string>, subject: MaybeR
       const chosen = toValue(subject);
       return callApi(systemLogEndpoints.list, {
         params: { id: toValue(systemId) },
-        query: { ...(pageParam === null ? {} : { before: pageParam }), ...(chosen ? { subject: chosen } : {}) },
+        query: {
+          limit: PAGE,
+          ...(pageParam === null ? {} : { before: pageParam }),
+          ...(chosen ? { subject: chosen } : {}),
+        },
         signal,
       });
     },

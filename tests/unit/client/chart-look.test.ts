@@ -59,8 +59,7 @@ describe('a chart', () => {
 
     const span = wrapper.emitted<[[number, number]]>('update:view')?.at(-1)?.[0] ?? [0, 0];
     expect(span[1] - span[0]).toBeCloseTo((39 * DAY) / 4, 0);
-    const back = wrapper.findAll('button').find((button) => button.text() === 'Whole period');
-    await back?.trigger('click');
+    await wrapper.get('button[aria-label="Whole period"]').trigger('click');
     expect(wrapper.emitted('update:view')?.at(-1)).toEqual([null]);
   });
 
