@@ -2,6 +2,7 @@ import { useQuery, useQueryClient } from '@tanstack/vue-query';
 import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { additionEndpoints } from '@shared/contracts/additions.ts';
 import { waterOverviewEndpoints } from '@shared/contracts/water-overview.ts';
+import type { DemandParameter } from '@shared/contracts/demand.ts';
 import { waterEndpoints } from '@shared/contracts/water.ts';
 import { callApi } from '@/api/call-api.ts';
 
@@ -10,7 +11,8 @@ export const waterKeys = {
   all: ['water'] as const,
   overview: () => ['water', 'overview'] as const,
   glance: (systemId: string) => ['water', 'glance', systemId] as const,
-  demand: (systemId: string, days: number) => ['water', 'demand', systemId, days] as const,
+  demand: (systemId: string, days: number, parameter: DemandParameter) =>
+    ['water', 'demand', systemId, days, parameter] as const,
   additions: (systemId: string) => ['water', 'additions', systemId] as const,
   items: () => ['water', 'items'] as const,
 };
@@ -30,13 +32,17 @@ export function useSystemGlance(systemId: MaybeRefOrGetter<string>) {
 }
 
 /** Waits while the system is not known yet. */
-export function useSystemDemand(systemId: MaybeRefOrGetter<string | undefined>, days: MaybeRefOrGetter<number>) {
+export function useSystemDemand(
+  systemId: MaybeRefOrGetter<string | undefined>,
+  days: MaybeRefOrGetter<number>,
+  parameter: DemandParameter = 'alkalinity',
+) {
   return useQuery({
-    queryKey: computed(() => waterKeys.demand(toValue(systemId) ?? '', toValue(days))),
+    queryKey: computed(() => waterKeys.demand(toValue(systemId) ?? '', toValue(days), parameter)),
     queryFn: ({ signal }) =>
       callApi(waterEndpoints.demand, {
         params: { id: toValue(systemId) ?? '' },
-        query: { days: toValue(days) },
+        query: { days: toValue(days), parameter },
         signal,
       }),
     enabled: () => toValue(systemId) !== undefined,

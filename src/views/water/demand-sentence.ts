@@ -14,6 +14,8 @@ export interface DemandFacts {
   ceiling: LimeCeiling | null;
   netVolumeL: number;
   alkalinity: LatestValue | undefined;
+  /** Tests that are all but left out, with their instants. */
+  flagged?: readonly { at: number }[];
 }
 
 /** How amounts are put into words, in the unit that the person chose. */
@@ -59,7 +61,7 @@ export function driftOf(known: GiveAndTake): Drift {
 export function demandSentence(facts: DemandFacts, words: DemandWords): SentencePart[] {
   const { demand, carried } = facts;
   const told = demand.enough ? uses({ demand, carried }, words) : [{ text: notEnough(demand) }];
-  return [...told, ...bandPart(facts, words), ...advicePart(facts, words)];
+  return [...told, ...bandPart(facts, words), ...advicePart(facts, words), ...flaggedPart(facts)];
 }
 
 type KnownDemand = Extract<Demand, { enough: true }>;
@@ -148,6 +150,14 @@ function bandPart({ alkalinity }: DemandFacts, words: DemandWords): SentencePart
       text: ` At ${words.level(value)} it is ${state} its band, which ${state === 'below' ? 'starts' : 'ends'} at ${words.level(end)}.`,
     },
   ];
+}
+
+/** Tests of the stretch that demand is told from; older ones matter to the chart alone. */
+function flaggedPart({ demand, flagged = [] }: DemandFacts): SentencePart[] {
+  const count = flagged.filter(({ at }) => at >= demand.from).length;
+  if (count === 0) return [];
+  const tests = count === 1 ? 'One test is too far off to count' : `${count} tests are too far off to count`;
+  return [{ text: ` ${tests}: look at the checks below.` }];
 }
 
 /** The strength of limewater that would hold the level, g of hydroxide in a litre; null where that is not known. */

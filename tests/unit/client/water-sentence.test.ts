@@ -129,6 +129,12 @@ describe('demandSentence', () => {
     expect(say({ ...aDemand(1.23, 1.18, { error: 0.09 }), ceiling })).not.toContain('would hold');
   });
 
+  it('when a test of these weeks is too far off to count, sends to the checks; older ones are not told of', () => {
+    expect(say({ flagged: [{ at: 0.5 }] })).toContain(' One test is too far off to count: look at the checks below.');
+    expect(say({ flagged: [{ at: 0.5 }, { at: 0.7 }] })).toContain(' 2 tests are too far off to count');
+    expect(say({ flagged: [{ at: -1 }] })).not.toContain('too far off');
+  });
+
   it('marks only the amount as the number that matters', () => {
     const parts = demandSentence(
       { ...aDemand(1.23, 1.18), ceiling: null, netVolumeL: 1000, alkalinity: undefined },
