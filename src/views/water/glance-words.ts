@@ -1,6 +1,6 @@
 import type { LatestValue, SystemGlance } from '@shared/contracts/water.ts';
 import type { WaterSystem } from '@shared/contracts/water-overview.ts';
-import type { TodayGroup } from '@shared/contracts/today.ts';
+import type { TodayGroup, TodayText } from '@shared/contracts/today.ts';
 import { MS_PER_DAY } from '@shared/domain/days.ts';
 import type { Tone } from '@/components/tone.ts';
 import { type DemandWords, driftOf, netOf, shownChange } from '@/views/water/demand-sentence.ts';
@@ -40,4 +40,13 @@ export function nextOf(glance: WaterSystem, now: number): string {
   }
   if (drift !== 'slips' && drift !== 'rises') return 'Nothing to do.';
   return 'See the system for the mix that would hold it.';
+}
+
+/** An alert's title without the name of the system at its start. */
+export function withoutName(title: TodayText, name: string): TodayText {
+  const [first, ...rest] = title;
+  const prefix = `${name}: `;
+  if (typeof first !== 'string' || !first.startsWith(prefix)) return title;
+  const said = first.slice(prefix.length);
+  return [said.charAt(0).toUpperCase() + said.slice(1), ...rest];
 }
