@@ -17,6 +17,14 @@ const TEMPERATURE_LIMITS = { min: -2, max: 40 } as const;
 export function seawaterDensity(salinity: number, temperatureC: number): number {
   assertWithin('Salinity', salinity, SALINITY_LIMITS.min, SALINITY_LIMITS.max);
   assertWithin('Temperature (°C)', temperatureC, TEMPERATURE_LIMITS.min, TEMPERATURE_LIMITS.max);
+  return densityByEquation(salinity, temperatureC);
+}
+
+/**
+ * The same without the guard, for who has checked the range: the constants of the carbonate system reach salinity 43, a
+ * little beyond the 42 that EOS-80 was fitted to.
+ */
+export function densityByEquation(salinity: number, temperatureC: number): number {
   return densityOf(salinity, toT68(temperatureC));
 }
 

@@ -1,7 +1,7 @@
 import { DomainError } from '../../errors.ts';
 import { ATOMIC_G_PER_MOL } from '../atomic-weights.ts';
 import { risingRoot } from '../roots.ts';
-import { seawaterDensity } from '../seawater.ts';
+import { densityByEquation } from '../seawater.ts';
 import { carbonOfCo2, carbonOfDic, restOfAlkalinity, type Sloped } from './alkalinity.ts';
 import { carbonateConstants, type CarbonateConstants } from './constants.ts';
 import { assertCarbonateInput, type CarbonateInput } from './input.ts';
@@ -149,7 +149,7 @@ function co2Of(constants: CarbonateConstants, pco2Uatm: number): number {
 /** mol/kg; measured calcium is per litre, so it goes by the density of this water. */
 function calciumOf({ calciumMgL, salinity, temperatureC }: CarbonateInput, { total }: CarbonateConstants): number {
   if (calciumMgL === undefined) return total.calcium;
-  return calciumMgL / ATOMIC_G_PER_MOL.Ca / seawaterDensity(salinity, temperatureC);
+  return calciumMgL / ATOMIC_G_PER_MOL.Ca / densityByEquation(salinity, temperatureC);
 }
 
 function impossible(): DomainError {

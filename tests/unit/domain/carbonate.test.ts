@@ -146,6 +146,11 @@ describe('at the edges', () => {
     expect(state.phTotal).toBeGreaterThan(11);
   });
 
+  it.each([19, 43])('at salinity %d takes measured calcium too', (salinity) => {
+    const state = solveCarbonate({ salinity, temperatureC: 25, alkalinityUmolKg: 2500, ph: 8.1, calciumMgL: 420 });
+    expect(state.omegaAragonite).toBeGreaterThan(1);
+  });
+
   it.each<[string, Partial<CarbonateInput>]>([
     ['salinity', { salinity: 18.9 }],
     ['salinity', { salinity: 43.1 }],

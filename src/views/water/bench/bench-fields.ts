@@ -14,7 +14,7 @@ interface BenchField {
 
 const FIELDS = {
   salinity: { label: 'Salinity', quantity: 'salinity', start: 35 },
-  temperatureC: { label: 'Water temperature', quantity: 'temperature', start: 25 },
+  temperatureC: { label: 'Temperature', quantity: 'temperature', start: 25 },
   alkalinityMeqL: { label: 'Alkalinity', quantity: 'alkalinity', start: 8 * MEQ_PER_DKH },
   calciumMgL: { label: 'Calcium', quantity: 'calcium', start: 420 },
   magnesiumMgL: { label: 'Magnesium', quantity: 'magnesium', start: 1350 },
