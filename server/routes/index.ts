@@ -17,6 +17,7 @@ import { stockSolutionRoutes } from './stock-solution-routes.ts';
 import { makeUpRoutes } from './make-up-routes.ts';
 import { waterChangePlanRoutes } from './water-change-plan-routes.ts';
 import { saltBatchRoutes } from './salt-batch-routes.ts';
+import { planRoutes } from './plan-routes.ts';
 import { listingRoutes } from './listing-routes.ts';
 import { orderRoutes } from './order-routes.ts';
 import { paymentRoutes } from './payment-routes.ts';
@@ -70,4 +71,5 @@ export function registerRoutes(api: Api): void {
   readingPhotoRoutes(api);
   readingImportRoutes(api);
   testMethodRoutes(api);
+  planRoutes(api);
 }

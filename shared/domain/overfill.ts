@@ -35,8 +35,8 @@ export interface Overfill {
 }
 
 /** The scan from below finds the first limit even where a later one would ease off again with dilution. */
-const SCAN_STEPS = 64;
-const HALVINGS = 30;
+const SCAN_STEPS = 24;
+const HALVINGS = 24;
 
 /**
  * What limewater does that runs into a system all at once, over and above what evaporated: everything rises with the
@@ -48,8 +48,7 @@ const HALVINGS = 30;
 export function overfill(risk: OverfillRisk, litres: number, limits: OverfillLimits): Overfill {
   assertRisk(risk);
   assertNotNegative('Limewater (L)', litres);
-  const effect = effectOf(risk, litres);
-  return { litres, effect, broken: effect === null ? ['beyond'] : brokenBy(effect, limits) };
+  return overfillFrom(risk, litres, limits);
 }
 
 /**
@@ -64,8 +63,9 @@ export function largestOverfill(
   atMostL: number,
   limits: OverfillLimits,
 ): { litres: number; stoppedBy: OverfillLimit | null } {
+  assertRisk(risk);
   assertAboveZero('Litres at most', atMostL);
-  const brokenAt = (litres: number) => overfill(risk, litres, limits).broken[0] ?? null;
+  const brokenAt = (litres: number) => overfillFrom(risk, litres, limits).broken[0] ?? null;
   const already = brokenAt(0);
   if (already !== null) return { litres: 0, stoppedBy: already };
   const steps = Array.from({ length: SCAN_STEPS }, (_, index) => (atMostL * (index + 1)) / SCAN_STEPS);
@@ -93,6 +93,11 @@ export function litresRunIn(drawableL: number, run?: { litresPerHour: number; ho
   assertNotNegative('Pump (L/h)', run.litresPerHour);
   assertNotNegative('Hours', run.hours);
   return Math.min(drawableL, run.litresPerHour * run.hours);
+}
+
+function overfillFrom(risk: OverfillRisk, litres: number, limits: OverfillLimits): Overfill {
+  const effect = effectOf(risk, litres);
+  return { litres, effect, broken: effect === null ? ['beyond'] : brokenBy(effect, limits) };
 }
 
 function effectOf({ water, systemVolumeL, strengthMeqL, ...risk }: OverfillRisk, litres: number): DoseEffect | null {

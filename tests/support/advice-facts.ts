@@ -2,14 +2,14 @@ import type { AdviceFacts, LimewaterFact, SupplementFact } from '../../shared/do
 import { MEQ_PER_DKH } from '../../shared/domain/units.ts';
 
 export const BICARBONATE: SupplementFact = {
-  ...{ itemId: 'alk', name: 'Bicarbonate solution', unit: 'mL', alkalinityMeq: 1.0, calciumMg: 0, cost: 0.002 },
+  ...{ itemId: 'alk', name: 'Bicarbonate solution', unit: 'mL', alkalinityMeq: 1.0, calciumMg: 0, cost: 2000 },
 };
 export const CALCIUM_CHLORIDE: SupplementFact = {
-  ...{ itemId: 'cal', name: 'Calcium solution', unit: 'mL', alkalinityMeq: 0, calciumMg: 20, cost: 0.003 },
+  ...{ itemId: 'cal', name: 'Calcium solution', unit: 'mL', alkalinityMeq: 0, calciumMg: 20, cost: 3000 },
 };
 
 const limewater: LimewaterFact = {
-  ...{ onlineMeqL: 30, temperatureC: 25, purity: 0.95, acidPercent: 5, limeCost: 0.009, vinegarCost: 0.001 },
+  ...{ onlineMeqL: 30, temperatureC: 25, purity: 0.95, acidPercent: 5, limeCost: 9000, vinegarCost: 1000 },
 };
 
 /** A 2,000 L system that uses 0.4 meq/L a day of 20 L of limewater at 30 meq/L and holds, unless said otherwise. */

@@ -33,7 +33,7 @@ export function adviseDosing(facts: AdviceFacts, rules: WaterRules, solve: Linea
   const asItIs: Advice = {
     ...{ kind, rules: [...rulesOf(kind, facts, room), ...seen] },
     ...{ targetMeqL: null, limewater: null, supplements: [], correction: null },
-    ...{ shortMeqL: 0, calciumDriftMgL: 0, ceilingShare, costPerDay: null },
+    ...{ shortMeqL: 0, calciumDriftMgL: 0, ceilingShare, costPerDayMicro: null },
   };
   return proposes(kind) ? propose(asItIs, facts, rules, room, solve) : asItIs;
 }
@@ -80,7 +80,7 @@ function propose(
     ...advice,
     ...{ rules: [...advice.rules, ...reached], targetMeqL, limewater, supplements, correction: rise ?? fall },
     ...{ shortMeqL: mix.shortMeqL, calciumDriftMgL: mix.calciumOffMgL },
-    costPerDay: pricesKnown(facts) ? mix.cost : null,
+    costPerDayMicro: pricesKnown(facts) ? Math.round(mix.cost) : null,
   };
 }
 

@@ -9,7 +9,7 @@ export interface SupplementFact {
   /** What one unit brings. */
   alkalinityMeq: number;
   calciumMg: number;
-  /** Price of one unit in the farm's currency; null where no receipt tells. */
+  /** Price of one unit, micro-units of the farm's currency; null where no receipt tells. */
   cost: number | null;
 }
 
@@ -22,7 +22,7 @@ export interface LimewaterFact {
   purity: number;
   /** Acid of the farm's vinegar, % w/v; null where it has none. */
   acidPercent: number | null;
-  /** Price of a gram and of a millilitre; null where no receipt tells. */
+  /** Price of a gram and of a millilitre, micro-units; null where no receipt tells. */
   limeCost: number | null;
   vinegarCost: number | null;
 }
@@ -135,6 +135,6 @@ export interface Advice {
   calciumDriftMgL: number;
   /** Demand as part of what saturated limewater can carry at today's evaporation. */
   ceilingShare: number | null;
-  /** In the farm's currency; null where a price is not known. */
-  costPerDay: number | null;
+  /** Micro-units of the farm's currency; null where a price is not known. */
+  costPerDayMicro: number | null;
 }
