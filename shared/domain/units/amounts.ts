@@ -7,7 +7,6 @@ const LITRES_PER_IMPERIAL_GALLON = 4.54609;
 
 export const VOLUME = {
   L: multiple('L', 1, 1),
-  m3: multiple('m³', 1000, 3),
   gal: multiple('US gal', LITRES_PER_GALLON, 1),
   'imp gal': multiple('imp. gal', LITRES_PER_IMPERIAL_GALLON, 1),
 } as const satisfies Record<string, Unit>;

@@ -32,8 +32,9 @@ export const SALINITY = {
   'sg 60F': rare(specificGravityOn('60F/60F', 'SG 60/60 °F')),
   'sg 20/4': rare(specificGravityOn('20/4', 'SG 20/4 °C')),
   'mS/cm': {
-    label: 'mS/cm at 25 °C',
+    label: 'mS/cm',
     decimals: 1,
+    note: `at ${STANDARD_WATER.temperatureC} °C`,
     toCanonical: (value, { temperatureC } = STANDARD_WATER) => salinityFromConductivity(value, temperatureC),
     fromCanonical: (value, { temperatureC } = STANDARD_WATER) => conductivityOf(value, temperatureC),
   },

@@ -59,5 +59,6 @@ describe('AppNumberField', () => {
     await wrapper.setProps({ modelValue: 35 });
     // gsw 3.6.16 C_from_SP(35, 25, 0) = 53.07103205 mS/cm.
     expect(shown()).toBe('53.07');
+    expect(wrapper.text()).toContain('at 25 °C');
   });
 });

@@ -48,7 +48,6 @@ describe('conversions', () => {
     ['nitrate', 1, 'mg/L N', 62.004 / 14.007],
     ['phosphate', 0.001, 'mmol/L', 0.09497],
     ['phosphate', 10, 'ug/L P', (0.01 * 94.97) / 30.974],
-    ['volume', 1.2, 'm3', 1200],
     ['volume', 10, 'imp gal', 45.4609],
     ['liquid', 6, 'tsp', 29.5735295625],
     ['mass', 2, 'lb', 907.18474],
