@@ -22,6 +22,7 @@ import {
 } from './furnish.ts';
 import { HEAT_DAYS, HEAT_FROM, HEAT_SYSTEM } from './heat.ts';
 import { planOrders } from './order-days.ts';
+import { planReservoirCare } from './reservoir-care-days.ts';
 import { cacheStatements } from './statement-cache.ts';
 import { DEMO_PASSWORD, FARM } from './scenario/farm.ts';
 import { WEAK_LINE } from './scenario/lines.ts';
@@ -31,6 +32,7 @@ import { LAST_LIME_DAYS, lastLime, reviewSupplies, stockUp } from './supply-days
 import type { DemoTruth } from './truth.ts';
 import { planWater, startLimewater } from './water-days.ts';
 import { waterTests } from './water-tests.ts';
+import { planWork } from './work-days.ts';
 import { timeOn, type World } from './world.ts';
 
 const EIGHTEEN_MONTHS = 546;
@@ -150,10 +152,12 @@ function live(world: World, log: (line: string) => void): void {
   agenda.put(open, staff.owner, (write) => stockUp(world, write));
   agenda.put(open + 60_000, staff.grower, (write) => startLimewater(world, write));
   planScene(world, { tests, stock, chance: chance('scene') });
+  planWork(world);
 
   const endOf = (day: Day) => timeOn(addDays(day, 1), 0) - 1;
   days.forEach((day, index) => {
     if (index > 0) planWater(world, tests, water, index, day);
+    planReservoirCare(world, index, day);
     stock.plan(index, day);
     planOrders(world, orders, index, day);
     planOffice(world, index, day);

@@ -24,6 +24,11 @@ const MOTHERS = 90;
 const NEWCOMERS = 3;
 const RACK = { rows: 8, columns: 12 };
 
+/** All reservoirs are drums of one height, covered, with their intake at the usual height. */
+const VESSEL = { heightMm: 800, intakeMm: 32, covered: true, replaceDays: 7, sludgeWeeks: 8 } as const;
+/** A square metre of open water loses this much a day in the greenhouse, L. */
+const EVAPORATION_L_PER_M2 = 4.4;
+
 export interface People {
   staff: Record<StaffKey, Actor>;
   buyers: Actor[];
@@ -82,7 +87,9 @@ export function furnishSystems(write: Write): DemoSystem[] {
   return SYSTEMS.map((spec) => {
     const bands = PARAMETERS.map(({ code, band }) => ({ parameter: code, low: band.min, high: band.max }));
     const { code, name, kind, netVolumeL, note } = spec;
-    const { id } = createSystem(write, { code, name, kind, netVolumeL, note, bands });
+    const evaporated = (spec.evaporation * netVolumeL) / EVAPORATION_L_PER_M2;
+    const surfaceM2 = evaporated > 0 ? Math.round(evaporated * 10) / 10 : null;
+    const { id } = createSystem(write, { code, name, kind, netVolumeL, surfaceM2, note, bands });
     const system: DemoSystem = {
       ...{ spec, id, racks: [], reservoirs: reservoirsOf(write, spec, id), alkalinity: 2.94, at: write.now },
       ...{ demand: 0, flow: 0, vigour: 1, truth: { code, systemId: id, netVolumeL, days: [] } },
@@ -96,8 +103,15 @@ function reservoirsOf(write: Write, { code, evaporation, netVolumeL }: SystemSpe
   if (evaporation === 0) return [];
   const volumeL = Math.ceil((evaporation * netVolumeL * 8) / 10) * 10;
   return [1, 2].map((number) => {
-    const { id } = createReservoir(write, { code: `LW-${code}${number}`, systemId, volumeL });
-    return { id, volumeL, levelL: 0, strength: 0, online: false };
+    const { id } = createReservoir(write, { code: `LW-${code}${number}`, systemId, volumeL, ...VESSEL });
+    return {
+      id,
+      volumeL,
+      belowIntakeL: (volumeL * VESSEL.intakeMm) / VESSEL.heightMm,
+      levelL: 0,
+      strength: 0,
+      online: false,
+    };
   });
 }
 

@@ -147,7 +147,7 @@ function mixStandby(world: World, write: Write, system: DemoSystem, chance: Chan
   const strength = slips
     ? wantedStrength(system, untilOnline, SLIPPED, daysOnline)
     : wantedStrength(system, untilOnline) * guess;
-  mix(world, write, reservoir, runsOut ? lastingUntil(world, system) : fullFor(system, reservoir), strength);
+  mix(world, write, reservoir, runsOut ? lastingUntil(world, system, reservoir) : fullFor(system, reservoir), strength);
 }
 
 /** Enough for a cycle and a little more. */
@@ -156,9 +156,9 @@ function fullFor(system: DemoSystem, { volumeL }: DemoReservoir): number {
 }
 
 /** What a reservoir must hold when it goes online in two days, to be nearly empty at the end. */
-function lastingUntil(world: World, system: DemoSystem): number {
+function lastingUntil(world: World, system: DemoSystem, { belowIntakeL }: DemoReservoir): number {
   const online = system.at + (MIXED_BEFORE_DAYS - 0.22) * 86_400_000;
-  return Math.round(system.flow * ((world.now - online) / 86_400_000 + 4 / 24));
+  return Math.round(belowIntakeL + system.flow * ((world.now - online) / 86_400_000 + 4 / 24));
 }
 
 function mix(world: World, write: Write, reservoir: DemoReservoir, levelL: number, strength: number): void {

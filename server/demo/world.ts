@@ -56,6 +56,7 @@ export interface DemoSystem {
 export interface DemoReservoir {
   id: string;
   volumeL: number;
+  belowIntakeL: number;
   levelL: number;
   strength: number;
   online: boolean;
