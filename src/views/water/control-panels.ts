@@ -14,7 +14,7 @@ const FEWEST_VALUES = 8;
 const WEIGHT = 0.3;
 
 /** A panel with its limits, and how those were made. */
-interface Limited {
+export interface Limited {
   panels: Panel[];
   made: { label: string; value: string }[];
 }

@@ -41,18 +41,19 @@ export function readingPanel({ parameter, points, band }: TimelineSeries, units:
 }
 
 /** Demand with its 95 % band, and as it goes on if nothing new happens. */
-export function demandPanel({ history, forecast }: SystemDemand, units: Units): Panel {
-  const shown = (rate: number) => units.toShown('alkalinity', rate);
+export function demandPanel({ parameter, history, forecast }: SystemDemand, units: Units): Panel {
+  const shown = (rate: number) => units.toShown(parameter, rate);
   const toPoint = ({ at, demand, low, high }: SystemDemand['history'][number]): LinePoint => ({
     ...{ at, value: shown(demand), low: shown(low), high: shown(high) },
   });
+  const name = parameter === 'alkalinity' ? 'demand' : `${parameter} demand`;
   return {
-    key: 'demand',
+    key: name,
     fromZero: true,
     series: [
       {
-        ...{ key: 'demand', label: 'demand, with 95 % band', unit: `${units.labelFor('alkalinity')} a day` },
-        ...{ tone: 'slate', decimals: decimalsOf('alkalinity', units) + 1 },
+        ...{ key: name, label: `${name}, with 95 % band`, unit: `${units.labelFor(parameter)} a day` },
+        ...{ tone: 'slate', decimals: decimalsOf(parameter, units) + 1 },
         line: history.map(toPoint),
         ahead: [...history.slice(-1), ...forecast].map(toPoint),
       },

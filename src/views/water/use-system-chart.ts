@@ -1,7 +1,8 @@
 import { refDebounced } from '@vueuse/core';
 import { type Ref, computed } from 'vue';
 import { MS_PER_DAY } from '@shared/domain/days.ts';
-import { PARAMETER_CODES } from '@shared/domain/units.ts';
+import type { DemandParameter } from '@shared/contracts/demand.ts';
+import { PARAMETER_CODES, type ParameterCode } from '@shared/domain/units.ts';
 import { type Lane, type Panel, momentsOf } from '@/components/charts/series.ts';
 import type { Span } from '@/components/charts/zoom.ts';
 import { type TimelineWish, useTimeline } from '@/queries/timeline.ts';
@@ -27,7 +28,16 @@ export function useSystemChart(systemId: () => string, { days, shown, limits }: 
     parameters: parameters.value,
   }));
   const { data: timeline, error, isLoading, refetch } = useTimeline(systemId, whole);
-  const { data: demand } = useSystemDemand(systemId, () => Math.min(days.value, MOST_DEMAND_DAYS));
+  const demandOf = (parameter: DemandParameter) =>
+    useSystemDemand(
+      () => (parameter === 'alkalinity' || shown.value.includes(parameter) ? systemId() : undefined),
+      () => Math.min(days.value, MOST_DEMAND_DAYS),
+      parameter,
+    ).data;
+  const [demand, calcium, magnesium] = [demandOf('alkalinity'), demandOf('calcium'), demandOf('magnesium')];
+  const estimates = computed(() =>
+    [demand.value, calcium.value, magnesium.value].flatMap((each) => (each ? [each] : [])),
+  );
 
   /** Where readings were left out, a closer look asks for all of those in the part. */
   const isThin = computed(() => timeline.value?.series.some(({ points, total }) => points.length < total) ?? false);
@@ -40,7 +50,17 @@ export function useSystemChart(systemId: () => string, { days, shown, limits }: 
   const { data: part } = useTimeline(systemId, closer);
   const drawn = computed(() => (closer.value && part.value ? part.value : timeline.value));
 
-  const readings = computed(() => drawn.value?.series.map((each) => readingPanel(each, units, demand.value)) ?? []);
+  const readings = computed(() => {
+    const estimateOf = (code: ParameterCode) => estimates.value.find(({ parameter }) => parameter === code);
+    return drawn.value?.series.map((each) => readingPanel(each, units, estimateOf(each.parameter))) ?? [];
+  });
+  /** Demands of the parameters that are shown; of alkalinity where none of them has one. */
+  const demands = computed(() => {
+    if (!shown.value.includes('demand')) return [];
+    const told = estimates.value.filter(({ history }) => history.length > 1);
+    const own = told.filter(({ parameter }) => shown.value.includes(parameter));
+    return own.length > 0 ? own : told.slice(0, 1);
+  });
   /** Limits stand on every reading of the period, so a thinned one has none. */
   const limited = computed(() => {
     const first = readings.value[0];
@@ -52,10 +72,9 @@ export function useSystemChart(systemId: () => string, { days, shown, limits }: 
     if (shown.value.includes('limewater') && timeline.value && timeline.value.limewater.length > 0) {
       list.push(limewaterPanel(timeline.value.limewater, units));
     }
-    if (showsDemand.value && demand.value) list.push(demandPanel(demand.value, units));
+    list.push(...demands.value.map((each) => demandPanel(each, units)));
     return list;
   });
-  const showsDemand = computed(() => shown.value.includes('demand') && (demand.value?.history.length ?? 0) > 1);
   const lanes = computed<Lane[]>(() =>
     shown.value.includes('acts') && timeline.value ? actLanes(timeline.value, units) : [],
   );
@@ -68,7 +87,7 @@ export function useSystemChart(systemId: () => string, { days, shown, limits }: 
   });
   const to = computed(() => {
     const now = timeline.value?.to ?? 0;
-    const last = showsDemand.value ? (demand.value?.forecast.at(-1)?.at ?? now) : now;
+    const last = Math.max(now, ...demands.value.flatMap(({ forecast }) => forecast.map(({ at }) => at)));
     return Math.max(now, Math.min(last, now + (now - from.value) * AHEAD_PART));
   });
 

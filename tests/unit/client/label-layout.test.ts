@@ -63,7 +63,7 @@ describe('timeTicks', () => {
 
     const ticks = timeTicks(from, to, 9, 'Europe/Berlin');
 
-    expect(ticks.map(({ day }) => day)).toEqual(['2026-03-28', '2026-03-29', '2026-03-30', '2026-03-31']);
+    expect(ticks.map(({ text }) => text)).toEqual(['28 Mar', '29 Mar', '30 Mar', '31 Mar']);
     expect(new Date(ticks[2]?.at ?? 0).toISOString()).toBe('2026-03-29T22:00:00.000Z');
   });
 
