@@ -1,7 +1,8 @@
 import type { Carried } from '../../shared/contracts/demand.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
+import { evaporationFromUse } from '../../shared/domain/evaporation.ts';
 import { limewaterCeiling } from '../../shared/domain/limewater.ts';
-import { litresPerDay, supplyPerDay } from '../../shared/domain/reservoir-use.ts';
+import { supplyPerDay } from '../../shared/domain/reservoir-use.ts';
 import { perMeqOfLimewater, type SystemSupply } from './demand-inputs.ts';
 import type { SystemRow } from './systems.ts';
 
@@ -21,7 +22,7 @@ export function carriedNow(system: SystemRow, supply: SystemSupply, now: number)
 
 /** Litres a day that evaporate, as far as limewater topped them up; null where no use was logged lately. */
 export function evaporationOf({ use }: SystemSupply, now: number): number | null {
-  return litresPerDay(use, now, EVAPORATION_DAYS);
+  return evaporationFromUse(use, now, { days: EVAPORATION_DAYS })?.litresPerDay ?? null;
 }
 
 function limewaterNow({ netVolumeL }: SystemRow, supply: SystemSupply, now: number): number | null {
