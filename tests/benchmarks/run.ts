@@ -4,6 +4,7 @@ import { ensureBuilt, root } from '../../server/tasks/prepare.mjs';
 import { copyOf, DATABASE, makeTemplate, removeFolder } from '../browser/support/template.ts';
 import { startServer, type RunningServer } from '../browser/support/server.ts';
 import { carbonateRates } from './chemistry.ts';
+import { demandTimes } from './demand.ts';
 import { firstLoad } from './first-load.ts';
 import { medianOf } from './measure.ts';
 import { openBenchFarm, type BenchFarm } from './farm.ts';
@@ -28,6 +29,7 @@ async function main(): Promise<void> {
       ...(await startUp(template)),
       ...weights(),
       ...carbonateRates(),
+      ...(await demandTimes(farm)),
       ...(await lookUpAndOrder(template, farm)),
     ];
     for (const [what, value] of rows) console.log(`${what.padEnd(46)} ${value.padStart(12)}`);

@@ -14,6 +14,8 @@ interface Choices {
   testSd: number;
   /** Part by which each day's supply differs from the logged one. */
   supplyError?: number;
+  /** Part of the days that are tested where tests are daily; people miss some. */
+  testedPart?: number;
   days?: number;
 }
 
@@ -22,7 +24,7 @@ interface Choices {
  * four weeks. Demand wanders by 0.008 meq/L a day each day; it grows, or falls at once, or is cut every six weeks.
  */
 export function simulateSystem(seed: number, choices: Choices): SimulatedSystem {
-  const { regime, testEveryDays, testSd, supplyError = 0.05, days = 300 } = choices;
+  const { regime, testEveryDays, testSd, supplyError = 0.05, testedPart = 0.6, days = 300 } = choices;
   const chance = chanceFrom(seed);
   const [system, truth]: [DayDemandInputs & Lists, number[]] = [
     { readings: [], supply: [], waterChanges: [], testSd },
@@ -45,7 +47,7 @@ export function simulateSystem(seed: number, choices: Choices): SimulatedSystem 
       system.waterChanges.push([day, 0.1, 2.6]);
     }
     live(0.25);
-    const isTested = testEveryDays > 1 ? day % testEveryDays === 0 : chance.even() < 0.6;
+    const isTested = testEveryDays > 1 ? day % testEveryDays === 0 : chance.even() < testedPart;
     if (isTested) {
       shown = level + testSd * chance.normal();
       system.readings.push([day + 0.25, shown]);

@@ -1,22 +1,28 @@
-import { MS_PER_DAY } from '../days.ts';
-import { sum, type Belief, type Symmetric } from '../state-space/belief.ts';
-import { observe, predict } from '../state-space/kalman.ts';
+import type { Belief, Symmetric } from '../state-space/belief.ts';
+import { observe } from '../state-space/kalman.ts';
 import type { LevelReading } from './inputs.ts';
 import type { Model } from './models.ts';
-import { transitionOf, type Node } from './moves.ts';
+import type { Move } from './moves.ts';
+
+/** What one model holds for true, and how much it counts. */
+export interface Cell {
+  readonly model: Model;
+  level: number;
+  rate: number;
+  ll: number;
+  lr: number;
+  rr: number;
+  /** Log-likelihood of the data under it, older data counting less. */
+  evidence: number;
+  /** All weights add to one. */
+  weight: number;
+}
 
 /**
- * The beliefs of all models at one time, and how likely the data so far make each. Never changed, only replaced, so that
- * an earlier one can be gone back to.
+ * All models at one time. It is changed in place and takes the recursion of `state-space/kalman.ts` line by line, since
+ * nearly all the time of an estimate goes here and new objects would cost most of it; a test holds the two together.
  */
-export interface Bank {
-  at: number;
-  beliefs: readonly Belief[];
-  /** Log-likelihood of each model beside its prior, older data counting less. */
-  evidence: readonly number[];
-  /** Weights that add to one. */
-  weights: readonly number[];
-}
+export type Bank = Cell[];
 
 /** What is known of level and rate together, over all models by their weights. */
 export interface Mixed {
@@ -26,75 +32,107 @@ export interface Mixed {
   rateVariance: number;
 }
 
-/** Evidence fades with this time, so that a farm that changes its ways is learnt anew. */
-const MEMORY_DAYS = 730;
-
-export function startBank(models: readonly Model[], at: number, belief: Belief): Bank {
-  const evidence = models.map(() => 0);
-  return { at, beliefs: models.map(() => belief), evidence, weights: weightsOf(models, evidence) };
-}
-
-/** The bank at the next node, before what is read there. */
-export function advanceBank(bank: Bank, models: readonly Model[], { at, move }: Node): Bank {
-  const beliefs = bank.beliefs.slice();
-  for (let index = 0; index < models.length; index += 1) {
-    const [belief, model] = [beliefs[index], models[index]];
-    if (belief && model) beliefs[index] = predict(belief, transitionOf(move, model));
-  }
-  return { at, beliefs, evidence: bank.evidence, weights: bank.weights };
-}
-
-/** What a reading teaches every model, and which of them it speaks for. */
-export function observeBank(bank: Bank, models: readonly Model[], reading: LevelReading, since: number): Bank {
-  const kept = Math.exp((since - bank.at) / (MEMORY_DAYS * MS_PER_DAY));
-  const beliefs = bank.beliefs.slice();
-  const evidence = bank.evidence.slice();
-  models.forEach(({ testScale }, index) => {
-    const belief = beliefs[index];
-    if (!belief) return;
-    const seen = observe(belief, reading.value, (reading.sd * testScale) ** 2);
-    beliefs[index] = seen.belief;
-    evidence[index] = (evidence[index] ?? 0) * kept + seen.logLikelihood;
+/** All models after a first reading, before which they held the same. */
+export function startBank(models: readonly Model[], start: Belief, { value, sd }: LevelReading): Bank {
+  const bank = models.map((model): Cell => {
+    const { level, rate, cov } = observe(start, value, (sd * model.testScale) ** 2).belief;
+    return { model, level, rate, ll: cov.ll, lr: cov.lr, rr: cov.rr, evidence: 0, weight: 0 };
   });
-  return { at: bank.at, beliefs, evidence, weights: weightsOf(models, evidence) };
+  weigh(bank);
+  return bank;
+}
+
+export function copyBank(bank: Bank): Bank {
+  return bank.map((cell) => ({ ...cell }));
+}
+
+/** Lets time pass up to a node. */
+export function advanceBank(bank: Bank, move: Move): void {
+  const { keep, reach, input, perDrift, perSupplyError, perLevelNoise } = move;
+  for (const cell of bank) {
+    const { driftVariance, supplyVariance, levelVariance } = cell.model;
+    const across = keep * cell.lr + reach * cell.rr;
+    cell.level = keep * cell.level + reach * cell.rate + input;
+    cell.ll =
+      keep * (keep * cell.ll + reach * cell.lr) +
+      reach * across +
+      driftVariance * perDrift.ll +
+      supplyVariance * perSupplyError +
+      levelVariance * perLevelNoise;
+    cell.lr = across + driftVariance * perDrift.lr;
+    cell.rr += driftVariance * perDrift.rr;
+  }
+}
+
+/**
+ * What a reading teaches every model, and which of them it speaks for.
+ *
+ * @param kept part of the evidence so far that still counts
+ */
+export function observeBank(bank: Bank, { value, sd }: LevelReading, kept: number): void {
+  for (const cell of bank) {
+    const variance = sd * sd * cell.model.testVariance;
+    const spread = cell.ll + variance;
+    const innovation = value - cell.level;
+    learn(cell, innovation, variance);
+    cell.evidence = cell.evidence * kept - 0.5 * (Math.log(spread) + (innovation * innovation) / spread);
+  }
+  weigh(bank);
 }
 
 /** Lets a reading in that is not trusted: with its own gap for an error, and no say about the models. */
-export function glimpse(bank: Bank, value: number, variance: number): Bank {
-  return { ...bank, beliefs: bank.beliefs.map((belief) => observe(belief, value, variance).belief) };
+export function glimpse(bank: Bank, value: number, variance: number): void {
+  for (const cell of bank) learn(cell, value - cell.level, variance);
+}
+
+/** Joseph's form, with H = [1, 0]. */
+function learn(cell: Cell, innovation: number, variance: number): void {
+  const { ll, lr, rr } = cell;
+  const spread = ll + variance;
+  const byLevel = ll / spread;
+  const byRate = lr / spread;
+  const rest = 1 - byLevel;
+  const across = lr - byRate * ll;
+  cell.level += byLevel * innovation;
+  cell.rate += byRate * innovation;
+  cell.ll = rest * rest * ll + byLevel * byLevel * variance;
+  cell.lr = rest * across + byLevel * byRate * variance;
+  cell.rr = rr - byRate * (lr + across) + byRate * byRate * variance;
 }
 
 /** Adds uncertainty to all beliefs, as after a step that nobody logged. */
-export function loosenBank(bank: Bank, by: Symmetric): Bank {
-  return { ...bank, beliefs: bank.beliefs.map((belief) => ({ ...belief, cov: sum(belief.cov, by) })) };
+export function loosenBank(bank: Bank, by: Symmetric): void {
+  for (const cell of bank) {
+    cell.ll += by.ll;
+    cell.lr += by.lr;
+    cell.rr += by.rr;
+  }
 }
 
-function weightsOf(models: readonly Model[], evidence: readonly number[]): number[] {
-  const raw = models.map(({ logPrior }, index) => logPrior + (evidence[index] ?? 0));
-  const most = Math.max(...raw);
+function weigh(bank: Bank): void {
+  let most = -Infinity;
+  for (const { model, evidence } of bank) most = Math.max(most, model.logPrior + evidence);
   let all = 0;
-  for (let index = 0; index < raw.length; index += 1) {
-    const weight = Math.exp((raw[index] ?? 0) - most);
-    raw[index] = weight;
-    all += weight;
+  for (const cell of bank) {
+    cell.weight = Math.exp(cell.model.logPrior + cell.evidence - most);
+    all += cell.weight;
   }
-  return raw.map((weight) => weight / all);
+  for (const cell of bank) cell.weight /= all;
 }
 
 /** Mean and variance over the models: of each and between them. */
-export function mixed(beliefs: readonly Belief[], weights: readonly number[]): Mixed {
-  let [level, rate, levelSquare, rateSquare] = [0, 0, 0, 0];
+export function mixed(bank: readonly Omit<Cell, 'model' | 'evidence'>[]): Mixed {
   // Squares are taken about the first model, so that nothing is lost where the mean is far from zero.
-  const { level: aroundLevel, rate: aroundRate } = beliefs[0] ?? { level: 0, rate: 0 };
-  for (let index = 0; index < beliefs.length; index += 1) {
-    const belief = beliefs[index];
-    const weight = weights[index];
-    if (!belief || !weight) continue;
-    const [offLevel, offRate] = [belief.level - aroundLevel, belief.rate - aroundRate];
+  const { level: aroundLevel, rate: aroundRate } = bank[0] ?? { level: 0, rate: 0 };
+  let [level, rate, levelSquare, rateSquare] = [0, 0, 0, 0];
+  for (const cell of bank) {
+    const { weight } = cell;
+    const offLevel = cell.level - aroundLevel;
+    const offRate = cell.rate - aroundRate;
     level += weight * offLevel;
     rate += weight * offRate;
-    levelSquare += weight * (belief.cov.ll + offLevel * offLevel);
-    rateSquare += weight * (belief.cov.rr + offRate * offRate);
+    levelSquare += weight * (cell.ll + offLevel * offLevel);
+    rateSquare += weight * (cell.rr + offRate * offRate);
   }
   return {
     level: aroundLevel + level,

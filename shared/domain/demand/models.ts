@@ -6,6 +6,11 @@ export interface Model extends DemandNoise {
   testScale: number;
   /** Log of its weight before any data, not normed. */
   logPrior: number;
+  /** The squares, worked out once. */
+  driftVariance: number;
+  supplyVariance: number;
+  levelVariance: number;
+  testVariance: number;
 }
 
 /** From corals that keep on as they are to a system in turmoil, meq/L a day per √day. */
@@ -27,6 +32,10 @@ const LOG_PART_ROUGH = Math.log(0.3);
 export function modelsFor(scale: number): Model[] {
   const of = (drift: number, testScale: number, { supplyError, levelNoise }: typeof TIDY): Model => ({
     ...{ drift: drift * scale, supplyError, levelNoise: levelNoise * scale, testScale },
+    driftVariance: (drift * scale) ** 2,
+    supplyVariance: supplyError ** 2,
+    levelVariance: (levelNoise * scale) ** 2,
+    testVariance: testScale ** 2,
     logPrior:
       -0.5 * (Math.log(drift / USUAL_DRIFT) / DRIFT_SPREAD) ** 2 - 0.5 * (Math.log(testScale) / TEST_SPREAD) ** 2,
   });

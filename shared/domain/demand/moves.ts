@@ -1,6 +1,7 @@
 import { MS_PER_DAY } from '../days.ts';
 import { carry, NOTHING, sum, type Symmetric, type Transition } from '../state-space/belief.ts';
-import type { DemandInputs, DemandNoise, LevelReading, WaterChange } from './inputs.ts';
+import type { DemandInputs, LevelReading, WaterChange } from './inputs.ts';
+import type { Model } from './models.ts';
 import { supplyClock, type Supplied } from './supply-clock.ts';
 
 /** What happens to the level between two instants, whatever the noises are. */
@@ -92,15 +93,13 @@ function changed(move: Move, { fraction, value }: WaterChange): Move {
 }
 
 /** The step of a filter with given noises. */
-export function transitionOf(move: Move, noise: DemandNoise): Transition {
-  const drift = noise.drift * noise.drift;
+export function transitionOf(move: Move, { driftVariance, supplyVariance, levelVariance }: Model): Transition {
   const { ll, lr, rr } = move.perDrift;
-  const supply = noise.supplyError * noise.supplyError * move.perSupplyError;
-  const other = supply + noise.levelNoise * noise.levelNoise * move.perLevelNoise;
+  const other = supplyVariance * move.perSupplyError + levelVariance * move.perLevelNoise;
   return {
     keep: move.keep,
     reach: move.reach,
     input: move.input,
-    noise: { ll: drift * ll + other, lr: drift * lr, rr: drift * rr },
+    noise: { ll: driftVariance * ll + other, lr: driftVariance * lr, rr: driftVariance * rr },
   };
 }

@@ -1,7 +1,7 @@
 import { NOTHING, sum, type Belief, type Transition } from '../state-space/belief.ts';
 import { observe, predict } from '../state-space/kalman.ts';
 import { smooth, type FilteredStep } from '../state-space/smoother.ts';
-import { mixed, type Mixed } from './bank.ts';
+import { mixed, type Bank, type Mixed } from './bank.ts';
 import type { Model } from './models.ts';
 import { transitionOf } from './moves.ts';
 import type { Tracked } from './track.ts';
@@ -10,23 +10,27 @@ import type { Tracked } from './track.ts';
 const COUNTS_FROM = 1e-3;
 const END: Transition = { keep: 1, reach: 0, input: 0, noise: NOTHING };
 
-/** What is known at every node from all data, before and after it. */
-export function smoothTrack(
-  tracked: readonly Tracked[],
-  models: readonly Model[],
-  weights: readonly number[],
-  start: Belief,
-): Mixed[] {
-  const used = models
-    .map((model, index) => ({ model, weight: weights[index] ?? 0 }))
-    .filter(({ weight }) => weight > COUNTS_FROM);
+/**
+ * What is known at every node from all data, before and after it.
+ *
+ * @param bank after the last node: how much each model counts
+ * @param start what was believed before the first reading
+ */
+export function smoothTrack(tracked: readonly Tracked[], bank: Bank, start: Belief): Mixed[] {
+  const used = bank.filter(({ weight }) => weight > COUNTS_FROM);
   const all = used.reduce((total, { weight }) => total + weight, 0);
-  const shares = used.map(({ weight }) => weight / all);
-  const paths = used.map(({ model }) => smooth(pathOf(tracked, model, start)));
+  const paths = used.map(({ model, weight }) => ({
+    weight: weight / all,
+    beliefs: smooth(pathOf(tracked, model, start)),
+  }));
   return tracked.map((_, index) =>
     mixed(
-      paths.flatMap((path) => path[index] ?? []),
-      shares,
+      paths.flatMap(({ weight, beliefs }) => {
+        const belief = beliefs[index];
+        if (!belief) return [];
+        const { ll, lr, rr } = belief.cov;
+        return [{ level: belief.level, rate: belief.rate, ll, lr, rr, weight }];
+      }),
     ),
   );
 }
@@ -37,7 +41,7 @@ function pathOf(tracked: readonly Tracked[], model: Model, start: Belief): Filte
   return tracked.map(({ node, flagged, expected }, index) => {
     const { reading } = node;
     if (reading) {
-      const variance = flagged ? (reading.value - (expected?.level ?? 0)) ** 2 : (reading.sd * model.testScale) ** 2;
+      const variance = flagged ? (reading.value - (expected?.level ?? 0)) ** 2 : reading.sd ** 2 * model.testVariance;
       belief = observe(belief, reading.value, variance).belief;
     }
     const filtered = belief;

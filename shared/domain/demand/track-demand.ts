@@ -1,7 +1,7 @@
 import { MS_PER_DAY } from '../days.ts';
 import { DomainError } from '../../errors.ts';
 import { NOTHING, type Belief } from '../state-space/belief.ts';
-import type { Mixed } from './bank.ts';
+import type { Bank, Mixed } from './bank.ts';
 import type { DemandInputs, DemandNoise, LevelReading } from './inputs.ts';
 import { modelsFor, type Model } from './models.ts';
 import { nodesOf } from './moves.ts';
@@ -84,17 +84,14 @@ const START_SUPPLY_DAYS = 7;
 export function trackDemand(inputs: DemandInputs, { marks = [], scale = 1 }: TrackOptions = {}): DemandTrack {
   inputs.readings.forEach(assertUsable);
   const models = modelsFor(scale);
-  const nodes = nodesOf(inputs, marks);
-  const first = nodes[0];
-  const start = startOf(inputs, first?.at ?? 0, scale);
-  const tracker = new Tracker(models, first?.at ?? 0, start);
-  for (const node of nodes) tracker.take(node);
+  const [first, ...rest] = nodesOf(inputs, marks);
+  if (!first?.reading) return { points: [], noise: noiseOf([]) };
+  const start = startOf(inputs, first.at, scale);
+  const tracker = new Tracker(models, start, { ...first, reading: first.reading });
+  for (const node of rest) tracker.take(node);
   const { tracked, bank } = tracker;
-  const smoothed = smoothTrack(tracked, models, bank.weights, start);
-  return {
-    points: tracked.map((each, index) => pointOf(each, smoothed[index] ?? each.known)),
-    noise: noiseOf(models, bank.weights),
-  };
+  const smoothed = smoothTrack(tracked, bank, start);
+  return { points: tracked.map((each, index) => pointOf(each, smoothed[index] ?? each.known)), noise: noiseOf(bank) };
 }
 
 function assertUsable({ at, value, sd }: LevelReading): void {
@@ -121,15 +118,19 @@ function startOf({ supply, massAt }: DemandInputs, at: number, scale: number): B
   };
 }
 
-function pointOf({ node, known, expected, innovation, flagged, loosened }: Tracked, smoothed: Mixed): DemandPoint {
-  const { at, reading, mass } = node;
+function pointOf(each: Tracked, smoothed: Mixed): DemandPoint {
+  const { at, reading, mass } = each.node;
   return {
-    ...{ at, reading, innovation, flagged, stepped: loosened !== null },
-    level: levelOf(known),
-    demand: demandOf(known, mass),
+    at,
+    reading,
+    level: levelOf(each.known),
+    demand: demandOf(each.known, mass),
     smoothedLevel: levelOf(smoothed),
     smoothedDemand: demandOf(smoothed, mass),
-    expected: expected && levelOf(expected),
+    expected: each.expected && levelOf(each.expected),
+    innovation: each.innovation,
+    flagged: each.flagged,
+    stepped: each.loosened !== null,
   };
 }
 
@@ -141,14 +142,13 @@ function demandOf({ rate, rateVariance }: Mixed, mass: number): Estimate {
   return { value: rate * mass, sd: Math.sqrt(Math.max(0, rateVariance)) * mass };
 }
 
-function noiseOf(models: readonly Model[], weights: readonly number[]): DemandTrack['noise'] {
-  const mean = (of: (model: Model) => number) =>
-    models.reduce((sum, model, index) => sum + (weights[index] ?? 0) * of(model), 0);
+function noiseOf(bank: Bank): DemandTrack['noise'] {
+  const mean = (of: (model: Model) => number) => bank.reduce((sum, { model, weight }) => sum + weight * of(model), 0);
   return {
     drift: mean(({ drift }) => drift),
     supplyError: mean(({ supplyError }) => supplyError),
     levelNoise: mean(({ levelNoise }) => levelNoise),
     testScale: mean(({ testScale }) => testScale),
-    driftVariance: mean(({ drift }) => drift ** 2),
+    driftVariance: mean(({ driftVariance }) => driftVariance),
   };
 }
