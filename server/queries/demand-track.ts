@@ -14,8 +14,10 @@ import { systemSupply, type SystemSupply } from './demand-inputs.ts';
 import type { Solute } from './supplement-supply.ts';
 import type { SystemRow } from './systems.ts';
 
-/** A year to show, and two months before it to learn from. */
-const LOOK_BACK_DAYS = 425;
+/** Tests of eight months tell the noises well; what is older adds next to nothing to the demand of now. */
+const LOOK_BACK_DAYS = 240;
+/** Before the first day that is asked for, there is as much to learn from. */
+const LEARNING_DAYS = 60;
 
 /** Usual sizes of demand beside that of alkalinity in meq/L: corals lay down little magnesium (no source). */
 const SCALE: Record<Solute, number> = { alkalinity: 1, calcium: CALCIUM_MG_PER_MEQ, magnesium: 2 };
@@ -35,7 +37,9 @@ export function trackSystem(
   system: SystemRow,
   { now, marks = [], solute = 'alkalinity' }: { now: number; marks?: readonly number[]; solute?: Solute },
 ): SystemTrack {
-  const supply = systemSupply(db, system, { from: now - LOOK_BACK_DAYS * MS_PER_DAY, now, solute });
+  const asked = marks.reduce((first, mark) => Math.min(first, mark), now) - LEARNING_DAYS * MS_PER_DAY;
+  const from = Math.min(asked, now - LOOK_BACK_DAYS * MS_PER_DAY);
+  const supply = systemSupply(db, system, { from, now, solute });
   const track = trackDemand(supply.demandInputs, { marks: [...marks, now], scale: SCALE[solute] });
   const trusted = track.points.filter(({ reading, flagged }) => reading && !flagged);
   return { supply, track, trusted, now, demand: demandAt(track, trusted, now) };
