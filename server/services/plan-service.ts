@@ -1,6 +1,6 @@
 import { eq } from 'drizzle-orm';
 import type { AcceptAdvice, DismissAdvice, SystemPlan } from '../../shared/contracts/plan.ts';
-import { proposes } from '../../shared/domain/dosing-plan/advice.ts';
+import { proposes } from '../../shared/domain/dosing-plan/advice-kind.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { dosingAdvice, dosingPlans } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';

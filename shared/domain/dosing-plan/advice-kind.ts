@@ -13,6 +13,11 @@ export function adviceKind(facts: AdviceFacts, rules: WaterRules, room: HourlyRo
   return outOfBand(facts) ?? missing(facts) ?? settled(facts, rules);
 }
 
+/** The kinds that name amounts, which can be taken as a plan. */
+export function proposes(kind: AdviceKind): boolean {
+  return kind === 'start' || kind === 'change' || kind === 'correct_low' || kind === 'correct_high';
+}
+
 /** Only where the tests leave no doubt: a level that may as well be inside needs no correction. */
 function outOfBand({ band, level }: AdviceFacts): AdviceKind | null {
   if (!band || !level) return null;

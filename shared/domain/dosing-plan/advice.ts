@@ -1,7 +1,7 @@
 import { CALCIUM_MG_PER_MEQ } from '../dose-effect.ts';
 import { CALCIUM_HYDROXIDE_G_PER_MOL, limewaterCeiling, USUAL_ACID_PERCENT } from '../limewater.ts';
 import { saturatedStrength } from '../limewater-ceiling.ts';
-import { adviceKind } from './advice-kind.ts';
+import { adviceKind, proposes } from './advice-kind.ts';
 import { cheapestMix, type Mix } from './cheapest-mix.ts';
 import { correctionUp, fallDown } from './correction.ts';
 import type { Advice, AdviceFacts, AdviceKind, AdviceRule, LimewaterAdvice, SupplementAdvice } from './facts.ts';
@@ -36,11 +36,6 @@ export function adviseDosing(facts: AdviceFacts, rules: WaterRules, solve: Linea
     ...{ shortMeqL: 0, calciumDriftMgL: 0, ceilingShare, costPerDayMicro: null },
   };
   return proposes(kind) ? propose(asItIs, facts, rules, room, solve) : asItIs;
-}
-
-/** The kinds that name amounts, which can be taken as a plan. */
-export function proposes(kind: AdviceKind): boolean {
-  return kind === 'start' || kind === 'change' || kind === 'correct_low' || kind === 'correct_high';
 }
 
 function propose(

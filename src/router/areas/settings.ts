@@ -20,6 +20,12 @@ export const settingsRoutes: RouteRecordRaw[] = [
     meta: { title: 'People', access: 'people.manage', place: 'settings' },
   },
   {
+    path: '/settings/water-rules',
+    name: 'water-rules',
+    component: () => import('@/views/settings/WaterRulesView.vue'),
+    meta: { title: 'Water rules', access: 'water.read', place: 'settings' },
+  },
+  {
     path: '/settings/audit-log',
     name: 'audit-log',
     component: () => import('@/views/settings/AuditLogView.vue'),

@@ -29,6 +29,13 @@ export const waterRoutes: RouteRecordRaw[] = [
     meta: { title: 'System', access: 'water.read', place: 'water' },
   },
   {
+    path: '/water/systems/:systemId/plan',
+    name: 'system-plan',
+    component: () => import('@/views/water/SystemPlanView.vue'),
+    props: true,
+    meta: { title: 'Dosing plan', access: 'water.read', place: 'water' },
+  },
+  {
     path: '/water/systems/:systemId/edit',
     name: 'system-edit',
     component: () => import('@/views/water/SystemFormView.vue'),
@@ -88,5 +95,17 @@ export const waterRoutes: RouteRecordRaw[] = [
     name: 'dosing',
     component: () => import('@/views/water/DosingView.vue'),
     meta: { title: 'Dosing', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/changes',
+    name: 'water-changes',
+    component: () => import('@/views/water/WaterChangesView.vue'),
+    meta: { title: 'Water changes', access: 'water.read', place: 'water' },
+  },
+  {
+    path: '/water/make-up',
+    name: 'make-up-water',
+    component: () => import('@/views/water/MakeUpWaterView.vue'),
+    meta: { title: 'Make-up water', access: 'water.read', place: 'water' },
   },
 ];
