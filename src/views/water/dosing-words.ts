@@ -1,4 +1,6 @@
 import type { DosingRate } from '@shared/contracts/dosing.ts';
+import type { WaterItem } from '@shared/contracts/water.ts';
+import type { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 import { formatNumber } from '@/formatting/format-number.ts';
 
 type Window = DosingRate['window'];
@@ -31,4 +33,25 @@ export function bringsADay({ brings }: DosingRate, sayAlkalinity: (meqL: number)
     brings.magnesiumMgL > 0 ? `${formatNumber(brings.magnesiumMgL, { decimals: 1 })} mg/L magnesium` : null,
   ].filter((part) => part !== null);
   return parts.length > 0 ? `${parts.join(' and ')} a day` : 'nothing that is counted';
+}
+
+/**
+ * What an amount of a supplement raises, such as "Raises 0.42 dKH and 3 mg/L calcium."
+ *
+ * @param perL of the supplement's unit, in each litre of the system
+ * @returns null where it brings nothing that is counted
+ */
+export function riseWords(
+  { strength, calciumMg, magnesiumMg }: WaterItem,
+  perL: number,
+  units: ReturnType<typeof useUnitChoicesStore>,
+): string | null {
+  const say = (quantity: 'alkalinity' | 'calcium' | 'magnesium', each: number | null, decimals: number) =>
+    each ? [units.say(quantity, each * perL, { decimals, difference: true })] : [];
+  const parts = [
+    ...say('alkalinity', strength, 2),
+    ...say('calcium', calciumMg, 1).map((text) => `${text} calcium`),
+    ...say('magnesium', magnesiumMg, 1).map((text) => `${text} magnesium`),
+  ];
+  return parts.length > 0 ? `Raises ${parts.join(' and ')}` : null;
 }
