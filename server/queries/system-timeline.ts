@@ -9,7 +9,7 @@ import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { thinSeries } from '../../shared/domain/thin-series.ts';
 import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { Db } from '../db/client.ts';
-import { doses, items, reservoirEvents, reservoirs, waterChanges } from '../db/schema/index.ts';
+import { doses, dosingRates, items, reservoirEvents, reservoirs, waterChanges } from '../db/schema/index.ts';
 import { readingsWithError } from './reading-errors.ts';
 import { reservoirsOfSystem } from './reservoir-feeds.ts';
 import { systemUse } from './reservoir-use.ts';
@@ -47,6 +47,7 @@ export function systemTimeline(
     series: query.parameters.map((parameter) => seriesOf(db, systemId, parameter, span, mostPoints)),
     limewater: limewaterIn(db, system, span),
     doses: dosesIn(db, system, span),
+    rates: ratesIn(db, systemId, span),
     waterChanges: changesIn(db, systemId, span),
     changeOvers: changeOversIn(db, systemId, span),
   };
@@ -90,6 +91,21 @@ function dosesIn(db: Db, { id, netVolumeL }: SystemRow, { from, to }: Span): Tim
     .map(({ dose: { at, amount, alkalinityMeq }, name, unit }) => ({
       ...{ at, name, amount, unit, meqL: alkalinityMeq / netVolumeL },
     }));
+}
+
+function ratesIn(db: Db, systemId: string, { from, to }: Span): Timeline['rates'] {
+  const within = (at: number | null): at is number => at !== null && at >= from && at <= to;
+  return db
+    .select({ rate: dosingRates, name: items.name, unit: items.unit })
+    .from(dosingRates)
+    .innerJoin(items, eq(items.id, dosingRates.itemId))
+    .where(and(eq(dosingRates.systemId, systemId), lte(dosingRates.fromAt, to)))
+    .all()
+    .flatMap(({ rate: { fromAt, toAt, amountPerDay }, name, unit }) => [
+      ...(within(fromAt) ? [{ at: fromAt, name, amountPerDay, unit, ended: false }] : []),
+      ...(within(toAt) ? [{ at: toAt, name, amountPerDay, unit, ended: true }] : []),
+    ])
+    .sort((a, b) => a.at - b.at);
 }
 
 function changesIn(db: Db, systemId: string, { from, to }: Span): Timeline['waterChanges'] {

@@ -32,7 +32,7 @@ const COLUMNS: CsvColumns<Line> = {
 };
 
 /** Everything of a timeline in one order of time, in canonical units. */
-function linesOf({ series, limewater, doses, waterChanges, changeOvers }: Timeline): Line[] {
+function linesOf({ series, limewater, doses, rates, waterChanges, changeOvers }: Timeline): Line[] {
   const measured = series.flatMap(({ parameter, points }) =>
     points.map(({ at, value, error, method }) => ({
       ...{ at, what: parameter, value, unit: Object.keys(UNITS[parameter])[0] ?? '', error, note: method },
@@ -45,11 +45,15 @@ function linesOf({ series, limewater, doses, waterChanges, changeOvers }: Timeli
   const dosed = doses.map(({ at, name, amount, unit, meqL }) => ({
     ...{ at, what: name, value: amount, unit, error: null, note: `${meqL.toFixed(4)} meq/L of the system` },
   }));
+  const steady = rates.map(({ at, name, amountPerDay, unit, ended }) => ({
+    ...{ at, what: name, value: amountPerDay, unit: `${unit} a day`, error: null },
+    note: ended ? 'steady dosing ended' : 'steady dosing began',
+  }));
   const changed = waterChanges.map(({ at, litres, alkalinityMeqL }) => ({
     ...{ at, what: 'water change', value: litres, unit: 'L', error: null, note: `new water ${alkalinityMeqL} meq/L` },
   }));
   const swapped = changeOvers.map(({ at, code, alkalinityMeqL }) => ({
     ...{ at, what: 'put online', value: alkalinityMeqL, unit: 'meq/L', error: null, note: code },
   }));
-  return [...measured, ...drawn, ...dosed, ...changed, ...swapped].sort((a, b) => a.at - b.at);
+  return [...measured, ...drawn, ...dosed, ...steady, ...changed, ...swapped].sort((a, b) => a.at - b.at);
 }

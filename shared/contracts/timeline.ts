@@ -58,6 +58,10 @@ export const Timeline = z.object({
   /** Limewater drawn between two looks at the level, and the alkalinity that it brought, meq/L of the system. */
   limewater: z.array(z.object({ from: instant, to: instant, litres: z.number(), meqL: z.number() })),
   doses: z.array(z.object({ at: instant, name: z.string(), amount: z.number(), unit: z.string(), meqL: z.number() })),
+  /** When steady dosing began or ended. */
+  rates: z.array(
+    z.object({ at: instant, name: z.string(), amountPerDay: z.number(), unit: z.string(), ended: z.boolean() }),
+  ),
   waterChanges: z.array(z.object({ at: instant, litres: z.number(), alkalinityMeqL: z.number() })),
   /** When another reservoir was put online, with the strength that stood in it. */
   changeOvers: z.array(z.object({ at: instant, code: z.string(), alkalinityMeqL: z.number() })),

@@ -81,7 +81,7 @@ export function limewaterPanel(limewater: Timeline['limewater'], units: Units): 
 }
 
 /** What was done to the water, a lane for each kind that was. */
-export function actLanes({ waterChanges, doses, changeOvers }: Timeline, units: Units): Lane[] {
+export function actLanes({ waterChanges, doses, rates, changeOvers }: Timeline, units: Units): Lane[] {
   const level = (meqL: number, difference: boolean) =>
     units.say('alkalinity', meqL, { difference, signed: difference });
   const lanes: Lane[] = [
@@ -96,6 +96,12 @@ export function actLanes({ waterChanges, doses, changeOvers }: Timeline, units: 
       marks: doses.map(({ at, name, amount, unit, meqL }) => ({
         at,
         note: `${name}, ${amount} ${unit}${meqL > 0 ? `, ${level(meqL, true)}` : ''}`,
+      })),
+    },
+    {
+      ...{ key: 'rates', label: 'steady dosing', tone: 'ochre', shape: 'post' },
+      marks: rates.map(({ at, name, amountPerDay, unit, ended }) => ({
+        ...{ at, note: `${name}, ${amountPerDay} ${unit} a day ${ended ? 'ended' : 'began'}` },
       })),
     },
     {
