@@ -1,7 +1,7 @@
 import { ATOMIC_G_PER_MOL } from './atomic-weights.ts';
 import type { CarbonateInput } from './carbonate/input.ts';
 import { solveCarbonate } from './carbonate/solve.ts';
-import { assertAboveZero, assertNotNegative } from './ranges.ts';
+import { assertAboveZero, assertNotNegative, assertWithin } from './ranges.ts';
 import { seawaterDensity } from './seawater.ts';
 
 /** Calcium that comes and goes with alkalinity in limewater and in coral skeleton, mg per meq. */
@@ -54,6 +54,9 @@ export interface DoseEffect {
 /** Indoor air with people in it (common practice, no source); outdoor air has about 425 µatm. */
 export const USUAL_ROOM_PCO2_UATM = 450;
 
+/** Where the constants of the carbonate system and the equation of state both hold. */
+const SALINITY_LIMITS = { min: 19, max: 42 } as const;
+
 /** One litre of the system on its way: per kilogram quantities, so that mass is kept when fresh water comes in. */
 interface Parcel {
   salinity: number;
@@ -76,6 +79,7 @@ interface Parcel {
 export function doseEffect(water: WaterState, dose: Dose, roomPco2Uatm = USUAL_ROOM_PCO2_UATM): DoseEffect {
   const { alkalinityMeqL, calciumMgL, dicMmolL = 0, acetateMeqL = 0, waterLPerL = 0 } = dose;
   assertDose({ alkalinityMeqL, calciumMgL, dicMmolL, acetateMeqL, waterLPerL });
+  assertWithin('Salinity', water.salinity, SALINITY_LIMITS.min, SALINITY_LIMITS.max);
   const start = parcelOf(water);
   const before = solveCarbonate({ ...partsOf(start), ph: water.phNbs, phScale: 'nbs' });
 

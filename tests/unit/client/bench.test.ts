@@ -109,8 +109,12 @@ describe('carbonate system on the bench', () => {
   });
 
   it('at the edge of what the constants hold for, tells the state without errors', () => {
-    const { sd, state } = benchCarbonate(given({ salinity: 42 }), chosen({ pair: 'dic-ph' }));
+    const { sd, state } = benchCarbonate(given({ salinity: 43 }), chosen({ pair: 'dic-ph' }));
     expect(sd).toBeNull();
+    expect(
+      outcomeOf({ ...start, salinity: 60 }, ['salinity'], () => benchCarbonate(given({ salinity: 60 }), choices))
+        .problem,
+    ).toBe('Salinity must be between 19 and 43.');
     expect(state.phTotal).toBeGreaterThan(7);
   });
 });

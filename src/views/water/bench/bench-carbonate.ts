@@ -1,6 +1,7 @@
 import type { CarbonateInput } from '@shared/domain/carbonate/input.ts';
 import { solveCarbonate, type CarbonateState } from '@shared/domain/carbonate/solve.ts';
 import { type Measured, propagatedSd } from '@shared/domain/error-propagation.ts';
+import { densityByEquation } from '@shared/domain/seawater.ts';
 import { testErrorOf } from '@shared/domain/test-error.ts';
 import { fromCanonical } from '@shared/domain/units.ts';
 import { DomainError } from '@shared/errors.ts';
@@ -60,17 +61,18 @@ function inputOf(
   { pair, phScale, boron }: Pick<BenchChoices, 'pair' | 'phScale' | 'boron'>,
 ): CarbonateInput {
   const { salinity, temperatureC } = given;
-  const water = { salinity, temperatureC };
+  // Without its guard: the solver's own words about the range go first.
+  const densityKgL = densityByEquation(salinity, temperatureC) / 1000;
   const known: Partial<Record<BenchNumber, CarbonateInput | Partial<CarbonateInput>>> = {
-    alkalinityMeqL: { alkalinityUmolKg: fromCanonical('alkalinity', given.alkalinityMeqL, 'umol/kg', water) },
+    alkalinityMeqL: { alkalinityUmolKg: (given.alkalinityMeqL * 1000) / densityKgL },
     dicUmolKg: { dicUmolKg: given.dicUmolKg },
     pco2Uatm: { pco2Uatm: given.pco2Uatm },
     ph: { ph: given.ph, phScale },
   };
   const [one, other] = PAIRS[pair].fields;
   return {
-    ...{ ...water, boron, calciumMgL: given.calciumMgL },
-    phosphateUmolKg: fromCanonical('phosphate', given.phosphateMgL, 'umol/kg', water),
+    ...{ salinity, temperatureC, boron, calciumMgL: given.calciumMgL },
+    phosphateUmolKg: (fromCanonical('phosphate', given.phosphateMgL, 'mmol/L') * 1000) / densityKgL,
     ...known[one],
     ...known[other],
   };

@@ -41,7 +41,9 @@ export function provideBench(): Bench {
   watch(
     () => route.query,
     ({ system, ...query }) => {
-      if (route.name !== 'bench' || JSON.stringify(query) === written) return;
+      const isOwn = JSON.stringify(query) === written;
+      written = '';
+      if (isOwn || route.name !== 'bench') return;
       const [said, chosen] = [numbersFromQuery(query), choicesFromQuery(query)];
       if (JSON.stringify(benchToQuery(said, chosen)) === JSON.stringify(benchToQuery(numbers, choices))) return;
       Object.assign(numbers, said);
