@@ -40,7 +40,7 @@ export interface SystemSupply {
   assumed: UseInterval[];
   doses: SupplyInterval[];
   waterChanges: WaterChangeRow[];
-  /** When use of limewater was first logged; null where the system has no limewater. */
+  /** When use of limewater was first logged, where that is within the period; null without limewater too. */
   knownSince: number | null;
   /** Alkalinity of what is online, meq/L; null where nothing is. */
   strengthMeqL: number | null;
@@ -60,10 +60,8 @@ export function systemSupply(
   const limewater = supplyToSystem([...logged, ...assumed], perMeqOfLimewater(solute), system.netVolumeL);
   const dosed = supplementSupply(db, system, from, now, solute);
   const changes = waterChangesBetween(db, system.id, from, now);
-  const knownSince = [...logged, ...assumed].reduce<number | null>(
-    (first, interval) => Math.min(first ?? interval.from, interval.from),
-    null,
-  );
+  const firstUse = [...logged, ...assumed].reduce((first, interval) => Math.min(first, interval.from), Infinity);
+  const knownSince = firstUse > from && firstUse < Infinity ? firstUse : null;
   const tests = readingsWithError(db, system.id, solute, Math.max(from, knownSince ?? from), now);
   const salinityAt = salinityThrough(readingsWithError(db, system.id, 'salinity', from, now));
   const atToday = levelsAtToday(salinityAt, now);

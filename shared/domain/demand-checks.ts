@@ -49,6 +49,8 @@ export type DemandCheckFound =
   | { code: 'stepped'; at: number; by: number };
 
 const Z_975 = 1.96;
+/** A ratio is called wrong beyond 99 % only: it is looked at day after day, and chance alone gets its turn. */
+const WRONG_BEYOND = 2.576 / Z_975;
 /** A ratio less sure than this part of 20.04 says nothing. */
 const SURE_ENOUGH = 0.5;
 const NITRATE_G_PER_MOL = ATOMIC_G_PER_MOL.N + 3 * ATOMIC_G_PER_MOL.O;
@@ -79,7 +81,9 @@ function ratioFound({ alkalinity, calcium, nitrateRise }: CheckFacts): DemandChe
   const ratio = calcium.value / alkalinity.value;
   const half = (Z_975 * Math.hypot(calcium.sd, ratio * alkalinity.sd)) / alkalinity.value;
   if (half > SURE_ENOUGH * CALCIUM_MG_PER_MEQ) return [];
-  if (Math.abs(ratio - CALCIUM_MG_PER_MEQ) <= half) return [{ code: 'calcium_agrees', ratio, half }];
+  const off = Math.abs(ratio - CALCIUM_MG_PER_MEQ);
+  if (off <= half) return [{ code: 'calcium_agrees', ratio, half }];
+  if (off <= WRONG_BEYOND * half) return [];
   if (ratio > CALCIUM_MG_PER_MEQ) return [{ code: 'calcium_exceeds', ratio, half }];
   const withoutCalcium = alkalinity.value - calcium.value / CALCIUM_MG_PER_MEQ;
   return [{ code: 'alkalinity_alone', ratio, half, withoutCalcium, nitrate: nitrateFound(nitrateRise) }];

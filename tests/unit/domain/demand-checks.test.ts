@@ -49,6 +49,7 @@ describe('calcium beside alkalinity: 20.04 mg for each meq of skeleton (40.078 g
 
   it.each([
     ['calcium is not tested', { alkalinity }],
+    ['their ratio is off by no more than chance does now and then', { alkalinity, calcium: { value: 6.9, sd: 0.5 } }],
     ['calcium is too loosely known', { alkalinity, calcium: { value: 2, sd: 3 } }],
     ['alkalinity demand may be none', { alkalinity: { value: 0.01, sd: 0.01 }, calcium: { value: 0.1, sd: 0.01 } }],
   ])('when %s, says nothing', (_, facts) => {
