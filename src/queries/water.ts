@@ -3,6 +3,7 @@ import { type MaybeRefOrGetter, computed, toValue } from 'vue';
 import { additionEndpoints } from '@shared/contracts/additions.ts';
 import { waterOverviewEndpoints } from '@shared/contracts/water-overview.ts';
 import type { DemandParameter } from '@shared/contracts/demand.ts';
+import { planEndpoints } from '@shared/contracts/plan.ts';
 import { waterEndpoints } from '@shared/contracts/water.ts';
 import { callApi } from '@/api/call-api.ts';
 
@@ -21,6 +22,15 @@ export function useWaterOverview() {
   return useQuery({
     queryKey: waterKeys.overview(),
     queryFn: ({ signal }) => callApi(waterOverviewEndpoints.show, { signal }),
+  });
+}
+
+/** What the dosing of every system should be: worked out apart, so that the page of all systems need not wait for it. */
+export function useAllPlans() {
+  return useQuery({
+    queryKey: ['water', 'plans'],
+    queryFn: ({ signal }) => callApi(planEndpoints.list, { signal }),
+    select: ({ items }) => new Map(items.map((plan) => [plan.systemId, plan])),
   });
 }
 

@@ -11,9 +11,9 @@ export function alkalinityOf({ latest }: SystemGlance): LatestValue | undefined 
   return latest.find(({ parameter }) => parameter === 'alkalinity');
 }
 
-/** The part of the demand that limewater carries, 0 and above; null where either is not known. */
-export function limeShareOf({ demand, carried }: SystemGlance): number | null {
-  if (!demand.enough || demand.low <= 0 || carried.limewater === null) return null;
+/** The part of the demand that limewater carries, 0 and above; null where either is not known, or none is online. */
+export function limeShareOf({ demand, carried, online }: SystemGlance): number | null {
+  if (!online || !demand.enough || demand.low <= 0 || carried.limewater === null) return null;
   return carried.limewater / demand.demand;
 }
 

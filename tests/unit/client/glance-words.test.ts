@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { Reservoir } from '@shared/contracts/reservoirs.ts';
 import type { WaterSystem } from '@shared/contracts/water-overview.ts';
 import { limeShareOf, movementOf, nextOf, withoutName } from '@/views/water/glance-words.ts';
 import type { DemandWords } from '@/views/water/demand-sentence.ts';
@@ -11,8 +12,16 @@ const WORDS: DemandWords = {
 };
 const NOW = 1_700_000_000_000;
 
+const ONLINE: Reservoir = {
+  ...{ id: 'R', code: 'LW-1', systemId: 'A', systemCode: 'A', systemName: 'Bay', volumeL: 60, state: 'online' },
+  ...{ levelL: 40, usableL: 38, belowIntakeL: 2, alkalinityMeqL: 20, readyAt: null, levelAt: NOW, litresPerDay: 6 },
+  ...{ emptyAt: null, wholeDoseMeqL: 0.8, heightMm: null, footprintCm2: null, intakeMm: null, covered: true },
+  ...{ pumpLPerH: null, replaceDays: null, sludgeWeeks: 6, onlineSince: NOW, dueAt: null, sludgeDueAt: null },
+  ...{ lastCheck: null, strengthLow: false, feeds: [], retiredAt: null, version: 1 },
+};
+
 /** A tested system that takes 1 a day, with a half width of 0.02. */
-function glance({ gets = 1 as number | null, enough = true } = {}): WaterSystem {
+function glance({ gets = 1 as number | null, enough = true, online = ONLINE as Reservoir | null } = {}): WaterSystem {
   const basis = { from: 0, to: NOW, readings: 14, windowDays: 28 };
   return {
     system: {
@@ -24,7 +33,7 @@ function glance({ gets = 1 as number | null, enough = true } = {}): WaterSystem 
       ? { enough: true, ...basis, demand: 1, low: 0.98, high: 1.02 }
       : { enough: false, ...basis, reason: 'too_few_readings' },
     carried: { limewater: gets, others: 0, waterChanges: 0 },
-    ...{ online: null, standby: 0, plugs: 0, recent: [], alerts: [] },
+    ...{ online, standby: 0, plugs: 0, recent: [], alerts: [] },
   };
 }
 
@@ -33,6 +42,7 @@ describe('a system in a few words', () => {
     expect(limeShareOf(glance({ gets: 0.62 }))).toBeCloseTo(0.62, 12);
     expect(limeShareOf(glance({ gets: null }))).toBeNull();
     expect(limeShareOf(glance({ enough: false }))).toBeNull();
+    expect(limeShareOf(glance({ online: null }))).toBeNull();
   });
 
   it.each([
@@ -41,6 +51,13 @@ describe('a system in a few words', () => {
     ['tests are too few', { enough: false }, 'not known yet'],
   ])('when %s, says what alkalinity does', (_, fields, words) => {
     expect(movementOf(glance(fields), WORDS)).toBe(words);
+  });
+
+  it('when the reservoir runs dry within the day, says what follows it', () => {
+    const online = { ...ONLINE, emptyAt: NOW + 3_600_000 };
+
+    expect(nextOf(glance({ online }), NOW)).toBe('Mix limewater: no other reservoir is ready.');
+    expect(nextOf({ ...glance({ online }), standby: 1 }, NOW)).toBe('Put the next reservoir online.');
   });
 
   it.each([
