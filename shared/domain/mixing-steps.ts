@@ -101,11 +101,18 @@ export const SPOON_ERROR = 0.25;
 /** A level US teaspoon of lime, g: 4.93 mL at a bulk density of 450–650 kg/m³. */
 export const USUAL_SPOON_G = { least: 2.2, most: 3.2 } as const;
 
+/** More spoons than this nobody counts. */
+const MOST_SPOONS = 40;
+
 /**
- * Lime in level spoons, to the nearest half.
+ * Lime in level spoons, to the nearest half, as words.
  *
- * @param spoonG what a level spoon of the farm's holds, as weighed, g
+ * @param spoonG what a level spoon of the farm's holds, as weighed, g; null where nobody weighed one
+ * @returns null where spoons tell nothing: no spoon, no lime, or far too many to count
  */
-export function levelSpoons(limeG: number, spoonG: number): number {
-  return Math.round((2 * limeG) / spoonG) / 2;
+export function spoonWords(limeG: number, spoonG: number | null): string | null {
+  if (spoonG === null) return null;
+  const spoons = Math.round((2 * limeG) / spoonG) / 2;
+  if (spoons === 0 || spoons > MOST_SPOONS) return null;
+  return `about ${spoons} level ${spoons === 1 ? 'spoon' : 'spoons'}`;
 }

@@ -7,10 +7,10 @@ import {
   USUAL_LIME_PURITY,
 } from '../../../shared/domain/limewater.ts';
 import {
-  levelSpoons,
   MIXING_CAUTIONS,
   mixingSteps,
   SPOON_ERROR,
+  spoonWords,
   type AmountWords,
 } from '../../../shared/domain/mixing-steps.ts';
 import type { Db } from '../../db/client.ts';
@@ -42,9 +42,10 @@ export async function mixingCardFile(db: Db, reservoirId: string, card: MixingCa
   const day = dayOf(now, farm.timeZone);
   const paper = new Paper(`Mixing card ${reservoir.code}`);
   drawHead(paper, { farmName: farm.name, day, reservoir });
-  drawAmounts(paper, card, spoonsOf(limewaterHabits(farm).spoonG, card.limeG));
+  const spoons = spoonWords(card.limeG, limewaterHabits(farm).spoonG);
+  drawAmounts(paper, card, spoons);
   drawOutcome(paper, card, mixOf(db, card));
-  drawSteps(paper, card, spoonsOf(limewaterHabits(farm).spoonG, card.limeG));
+  drawSteps(paper, card, spoons);
   drawCautions(paper);
   drawSignature(paper);
   return {
@@ -62,10 +63,6 @@ function mixOf(db: Db, card: MixingCard): LimewaterResult {
     purity: strengthOf('lime') ?? USUAL_LIME_PURITY,
     acidPercent: strengthOf('vinegar') ?? USUAL_ACID_PERCENT,
   });
-}
-
-function spoonsOf(spoonG: number | null, limeG: number): string | null {
-  return spoonG === null || limeG === 0 ? null : `about ${shortest(levelSpoons(limeG, spoonG), 1)} level spoons`;
 }
 
 function drawHead(

@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { levelSpoons, MIXING_CAUTIONS, mixingSteps } from '../../../shared/domain/mixing-steps.ts';
+import { MIXING_CAUTIONS, mixingSteps, spoonWords } from '../../../shared/domain/mixing-steps.ts';
 
 const WORDS = {
   litres: (amount: number) => `${amount} L`,
@@ -29,10 +29,14 @@ it('mixingSteps: says the amounts, and the spoons where one was weighed', () => 
   expect(said('24 level spoons')).toBe('Sprinkle in 60 g of lime (24 level spoons).');
 });
 
-it('levelSpoons: to the nearest half', () => {
-  expect(levelSpoons(60, 2.5)).toBe(24);
-  expect(levelSpoons(61, 2.5)).toBe(24.5);
-  expect(levelSpoons(0, 2.5)).toBe(0);
+it('spoonWords: to the nearest half', () => {
+  expect(spoonWords(60, 2.5)).toBe('about 24 level spoons');
+  expect(spoonWords(61, 2.5)).toBe('about 24.5 level spoons');
+  expect(spoonWords(2.4, 2.5)).toBe('about 1 level spoon');
+});
+
+it('spoonWords: without a weighed spoon, without lime, or beyond counting, says nothing', () => {
+  expect([spoonWords(60, null), spoonWords(0, 2.5), spoonWords(400, 2.5)]).toEqual([null, null, null]);
 });
 
 it('the cautions name the hazard, the first aid and what comes first', () => {
