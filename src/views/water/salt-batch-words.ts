@@ -1,13 +1,12 @@
-import { mdiCheck, mdiTimerSandEmpty } from '@mdi/js';
 import type { SaltBatch } from '@shared/contracts/salt-batches.ts';
 import type { Quantity } from '@shared/domain/units.ts';
 import type { Tone } from '@/components/tone.ts';
 
-export const SALT_BATCH_TAGS: Record<SaltBatch['state'], { tone: Tone; text: string; icon?: string }> = {
-  mixing: { tone: 'ochre', text: 'still mixing', icon: mdiTimerSandEmpty },
-  ready: { tone: 'kelp', text: 'ready', icon: mdiCheck },
-  used: { tone: 'plain', text: 'used up' },
-  discarded: { tone: 'plain', text: 'poured away' },
+export const SALT_BATCH_TAGS: Record<SaltBatch['state'], { tone: Tone; word: string }> = {
+  mixing: { tone: 'ochre', word: 'still mixing' },
+  ready: { tone: 'kelp', word: 'ready' },
+  used: { tone: 'plain', word: 'used up' },
+  discarded: { tone: 'plain', word: 'poured away' },
 };
 
 type Say = (quantity: Quantity, value: number, options?: { decimals?: number }) => string;
