@@ -29,6 +29,12 @@ const WEEKLY: readonly Other[] = ['calcium', 'magnesium', 'nitrate', 'phosphate'
 const PHOTOMETER_AWAY_DAYS = 35;
 const TESTED_ELSEWHERE = [19, 5];
 
+/** How often a test is done twice, and how far the two lie from their mean then; canonical. */
+const TWICE: Partial<Record<ParameterCode, { chance: number; apart: number }>> = {
+  calcium: { chance: 0.2, apart: 5 },
+  nitrate: { chance: 0.1, apart: 0.2 },
+};
+
 /** The morning's tests of one system: those that are due on this day, with the errors that tests have. */
 export interface WaterTests {
   /** @returns the alkalinity that the test showed, or null where none was due */
@@ -38,6 +44,7 @@ export interface WaterTests {
 export function waterTests(world: World): WaterTests {
   const write = readingWriter(world.sqlite, world.deps.newId);
   const chance = world.chance('tests');
+  const doubles = world.chance('tests done twice');
   const drift = new Map(world.systems.map((system) => [system, driftOf(world, system)]));
 
   return {
@@ -45,15 +52,18 @@ export function waterTests(world: World): WaterTests {
       advance(system, at);
       system.truth.days.push({ day, demandMeqLPerDay: system.demand, alkalinityMeqL: system.alkalinity });
       const values = drift.get(system)?.(index) ?? new Map<Other, number>();
-      const log = (parameter: ParameterCode, value: number, method: string, note = '') =>
-        write({ systemId: system.id, parameter, value, takenAt: at, method, note }, by, system.spec.code);
+      const log = (parameter: ParameterCode, value: number) => {
+        const apart = doubles.happens(TWICE[parameter]?.chance ?? 0) ? (TWICE[parameter]?.apart ?? 0) : 0;
+        const reading = { systemId: system.id, parameter, value, takenAt: at, note: '', apart };
+        write(reading, world.kits[parameter], by, system.spec.code);
+      };
 
       for (const [parameter, value] of values) {
-        if (isDue(world, system, parameter, index, day)) log(parameter, measured(parameter, value, chance), '');
+        if (isDue(world, system, parameter, index, day)) log(parameter, measured(parameter, value, chance));
       }
       if (!isTested(world, system, index, day)) return null;
       const shown = measured('alkalinity', system.alkalinity, chance, errorsOf(world, system, index));
-      log('alkalinity', shown, 'Photometer');
+      log('alkalinity', shown);
       return shown;
     },
   };

@@ -9,6 +9,7 @@ import { FARM, type StaffKey } from './scenario/farm.ts';
 import type { LineSpec } from './scenario/lines.ts';
 import type { ItemKey, ItemSpec } from './scenario/supplies.ts';
 import type { SystemSpec } from './scenario/systems.ts';
+import type { ParameterCode } from '../../shared/domain/units.ts';
 import type { DemoTruth, SystemTruth } from './truth.ts';
 
 /** The whole simulated farm: the records it keeps (through `deps`) and what is really so (the rest). */
@@ -25,6 +26,7 @@ export interface World {
   buyers: readonly Actor[];
   items: Record<ItemKey, DemoItem>;
   systems: readonly DemoSystem[];
+  kits: DemoKits;
   lines: readonly DemoLine[];
   mothers: DemoMother[];
   batches: DemoBatch[];
@@ -70,6 +72,18 @@ export interface DemoRack {
   free: number;
   withheld: boolean;
 }
+
+/** What a parameter is tested with now. */
+export interface DemoKit {
+  methodId: string;
+  method: string;
+  unit: string;
+  repeatabilitySd: number;
+  kitLotId: string | null;
+  /** The last check, and how much too high it found the kit to read. */
+  check: { id: string; bias: number; biasSd: number } | null;
+}
+export type DemoKits = Record<ParameterCode, DemoKit>;
 
 export interface DemoLine {
   spec: LineSpec;
