@@ -29,6 +29,7 @@ import { WEAK_LINE } from './scenario/lines.ts';
 import { LAST_HOURS, planScene } from './scene.ts';
 import { ROUGH_DAY, stockWork } from './stock-days.ts';
 import { LAST_LIME_DAYS, lastLime, reviewSupplies, stockUp } from './supply-days.ts';
+import { furnishTestKits, planSlips, planTestKits } from './test-kits.ts';
 import type { DemoTruth } from './truth.ts';
 import { planWater, startLimewater } from './water-days.ts';
 import { waterTests } from './water-tests.ts';
@@ -112,6 +113,7 @@ function furnish(
       const mothers = furnishMothers(write, { systems, lines }, chance('mothers'));
       furnishListings(write, lines);
       const items = furnishSupplies(write);
+      const kits = furnishTestKits(write);
       const truth: DemoTruth = {
         ...{ seed, firstDay, lastDay, losses: {}, weakLineCode: WEAK_LINE, roughDay: addDays(lastDay, -ROUGH_DAY) },
         systems: systems.map((system) => system.truth),
@@ -132,6 +134,7 @@ function furnish(
         days,
         ...people,
         items,
+        kits,
         systems,
         lines,
         mothers,
@@ -153,6 +156,8 @@ function live(world: World, log: (line: string) => void): void {
   agenda.put(open + 60_000, staff.grower, (write) => startLimewater(world, write));
   planScene(world, { tests, stock, chance: chance('scene') });
   planWork(world);
+  planTestKits(world);
+  planSlips(world);
 
   const endOf = (day: Day) => timeOn(addDays(day, 1), 0) - 1;
   days.forEach((day, index) => {
