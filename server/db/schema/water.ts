@@ -296,5 +296,8 @@ export const reservoirEvents = sqliteTable(
     covered: integer('covered', { mode: 'boolean' }),
     note: text('note').notNull().default(''),
   },
-  (table) => [index('reservoir_event_order').on(table.reservoirId, table.at)],
+  (table) => [
+    index('reservoir_event_order').on(table.reservoirId, table.at),
+    index('reservoir_event_kind').on(table.reservoirId, table.kind, table.at),
+  ],
 );

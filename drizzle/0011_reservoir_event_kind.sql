@@ -1,0 +1,1 @@
+CREATE INDEX `reservoir_event_kind` ON `reservoir_event` (`reservoir_id`,`kind`,`at`);
