@@ -1,3 +1,4 @@
+import { scaleLinear } from 'd3-scale';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { dayRows, tableHeads } from '../../../src/components/charts/chart-table.ts';
@@ -11,6 +12,7 @@ import {
   visible,
 } from '../../../src/components/charts/series.ts';
 import { stackOf } from '../../../src/components/charts/stack.ts';
+import { valueTicks } from '../../../src/components/charts/value-ticks.ts';
 import { timeTicks } from '../../../src/components/charts/time-ticks.ts';
 
 const DAY = 86_400_000;
@@ -64,6 +66,23 @@ describe('the scale of a panel', () => {
 
   it('when nothing is in sight, is still a scale', () => {
     expect(rangeOf(aPanel({ points: [] }), [at(0), at(1)])).toEqual([0, 1]);
+  });
+});
+
+describe('the words beside a scale', () => {
+  it('are round, two or more, and told apart by their decimals, whatever the scale', () => {
+    fc.assert(
+      fc.property(
+        fc.double({ min: -5000, max: 5000, noNaN: true }),
+        fc.double({ min: 0.001, max: 3000, noNaN: true }),
+        fc.integer({ min: 2, max: 4 }),
+        (least, length, wanted) => {
+          const ticks = valueTicks(scaleLinear([least, least + length], [96, 0]), wanted);
+          expect(ticks.length).toBeGreaterThan(1);
+          expect(new Set(ticks.map(({ text }) => text)).size).toBe(ticks.length);
+        },
+      ),
+    );
   });
 });
 
