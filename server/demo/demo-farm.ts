@@ -21,14 +21,18 @@ import {
   furnishSystems,
 } from './furnish.ts';
 import { HEAT_DAYS, HEAT_FROM, HEAT_SYSTEM } from './heat.ts';
+import { planMistypedTest } from './mistyped-test.ts';
 import { planOrders } from './order-days.ts';
 import { planReservoirCare } from './reservoir-care-days.ts';
+import { planAnswers } from './plan-days.ts';
 import { cacheStatements } from './statement-cache.ts';
 import { DEMO_PASSWORD, FARM } from './scenario/farm.ts';
 import { WEAK_LINE } from './scenario/lines.ts';
 import { LAST_HOURS, planScene } from './scene.ts';
 import { ROUGH_DAY, stockWork } from './stock-days.ts';
 import { LAST_LIME_DAYS, lastLime, reviewSupplies, stockUp } from './supply-days.ts';
+import { planNewWater } from './new-water-days.ts';
+import { planSupplements } from './supplement-days.ts';
 import { furnishTestKits, planSlips, planTestKits } from './test-kits.ts';
 import type { DemoTruth } from './truth.ts';
 import { planWater, startLimewater } from './water-days.ts';
@@ -154,10 +158,14 @@ function live(world: World, log: (line: string) => void): void {
   const open = timeOn(world.truth.firstDay, 7 * 60 + 15);
   agenda.put(open, staff.owner, (write) => stockUp(world, write));
   agenda.put(open + 60_000, staff.grower, (write) => startLimewater(world, write));
+  planSupplements(world);
+  planNewWater(world);
   planScene(world, { tests, stock, chance: chance('scene') });
   planWork(world);
+  planAnswers(world);
   planTestKits(world);
   planSlips(world);
+  planMistypedTest(world);
 
   const endOf = (day: Day) => timeOn(addDays(day, 1), 0) - 1;
   days.forEach((day, index) => {

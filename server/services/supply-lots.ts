@@ -104,7 +104,7 @@ export function addMadeLot(
 ): typeof lots.$inferSelect {
   const { currency } = farmOf(write.tx);
   const row = addLot(write, { ...lot, expiresOn: null, costMinor: minorFromMicro(lot.costMicro, currency) });
-  write.audit({ action: 'lot.made', entity: 'lot', entityId: row.id, after: row });
+  write.audit({ action: 'lot.received', entity: 'lot', entityId: row.id, after: row });
   return row;
 }
 
