@@ -7,6 +7,8 @@ import { testErrorOf } from '../../shared/domain/test-error.ts';
 import type { Db } from '../db/client.ts';
 import { tasks } from '../db/schema/index.ts';
 import { farmOf } from './farm.ts';
+import { demandChangeOf } from './demand-change.ts';
+import { overfillOf } from './overfill.ts';
 import { latestReadings, readingsBetween } from './readings.ts';
 import { listReservoirs } from './reservoirs.ts';
 import { bandsOf, type SystemRow } from './systems.ts';
@@ -16,13 +18,48 @@ const LOOK_BACK_DAYS = 28;
 /** Kinds of the alerts that are open, by subject: what is open ends later than it would begin. */
 export type OpenKinds = ReadonlyMap<string, AlertKind>;
 
-/** Everything about a system that should be known now. */
+/** Everything about a system that should be known now, but for its demand. */
 export function conditionsOf(db: Db, system: SystemRow, now: number, open: OpenKinds): Condition[] {
   if (system.retiredAt !== null) return [];
   return [
+    ...overfillConditions(db, system, now),
     ...levelConditions(db, system, now, open),
     ...testConditions(db, system, now),
     ...reservoirConditions(db, system, now, open),
+  ];
+}
+
+/** Whether demand changed by more than can be explained. It takes long to work out and changes slowly. */
+export function demandConditions(db: Db, system: SystemRow, now: number): Condition[] {
+  const change = system.retiredAt === null ? demandChangeOf(db, system, now) : null;
+  if (!change || change.direction === 'none') return [];
+  const { now: is, expected, half, since } = change;
+  return [
+    {
+      ...{ subject: `demand:${system.id}`, urgency: 'today', measure: Math.abs(is - expected) / half },
+      facts: { kind: 'demand_changed', expected, now: is, half, since },
+    },
+  ];
+}
+
+/** A standing risk: told once, and quiet when somebody knows. */
+function overfillConditions(db: Db, { id }: SystemRow, now: number): Condition[] {
+  const { reservoir, litres, effect, broken, largest } = overfillOf(db, id, now);
+  if (!reservoir?.isOnline || !effect || broken.length === 0) return [];
+  const { before, atOnce } = effect;
+  const changeMeqL = atOnce.alkalinityMeqL - before.alkalinityMeqL;
+  return [
+    {
+      ...{ subject: `overfill:${id}`, urgency: 'soon', measure: 0, reservoirId: reservoir.id },
+      facts: {
+        kind: 'overfill_risk',
+        code: reservoir.code,
+        litres,
+        changeMeqL,
+        ph: atOnce.phNbs,
+        harmlessL: largest?.litres || null,
+      },
+    },
   ];
 }
 
@@ -84,7 +121,8 @@ function limewaterOff(systemId: string, ready: Reservoir): Condition {
 function runsEmpty(online: Reservoir, ready: Reservoir | undefined, now: number, open: OpenKinds): Condition[] {
   const { id: reservoirId, code, emptyAt } = online;
   const subject = `empty:${reservoirId}`;
-  const state = emptyAt === null ? null : emptying(emptyAt, now, open.has(subject));
+  const state =
+    emptyAt === null ? null : emptying(emptyAt, now, { isOpen: open.has(subject), isOtherReady: ready !== undefined });
   if (emptyAt === null || state === null) return [];
   const facts = { kind: 'reservoir_empty', code, emptyAt, readyCode: ready?.code ?? null } as const;
   return [{ subject, reservoirId, ...state, facts }];

@@ -50,7 +50,7 @@ export function alertWords(facts: AlertFacts, system: string, now: number): Aler
         detail: [`It was due ${lengthWords(facts.dueAt, now)} ago, by the days that you let one run.`],
       };
     case 'overfill_risk':
-      return { title: [`${facts.code} holds more than ${system} could take at once`], detail: [facts.reason] };
+      return overfillRisk(facts, system);
   }
 }
 
@@ -101,7 +101,7 @@ function outOfBand(facts: Facts<'out_of_band'>, system: string): AlertWords {
   const isLow = value < (low + high) / 2;
   const edge = { quantity: parameter, value: isLow ? low : high };
   return {
-    title: [`${system}: ${wordOf(parameter)} `, { quantity: parameter, value }],
+    title: [parameter === 'ph' ? `${system}: ` : `${system}: ${wordOf(parameter)} `, { quantity: parameter, value }],
     detail: isOut
       ? [
           `${isLow ? 'Below' : 'Above'} its band, which ${isLow ? 'begins' : 'ends'} at `,
@@ -141,23 +141,38 @@ function changeWords(parameter: ParameterCode, change: SeenChange | null): Today
   ];
 }
 
-function demandChanged(
-  { before, now: after, half, since }: Facts<'demand_changed'>,
-  system: string,
-  now: number,
-): AlertWords {
-  const up = after > before;
+function demandChanged(facts: Facts<'demand_changed'>, system: string, now: number): AlertWords {
+  const { expected, now: is, half, since } = facts;
+  const up = is > expected;
   const amount = (value: number) => ({ quantity: 'alkalinity' as const, value, difference: true });
   return {
-    title: [`${system}: demand is ${up ? 'up' : 'down'} by `, amount(Math.abs(after - before)), ' a day'],
+    title: [`${system}: demand is ${up ? 'up' : 'down'} by `, amount(Math.abs(is - expected)), ' a day'],
     detail: [
-      'From ',
-      amount(before),
-      ' to ',
-      amount(after),
-      ' a day, ± ',
+      'By its stock and growth it should be ',
+      amount(expected),
+      '; it is ',
+      amount(is),
+      ', ± ',
       amount(half),
-      `, over ${lengthWords(since, now)}; more than stock explains. ${up ? 'Look for precipitation and test again.' : 'Look at the corals and at temperature.'}`,
+      `, over ${lengthWords(since, now)}. `,
+      up ? 'Look for precipitation, then test again.' : 'Look at the corals and at temperature.',
+    ],
+  };
+}
+
+function overfillRisk({ code, litres, changeMeqL, ph, harmlessL }: Facts<'overfill_risk'>, system: string): AlertWords {
+  const volume = (value: number) => ({ quantity: 'volume' as const, value });
+  return {
+    title: [`${code} holds more than ${system} could take at once`],
+    detail: [
+      'If the top-off sticks, ',
+      volume(litres),
+      ' raise alkalinity by ',
+      { quantity: 'alkalinity', value: changeMeqL, difference: true },
+      ' and pH to ',
+      { quantity: 'ph', value: ph },
+      '. Fit a second, independent cut-off',
+      ...(harmlessL === null ? ['.'] : [', or keep at most ', volume(harmlessL), ' in it.']),
     ],
   };
 }

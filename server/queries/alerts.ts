@@ -82,7 +82,8 @@ function toAlert({ alert, system }: { alert: AlertRow; system: { code: string; n
   const { id, kind, systemId, reservoirId, urgency, facts, openedAt, acknowledgedAt, acknowledgedBy, closedAt } = alert;
   return {
     ...{ id, kind, systemId, systemCode: system.code, reservoirId, urgency },
-    ...alertWords(facts, systemTitle(system), closedAt ?? now),
+    // What ended is told as it was seen last.
+    ...alertWords(facts, systemTitle(system), closedAt === null ? now : alert.lastSeenAt),
     ...{ openedAt, acknowledgedAt, acknowledgedBy, closedAt },
     quietUntil: acknowledgedAt === null || closedAt !== null ? [] : quietWords(facts),
     ending: endingWords(facts, alert.closedBy),

@@ -4,30 +4,43 @@ import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { alerts } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
-import { conditionsOf } from '../queries/alert-conditions.ts';
+import { conditionsOf, demandConditions } from '../queries/alert-conditions.ts';
 import { latestReadings } from '../queries/readings.ts';
 import { systemRow } from '../queries/systems.ts';
 import type { AlertRow } from '../queries/alerts.ts';
 
 /**
  * Brings the alerts of a system up to what holds now: opens, worsens and closes them. Call it in the write that may
- * change what holds; a job does it for what only time changes.
+ * change what holds; a job does it for what only time changes, and {@link weighDemand} for demand.
  */
 export function evaluateAlerts(write: Write, systemId: string): readonly Condition[] {
-  const open = openAlerts(write.tx, systemId);
+  const open = openAlerts(write.tx, systemId).filter(({ kind }) => kind !== 'demand_changed');
   const kinds = new Map(open.map(({ subject, kind }) => [subject, kind]));
   const conditions = conditionsOf(write.tx, systemRow(write.tx, systemId), write.now, kinds);
+  bringUpToDate(write, systemId, open, conditions);
+  return conditions;
+}
+
+/** The same for the alert about a system's demand, which takes longer to work out. */
+export function weighDemand(write: Write, systemId: string): readonly Condition[] {
+  const open = openAlerts(write.tx, systemId).filter(({ kind }) => kind === 'demand_changed');
+  const conditions = demandConditions(write.tx, systemRow(write.tx, systemId), write.now);
+  bringUpToDate(write, systemId, open, conditions);
+  return conditions;
+}
+
+function bringUpToDate(
+  write: Write,
+  systemId: string,
+  open: readonly AlertRow[],
+  conditions: readonly Condition[],
+): void {
   for (const condition of conditions) {
-    meet(
-      write,
-      systemId,
-      open.find(({ subject }) => subject === condition.subject),
-      condition,
-    );
+    const alert = open.find(({ subject }) => subject === condition.subject);
+    meet(write, systemId, alert, condition);
   }
   const held = new Set(conditions.map(({ subject }) => subject));
   for (const alert of open.filter(({ subject }) => !held.has(subject))) close(write, alert);
-  return conditions;
 }
 
 /** The answer of a change to a system's water or limewater, once the alerts about it are up to date. */
@@ -38,8 +51,9 @@ export function withAlerts<T>(write: Write, systemId: string, answer: T): T {
 
 /** Says that someone knows: it is quiet until it is worse by a step. */
 export function acknowledgeAlert(write: Write, alertId: string): void {
-  const { systemId, subject } = alertRow(write.tx, alertId);
-  const current = evaluateAlerts(write, systemId).find((condition) => condition.subject === subject);
+  const { systemId, subject, kind } = alertRow(write.tx, alertId);
+  const evaluate = kind === 'demand_changed' ? weighDemand : evaluateAlerts;
+  const current = evaluate(write, systemId).find((condition) => condition.subject === subject);
   const alert = alertRow(write.tx, alertId);
   if (alert.closedAt !== null)
     throw new DomainError('rule.refused', 'This has ended meanwhile. Nothing is left to do.');

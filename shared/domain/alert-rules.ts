@@ -33,14 +33,15 @@ export type AlertFacts =
       change: SeenChange | null;
     })
   | { kind: 'drifting'; parameter: ParameterCode; value: number; at: number; leavesAt: number; change: SeenChange }
-  /** Demand per day before and now, with half of the 95 % interval of the difference. */
-  | { kind: 'demand_changed'; before: number; now: number; half: number; since: number }
+  /** Demand per day as stock and growth would have it and as it is, with half of the 95 % interval of the difference. */
+  | { kind: 'demand_changed'; expected: number; now: number; half: number; since: number }
   | { kind: 'test_overdue'; parameter: ParameterCode; lastAt: number | null }
   | { kind: 'reservoir_empty'; code: string; emptyAt: number; readyCode: string | null }
   | { kind: 'limewater_off'; code: string }
   | { kind: 'strength_low'; code: string; strengthLeft: number }
   | { kind: 'replacement_due'; code: string; dueAt: number }
-  | { kind: 'overfill_risk'; code: string; litres: number; reason: string };
+  /** What all of a reservoir at once would do, and how much of it would do no harm. */
+  | { kind: 'overfill_risk'; code: string; litres: number; changeMeqL: number; ph: number; harmlessL: number | null };
 
 /** What ended an alert: the test that shows it, or that what it was about is so no more. */
 export type AlertEnd = { by: 'reading'; parameter: ParameterCode; value: number; at: number } | { by: 'change' };
@@ -84,17 +85,19 @@ const EMPTY_SOON_MS = 48 * MS_PER_HOUR;
 const EMPTY_CALM_MS = 54 * MS_PER_HOUR;
 
 /**
- * How urgent it is that a reservoir runs empty, and in which of four steps it is: two days, a day, six hours, empty.
+ * How urgent it is that a reservoir runs empty, and in which of four steps it is: two days, a day, six hours, empty. Where
+ * another stands ready, two days ahead is no news.
  *
+ * @param isOpen whether it was told of already
  * @returns null while it lasts for longer
  */
 export function emptying(
   emptyAt: number,
   now: number,
-  isOpen: boolean,
+  { isOpen, isOtherReady }: { isOpen: boolean; isOtherReady: boolean },
 ): { urgency: AlertUrgency; measure: number } | null {
   const left = emptyAt - now;
-  if (left > (isOpen ? EMPTY_CALM_MS : EMPTY_SOON_MS)) return null;
+  if (left > (isOpen ? EMPTY_CALM_MS : isOtherReady ? EMPTY_TODAY_MS : EMPTY_SOON_MS)) return null;
   if (left > EMPTY_TODAY_MS) return { urgency: 'soon', measure: 0 };
   if (left > EMPTY_NOW_MS) return { urgency: 'today', measure: 1 };
   return { urgency: 'now', measure: left > 0 ? 2 : 3 };

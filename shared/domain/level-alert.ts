@@ -30,11 +30,17 @@ const WARN_BEFORE_MS = 3 * MS_PER_DAY;
 const CALM_BEFORE_MS = 4 * MS_PER_DAY;
 /** Drift is told from the last days, or for what is tested weekly from the last weeks. */
 const DRIFT_WINDOWS = [
-  { lengthMs: 4 * MS_PER_DAY, spanMs: MS_PER_DAY, readings: 2 },
+  { lengthMs: 4 * MS_PER_DAY, spanMs: 1.5 * MS_PER_DAY, readings: 2 },
   { lengthMs: 28 * MS_PER_DAY, spanMs: 7 * MS_PER_DAY, readings: 3 },
 ] as const;
-/** One-sided 95 % of a normal error. */
-const SURE_Z = 1.645;
+const FELT_AT_ONCE: readonly ParameterCode[] = ['temperature', 'salinity', 'ph'];
+/**
+ * What corals and evaporation move steadily. The others swing with the hour and the feeding, or are tested too seldom for
+ * a few days' warning.
+ */
+const DRIFTING: readonly ParameterCode[] = ['alkalinity', 'calcium', 'magnesium', 'salinity'];
+/** A normal error goes beyond this once in 200 times on one side: looked at daily, chance must rarely pass for a drift. */
+const SURE_Z = 2.58;
 /** A step worse is more than what a test may be off: half of its 95 % interval. */
 const STEP_SDS = 1.96;
 
@@ -60,7 +66,7 @@ function outOfBand(input: LevelInput, last: SeenValue): Omit<Condition, 'subject
   const step = Math.max(testSd * STEP_SDS, Number.EPSILON);
   const drift = driftOf(input);
   return {
-    urgency: outside > 0 ? 'now' : 'today',
+    urgency: isPressing(parameter, outside, step) ? 'now' : 'today',
     measure: outside / step,
     facts: {
       ...{ kind: 'out_of_band', parameter, value: last.value, at: last.at, ...band },
@@ -71,9 +77,15 @@ function outOfBand(input: LevelInput, last: SeenValue): Omit<Condition, 'subject
   };
 }
 
+/** Alkalinity slips within days, and a jump of what animals feel within hours can't wait; the rest is today's work. */
+function isPressing(parameter: ParameterCode, outside: number, step: number): boolean {
+  if (parameter === 'alkalinity') return outside > 0;
+  return FELT_AT_ONCE.includes(parameter) && outside >= step;
+}
+
 function drifting(input: LevelInput, last: SeenValue): Omit<Condition, 'subject'> | null {
   const { band, parameter, now, open } = input;
-  const drift = driftOf(input);
+  const drift = DRIFTING.includes(parameter) ? driftOf(input) : null;
   if (!drift || Math.abs(drift.slope) <= SURE_Z * drift.slopeSd) return null;
   const edge = drift.slope < 0 ? band.low : band.high;
   const leavesAt = last.at + ((edge - last.value) / drift.slope) * MS_PER_DAY;

@@ -3,7 +3,7 @@ import type { TodayEntry } from '../../../shared/contracts/today.ts';
 import { daysBetween } from '../../../shared/domain/days.ts';
 import { repeatWords } from '../../../shared/domain/repeat-words.ts';
 import type { Db } from '../../db/client.ts';
-import { openAlerts } from '../alerts.ts';
+import { openAlerts, type OpenAlert } from '../alerts.ts';
 import { tasksDueBy } from '../tasks.ts';
 import { actOf, type TodayContext } from './source.ts';
 
@@ -13,34 +13,44 @@ const READ_AT_ONCE = 100;
 
 /** The reader's tasks that are due today or late. A test that an alert asks for already is not named twice. */
 export function tasksToday(db: Db, context: TodayContext): TodayEntry[] {
-  const asked = new Set(
-    openAlerts(db, context.now).flatMap(({ systemId, facts, acknowledgedAt }) =>
-      acknowledgedAt === null && (facts.kind === 'test_overdue' || facts.kind === 'out_of_band')
-        ? [`${systemId} ${facts.parameter}`]
-        : [],
-    ),
-  );
-  const due = tasksDueBy(db, context.today, READ_AT_ONCE, context.reader).filter(
-    ({ systemId, parameter }) => !asked.has(`${systemId ?? ''} ${parameter ?? ''}`),
-  );
+  const asked = new Set(openAlerts(db, context.now).flatMap(asksFor));
+  const due = tasksDueBy(db, context.today, READ_AT_ONCE, context.reader).filter((task) => !asked.has(workOf(task)));
   const shown = due.length > MOST_TASKS ? due.slice(0, MOST_TASKS - 1) : due;
   const more = due.length - shown.length;
   return [...shown.map((task) => toEntry(context, task)), ...(more > 0 ? [moreTasks(more)] : [])];
 }
 
+/** What an alert that nobody acknowledged asks for, in the words of {@link workOf}. */
+function asksFor({ systemId, facts, acknowledgedAt }: OpenAlert): string[] {
+  if (acknowledgedAt !== null) return [];
+  if (facts.kind === 'test_overdue' || facts.kind === 'out_of_band') return [`${systemId} test ${facts.parameter}`];
+  return facts.kind === 'reservoir_empty' ? [`${systemId} changeover`] : [];
+}
+
+function workOf({ systemId, kind, parameter }: Task): string {
+  return [systemId, kind, parameter].filter((part) => part !== null).join(' ');
+}
+
 function toEntry(context: TodayContext, task: Task): TodayEntry {
-  const { id, title, systemCode, dueOn, kind, systemId } = task;
-  const isTest = kind === 'test' && systemId !== null;
-  const toDo = dueOn !== null && context.may('water.log');
+  const { id, title, systemCode, dueOn } = task;
+  const there = actThere(context, task);
+  const toDo = dueOn !== null && context.may('water.log') && there === null;
   return {
     ...{ id: `task-${id}`, ...urgencyOf(context, task) },
     title: [systemCode === null ? title : `${systemCode}: ${title}`],
     detail: detailOf(context, task),
-    act: isTest
-      ? actOf(context, 'water.log', 'Test', `/water/log?system=${systemId}`, `/tasks?task=${id}`)
-      : { label: 'See', to: `/tasks?task=${id}` },
-    ...(toDo && !isTest ? { task: { id, dueOn } } : {}),
+    act: there ?? { label: 'See', to: `/tasks?task=${id}` },
+    ...(toDo ? { task: { id, dueOn } } : {}),
   };
+}
+
+/** What is logged elsewhere settles its task there; null for what is only said to be done. */
+function actThere(context: TodayContext, { id, kind, systemId }: Task): TodayEntry['act'] | null {
+  if (systemId === null) return null;
+  const act = (label: string, to: string) => actOf(context, 'water.log', label, to, `/tasks?task=${id}`);
+  if (kind === 'test') return act('Test', `/water/log?system=${systemId}`);
+  if (kind === 'refill') return act('Mix', `/water/mix?system=${systemId}`);
+  return kind === 'changeover' ? act('Swap', `/water/systems/${systemId}`) : null;
 }
 
 /** Single work at a set time, such as a test after an overdose, can't wait once its time has come. */

@@ -3,7 +3,7 @@ import { type Day, daysBetween } from '@shared/domain/days.ts';
 import { repeatWords } from '@shared/domain/repeat-words.ts';
 import { TASK_KINDS, type TaskKind } from '@shared/domain/task-kinds.ts';
 import type { ParameterCode } from '@shared/domain/units.ts';
-import { ROLE_LABELS } from '@shared/permissions.ts';
+import { type Role, ROLE_LABELS } from '@shared/permissions.ts';
 import { parameterOf } from '@/views/water/water-labels.ts';
 
 const KIND_LABELS: Record<TaskKind, string> = {
@@ -31,16 +31,24 @@ export function taskTitle({ systemCode, title }: Pick<Task, 'systemCode' | 'titl
   return systemCode === null ? title : `${systemCode}: ${title}`;
 }
 
+/** Who reads: what is theirs anyway is not said. */
+export interface TaskLineReader {
+  id: string;
+  role: Role;
+}
+
 /** When, how often and by whom, in one line. */
-export function taskLine(task: Task, today: Day): string {
+export function taskLine(task: Task, today: Day, reader: TaskLineReader | null): string {
   const late = task.dueOn === null ? 0 : daysBetween(task.dueOn, today);
   return [
     ...(late > 0 ? [late === 1 ? 'due yesterday' : `due ${late} days ago`] : []),
     ...(task.dueMinute === null ? [] : [`at ${clockOf(task.dueMinute)}`]),
     repeatWords(task.repeat),
     ...(task.reservoirCode === null ? [] : [`reservoir ${task.reservoirCode}`]),
-    ...(task.assigneeName === null ? [] : [`for ${task.assigneeName}`]),
-    ...(task.assigneeRole === null ? [] : [`for the ${ROLE_LABELS[task.assigneeRole].toLowerCase()}`]),
+    ...(task.assigneeName === null || task.assigneeId === reader?.id ? [] : [`for ${task.assigneeName}`]),
+    ...(task.assigneeRole === null || task.assigneeRole === reader?.role
+      ? []
+      : [`for the ${ROLE_LABELS[task.assigneeRole].toLowerCase()}`]),
   ].join(' · ');
 }
 

@@ -153,12 +153,13 @@ describe('alerts', () => {
     const farm = await startFarm();
     const systemId = givenSystem(farm);
     const [online, standby] = [givenReservoir(farm, systemId), givenReservoir(farm, systemId)];
-    for (const id of [online, standby]) givenRefill(farm, id);
+    givenRefill(farm, online);
     farm.wait(3 * HOUR);
     givenChangeOver(farm, online);
     farm.wait(DAY);
     givenLevel(farm, online, 30); // 20 L a day, so empty in 36 hours
     const [soon] = await alertsOf(farm);
+    givenRefill(farm, standby);
     farm.wait(14 * HOUR);
     const [today] = await alertsOf(farm);
     farm.wait(17 * HOUR);
@@ -169,6 +170,19 @@ describe('alerts', () => {
     expect(new Set([soon.id, today.id, now.id]).size).toBe(1);
     expect(await alertsOf(farm)).toEqual([]);
     expect((await alertsOf(farm, 'closed'))[0].kind).toBe('reservoir_empty');
+  });
+
+  it('when another stands ready, a reservoir that lasts more than a day is no news', async () => {
+    const farm = await startFarm();
+    const systemId = givenSystem(farm);
+    const [online, standby] = [givenReservoir(farm, systemId), givenReservoir(farm, systemId)];
+    for (const id of [online, standby]) givenRefill(farm, id);
+    farm.wait(3 * HOUR);
+    givenChangeOver(farm, online);
+    farm.wait(DAY);
+    givenLevel(farm, online, 30);
+
+    expect(await alertsOf(farm)).toEqual([]);
   });
 
   it('when it has ended, nobody can say that they know of it; a viewer reads and changes nothing', async () => {
