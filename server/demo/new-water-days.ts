@@ -58,7 +58,7 @@ function planUnit({ chance, staff }: World, put: Put, first: number): void {
   const taps = chance('make-up water');
   for (let week = Math.floor(first / 7) - 1; week >= 0; week -= 1) {
     const isThrough = week > 0 && (week - RESIN_AGE_WEEKS) % RESIN_WEEKS === 0;
-    put(week * 7 + 0.3, week % 3 === 0 ? staff.grower2 : staff.grower, (write) => {
+    put(week * 7, week % 3 === 0 ? staff.grower2 : staff.grower, (write) => {
       look(write, taps, WEEKS - week, isThrough);
       if (isThrough) resin(write);
     });
@@ -84,6 +84,6 @@ function planMixes(world: World, put: Put): void {
     mixSaltBatch(write, { litres, saltG, readyHours: 18, note: '', ...tested });
   };
   const tested = { salinity: 35.1, alkalinityMeqL: 3, calciumMgL: 428, magnesiumMgL: 1340, temperatureC: 25.1 };
-  put(1.6, grower, mix(300, tested));
-  put(0.1, grower2, mix(240, { salinity: 34.8 }));
+  put(1, grower, mix(300, tested));
+  put(0, grower2, mix(240, { salinity: 34.8 }));
 }

@@ -15,7 +15,7 @@ interface Dosing {
 /** What runs, and what wants care first: a bottle that runs dry, a pump that drifted. */
 export function dosingSentence(
   { rates, pumps, solutions }: Dosing,
-  sayInstant: (at: number) => string,
+  sayDay: (at: number) => string,
   now: number,
 ): Sentence {
   if (rates.length === 0) {
@@ -38,7 +38,7 @@ export function dosingSentence(
   const next = isSoon ? (isMade ? ' Make a batch before then.' : ' Order it before then.') : '';
   return {
     before: `${runs} ${first.itemName} lasts until `,
-    number: sayInstant(first.lastsUntil),
+    number: sayDay(first.lastsUntil),
     after: `.${next}${care}`,
   };
 }

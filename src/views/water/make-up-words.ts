@@ -41,7 +41,7 @@ function careWords(cartridges: readonly Cartridge[]): string {
     cartridges.filter((each) => each.state === state).map(({ stage }) => STAGE_WORDS[stage].toLowerCase());
   const [due, soon] = [named('due'), named('soon')];
   if (due.length > 0) return ` Replace the ${joinWords(due)} now.`;
-  if (soon.length > 0) return ` The ${joinWords(soon)} is due soon.`;
+  if (soon.length > 0) return ` The ${joinWords(soon)} ${soon.length === 1 ? 'is' : 'are'} due soon.`;
   return cartridges.length > 0 ? ' No cartridge is due.' : ' Write down which cartridges are in it.';
 }
 

@@ -21,15 +21,19 @@ export function changesSentence(plans: WaterChangePlans, today: Day, { litres }:
   const after = enoughWords(plans, today);
   if (due.length > 0) {
     const codes = joinWords(due.map(({ systemCode }) => systemCode));
-    const sum = due.reduce((total, { plan }) => total + (plan?.litres ?? 0), 0);
-    return { before: `Due now: ${codes}, `, number: litres(sum), after: ` of new water in all.${after}` };
+    return { before: `Due now: ${codes}, `, number: litres(litresOf(due)), after: ` of new water in all.${after}` };
   }
-  const next = [...withPlan].sort((a, b) => (a.nextOn ?? '').localeCompare(b.nextOn ?? ''))[0];
+  const nextOn = withPlan.flatMap((each) => (each.nextOn === null ? [] : [each.nextOn])).sort()[0] ?? today;
+  const next = withPlan.filter((each) => each.nextOn === nextOn);
   return {
-    before: `Next: ${next?.systemCode ?? ''} ${nearDay(next?.nextOn ?? today, today)}, `,
-    number: litres(next?.plan?.litres ?? 0),
-    after: `.${after}`,
+    before: `Next, ${nearDay(nextOn, today)}: ${joinWords(next.map(({ systemCode }) => systemCode))}, `,
+    number: litres(litresOf(next)),
+    after: ` of new water in all.${after}`,
   };
+}
+
+function litresOf(systems: readonly WaterChangePlan[]): number {
+  return systems.reduce((sum, { plan }) => sum + (plan?.litres ?? 0), 0);
 }
 
 function enoughWords({ coming, saltOnHandG, horizonDays }: WaterChangePlans, today: Day): string {
@@ -45,5 +49,6 @@ function enoughWords({ coming, saltOnHandG, horizonDays }: WaterChangePlans, tod
 export function habitWords({ plan }: WaterChangePlan): string {
   if (!plan) return 'no habit set';
   const every = plan.everyDays === 1 ? 'every day' : `every ${plan.everyDays} days`;
-  return `${formatNumber(plan.fraction * 100, { decimals: 1 })} % ${every}`;
+  const percent = Number((plan.fraction * 100).toFixed(1));
+  return `${formatNumber(percent, { decimals: percent % 1 === 0 ? 0 : 1 })} % ${every}`;
 }
