@@ -1,9 +1,11 @@
 import type { SystemOverfill } from '@shared/contracts/overfills.ts';
 import type { AdvicePart } from '@shared/domain/dosing-plan/advice-words.ts';
 import { formatNumber } from '@/formatting/format-number.ts';
+import { quantityParts } from '@/formatting/format-quantity.ts';
 import type { useUnitChoicesStore } from '@/stores/unit-choices.ts';
 
 type Units = ReturnType<typeof useUnitChoicesStore>;
+type Chem = NonNullable<SystemOverfill['effect']>['before'];
 
 const ph = (value: number) => formatNumber(value, { decimals: 2 });
 
@@ -45,19 +47,25 @@ export const BROKEN_LABELS = {
   beyond: 'grave',
 } as const;
 
-/** Rows of the table: what is measured, before, when mixed and in balance with the room. */
-export function effectRows({ effect }: SystemOverfill, units: Units): { label: string; values: string[] }[] {
+/** Rows of the table: what is measured in which unit, before, when mixed and in balance with the room. */
+export function effectRows(
+  { effect }: SystemOverfill,
+  units: Units,
+): { label: string; unit: string; values: string[] }[] {
   if (!effect) return [];
-  const { before, atOnce, equilibrated } = effect;
-  const all = [before, atOnce, equilibrated];
+  const all = [effect.before, effect.atOnce, effect.equilibrated];
+  const inUnit = (label: string, quantity: 'alkalinity' | 'calcium' | 'salinity', of: (chem: Chem) => number) => ({
+    ...{ label, unit: units.labelFor(quantity) },
+    values: all.map((chem) => quantityParts(quantity, units.unitFor(quantity), of(chem)).value),
+  });
   return [
-    { label: 'pH', values: all.map(({ phNbs }) => ph(phNbs)) },
-    { label: 'Alkalinity', values: all.map(({ alkalinityMeqL }) => units.say('alkalinity', alkalinityMeqL)) },
+    { label: 'pH', unit: '', values: all.map(({ phNbs }) => ph(phNbs)) },
+    inUnit('Alkalinity', 'alkalinity', ({ alkalinityMeqL }) => alkalinityMeqL),
     {
-      label: 'Aragonite saturation',
+      ...{ label: 'Aragonite', unit: 'Ω' },
       values: all.map(({ omegaAragonite }) => formatNumber(omegaAragonite, { decimals: 1 })),
     },
-    { label: 'Calcium', values: all.map(({ calciumMgL }) => units.say('calcium', calciumMgL)) },
-    { label: 'Salinity', values: all.map(({ salinity }) => units.say('salinity', salinity)) },
+    inUnit('Calcium', 'calcium', ({ calciumMgL }) => calciumMgL),
+    inUnit('Salinity', 'salinity', ({ salinity }) => salinity),
   ];
 }
