@@ -13,7 +13,9 @@ const NOON = 12 * 60;
 
 /** The heads of the cells, "Alkalinity, dKH". */
 export function tableHeads(panels: readonly Panel[], lanes: readonly Lane[]): string[] {
-  const series = panels.flatMap((panel) => panel.series).map(({ label, unit }) => capital(`${label}, ${unit}`));
+  const series = panels
+    .flatMap((panel) => panel.series)
+    .map(({ label, unit }) => (unit === '' ? label : capital(`${label}, ${unit}`)));
   return [...series, ...lanes.map(({ label }) => capital(label))];
 }
 

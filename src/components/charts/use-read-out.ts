@@ -53,7 +53,8 @@ export function useReadOut(source: Source, span: Ref<Span>): ReadOut {
 }
 
 function sayAt(series: Series, moment: number): string[] {
-  const { decimals, unit, label } = series;
+  const { decimals, label } = series;
+  const unit = series.unit === '' ? '' : `${THIN_SPACE}${series.unit}`;
   const number = (value: number) => formatNumber(value, { decimals });
   const point = series.points?.find((each) => each.at === moment);
   const estimate = estimateAt(series.line ?? [], moment) ?? estimateAt(series.ahead ?? [], moment);
@@ -62,14 +63,14 @@ function sayAt(series: Series, moment: number): string[] {
   if (point) {
     const error = point.error === undefined ? '' : ` ± ${number(point.error)}`;
     const notes = [point.flag, point.signal, point.note].filter(Boolean).map((note) => `, ${note}`);
-    said.push(`${label} ${number(point.value)}${error}${THIN_SPACE}${unit}${notes.join('')}`);
+    said.push(`${label} ${number(point.value)}${error}${unit}${notes.join('')}`);
   }
   if (estimate) {
     const { low, high } = estimate;
     const band = low === undefined || high === undefined ? '' : ` (${number(low)} to ${number(high)})`;
     const isSecond = series.points !== undefined;
-    said.push(`${label}${isSecond ? ', estimate' : ''} ${number(estimate.value)}${band}${THIN_SPACE}${unit}`);
+    said.push(`${label}${isSecond ? ', estimate' : ''} ${number(estimate.value)}${band}${unit}`);
   }
-  if (bar) said.push(`${label} ${number(bar.value)}${THIN_SPACE}${unit}`);
+  if (bar) said.push(`${label} ${number(bar.value)}${unit}`);
   return said;
 }

@@ -24,7 +24,7 @@ export function readingPanel({ parameter, points, band }: TimelineSeries, units:
     key: parameter,
     series: [
       {
-        ...{ key: parameter, label: parameterOf(parameter).label.toLowerCase(), unit: units.labelFor(parameter) },
+        ...{ key: parameter, ...nameOf(parameter, units) },
         ...{ tone: 'plum', decimals },
         points: points.map(({ id, at, value, error, method }): SeriesPoint => ({
           ...{ at, value: shown(value), error: Math.abs(shown(value + error) - shown(value)) },
@@ -112,6 +112,13 @@ export function actLanes({ waterChanges, doses, rates, changeOvers }: Timeline, 
     },
   ];
   return lanes.filter(({ marks }) => marks.length > 0);
+}
+
+/** The name and the unit beside it; pH is both. */
+function nameOf(parameter: ParameterCode, units: Units): { label: string; unit: string } {
+  const unit = units.labelFor(parameter);
+  const { label } = parameterOf(parameter);
+  return label === unit ? { label, unit: '' } : { label: label.toLowerCase(), unit };
 }
 
 function decimalsOf(parameter: ParameterCode, units: Units): number {

@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core';
 import type { Session } from '../../../shared/contracts/session.ts';
 import type { Role } from '../../../shared/permissions.ts';
@@ -75,6 +76,15 @@ export class Site {
   async get<T>(page: Page, path: string): Promise<T> {
     const reply = await page.request.get(this.url + path);
     if (!reply.ok()) throw new Error(`GET ${path} answered ${reply.status()}: ${await reply.text()}`);
+    return (await reply.json()) as T;
+  }
+
+  /** Does something through the API as whoever is signed in on the page: for what happened before a test begins. */
+  async post<T>(page: Page, path: string, data: unknown): Promise<T> {
+    const { csrfToken } = await this.get<{ csrfToken: string }>(page, '/api/session');
+    const headers = { 'X-CSRF-Token': csrfToken, 'Idempotency-Key': randomUUID() };
+    const reply = await page.request.post(this.url + path, { data, headers });
+    if (!reply.ok()) throw new Error(`POST ${path} answered ${reply.status()}: ${await reply.text()}`);
     return (await reply.json()) as T;
   }
 
