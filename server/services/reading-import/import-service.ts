@@ -10,7 +10,7 @@ import { readingImport } from '../../queries/reading-imports.ts';
 import { breathe } from './breathe.ts';
 import { type CsvTable, readCsvTable, readCsvTableInPieces } from './csv-table.ts';
 import { guessMapping } from './guess-mapping.ts';
-import { type SiftedPiece, siftFile } from './sift-file.ts';
+import { assertMapping, type SiftedPiece, siftFile } from './sift-file.ts';
 import { storeValues } from './store-values.ts';
 
 interface ImportFile {
@@ -102,6 +102,8 @@ export function startImport(write: Write, file: ImportFile, mapping: ImportMappi
     .run();
   if (isSmall) importAtOnce(write, id, readCsvTable(file.content), mapping);
   else {
+    // What can be told from its beginning is told at once.
+    assertMapping(readCsvTable(file.content.subarray(0, AT_ONCE_BYTES)), mapping);
     const { userId, name, role, storeId } = write.actor;
     const order: z.infer<typeof ImportOrder> = { mapping, actor: { userId, name, role, storeId } };
     write.tx.insert(readingImportFiles).values({ importId: id, content: file.content, mapping: order }).run();

@@ -117,7 +117,7 @@ function contextOf(db: Db, mapping: ImportMapping, now: number): ImportContext {
 }
 
 /** @throws {DomainError} `input.invalid` where a mapping belongs to another file, names one meaning twice, or half a one */
-function assertMapping({ heads }: CsvTable, { columns, timeZone }: ImportMapping): void {
+export function assertMapping({ heads }: CsvTable, { columns, timeZone }: ImportMapping): void {
   if (timeZone !== '') assertTimeZone(timeZone);
   const roles = columns.map(({ role }) => role).filter((role) => role !== 'ignore');
   const message =

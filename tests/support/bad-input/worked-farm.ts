@@ -1,5 +1,9 @@
 import { reservoirEvents } from '../../../server/db/schema/index.ts';
 import type { Endpoint } from '../../../shared/contracts/endpoint.ts';
+import { calibrate } from '../../../server/services/calibration-service.ts';
+import { addReadingPhoto } from '../../../server/services/reading-photos.ts';
+import { logReadings } from '../../../server/services/reading-service.ts';
+import { addKitLot, addUsualMethods } from '../../../server/services/test-method-service.ts';
 import { startImport } from '../../../server/services/reading-import/import-service.ts';
 import { createSupplier } from '../../../server/services/supply-items.ts';
 import { fakePayments } from '../given-orders.ts';
@@ -7,7 +11,9 @@ import { givenColony } from '../given-stock.ts';
 import { givenItem, givenLot } from '../given-supplies.ts';
 import { startFarm, TEST_PASSWORD, type TestFarm } from '../start-farm.ts';
 import type { KnownValues } from './sample-request.ts';
+import { givenDosingWork } from './worked-dosing.ts';
 import { givenPeople, givenSales, givenStock, givenWater } from './worked-records.ts';
+import { givenPlans } from './worked-plans.ts';
 import { givenTasksAndAlerts } from './worked-tasks.ts';
 
 export const READINGS_FILE = 'Day,Alkalinity\n2026-02-10,8.1\n2026-02-11,8.3\n';
@@ -31,6 +37,8 @@ export async function workedFarm(): Promise<WorkedFarm> {
   const supplies = givenSupplies(farm);
   const work = givenTasksAndAlerts(farm);
   const imports = givenImport(farm, water.systemId);
+  const tested = givenTested(farm, water.systemId);
+  const plans = givenPlans(farm);
   const { systemId } = water;
   const [code] = stock.codes;
   const { lineId, colonyId, listingId } = sales;
@@ -77,9 +85,13 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/people': { id: people.viewerId },
     '/api/setup': { timeZone: 'Europe/Lisbon', currency: 'EUR' },
     '/api/farm': { timeZone: 'Europe/Lisbon', currency: 'EUR' },
-    '/api/water-changes': { id: water.changeId },
+    '/api/water-changes': { id: water.changeId, alkalinityMeqL: 3 },
     '/api/doses': { itemId: water.supplementId, id: water.doseId },
     '/api/systems': { id: systemId },
+    '/api/systems/:id/advice/': { id: plans.systemId, key: plans.key },
+    '/api/advice': { id: plans.adviceId },
+    '/api/systems/:id/overfills': { id: plans.dosedId },
+    '/api/overfills': { id: plans.overfillId },
     '/api/reservoirs': { id: water.emptyId, limeG: 0 },
     '/api/reservoirs/:id/changeovers': { id: water.standbyId },
     '/api/reservoirs/:id/undo': { id: water.standbyId },
@@ -88,6 +100,11 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/alerts': { id: work.alertId },
     '/api/calendar': { token: work.calendarToken },
     '/api/readings': { value: 8, unit: 'dKH', id: water.readingId, takenAt: farm.deps.clock.now() - 60_000 },
+    '/api/test-methods': { id: tested.methodId, parameter: 'alkalinity', unit: 'dKH', found: [8], referenceValue: 8 },
+    '/api/kit-lots': { id: tested.kitLotId },
+    '/api/calibrations': { id: tested.calibrationId },
+    '/api/reading-photos': { id: tested.photoId },
+    ...givenDosingWork(farm, systemId),
     '/api/reading-imports': { mapping: imports.mapping, id: imports.importId },
   };
   return {
@@ -111,6 +128,20 @@ function givenSupplies(farm: TestFarm) {
     ...{ limeId, saltId, labelId, lotId: givenLot(farm, limeId) },
     supplierId: farm.write((write) => createSupplier(write, supplier)),
   };
+}
+
+/** A method with a kit lot and a check, and a photo of a slip that readings stand on. */
+function givenTested(farm: TestFarm, systemId: string) {
+  return farm.write((write) => {
+    const [method] = addUsualMethods(write);
+    const methodId = method?.id ?? '';
+    const kitLotId = addKitLot(write, methodId, { code: 'L-1', openedOn: null, expiresOn: null }).id;
+    const solution = { kitLotId, unit: 'dKH', solution: '', referenceValue: 8, referenceError: 0.1, note: '' };
+    const photoId = addReadingPhoto(write, Buffer.from('89504e470d0a1a0a', 'hex')).id;
+    const values = [{ parameter: 'alkalinity' as const, value: 8.1, unit: 'dKH', methodId, kitLotId }];
+    logReadings(write, { systemId, values, method: '', note: '', takenAt: write.now - 3_600_000, photoId });
+    return { methodId, kitLotId, photoId, calibrationId: calibrate(write, methodId, { ...solution, found: [8.1] }).id };
+  });
 }
 
 function givenImport(farm: TestFarm, systemId: string) {
