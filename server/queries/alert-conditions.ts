@@ -54,10 +54,10 @@ function overfillConditions(db: Db, { id }: SystemRow, now: number): Condition[]
       facts: {
         kind: 'overfill_risk',
         code: reservoir.code,
-        litres,
+        litres: Math.round(litres),
         changeMeqL,
         ph: atOnce.phNbs,
-        harmlessL: largest?.litres || null,
+        harmlessL: Math.floor(largest?.litres ?? 0) || null,
       },
     },
   ];

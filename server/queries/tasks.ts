@@ -58,7 +58,7 @@ export function tasksDueBy(db: Db, day: Day, most: number, reader?: TaskReader):
   const { timeZone } = farmOf(db);
   return joined(db)
     .where(and(isOpen, lte(tasks.dueOn, day), reader ? isFor(reader) : undefined))
-    .orderBy(asc(tasks.dueOn), asc(tasks.id))
+    .orderBy(asc(tasks.dueOn), asc(systems.code), asc(tasks.title), asc(tasks.id))
     .limit(most)
     .all()
     .map((row) => toTask(db, row, timeZone));

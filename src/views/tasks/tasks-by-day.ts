@@ -36,7 +36,12 @@ function titleOf(day: Day, today: Day): string {
   return formatLongDay(day);
 }
 
-/** Those of a set time first, in the order of the clock; the others keep their order. */
+/** Those of a set time first, in the order of the clock; the others by system. */
 function byTime(a: Task, b: Task): number {
-  return (a.dueOn ?? '').localeCompare(b.dueOn ?? '') || (a.dueMinute ?? 1440) - (b.dueMinute ?? 1440);
+  return (
+    (a.dueOn ?? '').localeCompare(b.dueOn ?? '') ||
+    (a.dueMinute ?? 1440) - (b.dueMinute ?? 1440) ||
+    (a.systemCode ?? '').localeCompare(b.systemCode ?? '') ||
+    a.title.localeCompare(b.title)
+  );
 }
