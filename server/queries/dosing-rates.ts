@@ -1,5 +1,6 @@
 import { desc, eq, isNull, sql, sum } from 'drizzle-orm';
 import type { DosingRate } from '../../shared/contracts/dosing.ts';
+import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { emptyAt } from '../../shared/domain/reservoir-use.ts';
 import { factorAt, type DatedFactor } from '../../shared/domain/pump-calibration.ts';
 import { DomainError } from '../../shared/errors.ts';
@@ -11,6 +12,8 @@ import { systemRow } from './systems.ts';
 
 /** Beside the running ones so many that ended are shown. */
 const MOST_SHOWN = 20;
+/** What lasts longer than that lasts long enough. */
+const FORESEEN_DAYS = 730;
 
 /** What is dosed steadily now, in every system. */
 export function runningRates(db: Db, now: number): DosingRate[] {
@@ -81,7 +84,12 @@ function lastsUntil(db: Db, factors: ReadonlyMap<string, DatedFactor[]>, now: nu
   for (const rate of db.select().from(dosingRates).where(isNull(dosingRates.toAt)).all()) {
     perDay.set(rate.itemId, (perDay.get(rate.itemId) ?? 0) + givenBy(rate, factors, now));
   }
-  return new Map([...perDay].map(([itemId, use]) => [itemId, emptyAt(onHandOf(db, itemId), use, now)]));
+  return new Map(
+    [...perDay].map(([itemId, use]) => {
+      const at = emptyAt(onHandOf(db, itemId), use, now);
+      return [itemId, at !== null && at < now + FORESEEN_DAYS * MS_PER_DAY ? at : null];
+    }),
+  );
 }
 
 function onHandOf(db: Db, itemId: string): number {

@@ -2,7 +2,10 @@ import { z } from 'zod';
 import { done, id, idParams, instant, labelCode, nothing, noteText, shortText, version } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
 
-const amountPerDay = z.number('Enter the amount a day.').positive('Above zero.').max(1_000_000, 'At most 1,000,000.');
+const amountPerDay = z
+  .number('Enter the amount a day.')
+  .min(0.001, 'At least 0.001.')
+  .max(1_000_000, 'At most 1,000,000.');
 const measured = z.number('Enter what came.').min(0.01, 'At least 0.01 mL.').max(100_000, 'At most 100 L.');
 const minute = z.int('Enter a time.').min(0, 'Enter a time.').max(1439, 'Enter a time.');
 
