@@ -8,7 +8,6 @@ import { waterChanges } from '../db/schema/index.ts';
 import { type ReadingWithError, readingsWithError } from './reading-errors.ts';
 import { reservoirsOfSystem } from './reservoir-feeds.ts';
 import { systemUse } from './reservoir-use.ts';
-import { reservoirRow } from './reservoirs.ts';
 import { systemRow, type SystemRow } from './systems.ts';
 
 /** Evaporation is told from what topped it up over as many days. */
@@ -31,7 +30,7 @@ export function systemEvaporation(db: Db, systemId: string, now: number): System
 }
 
 function lookError(db: Db, systemId: string): number {
-  const volumes = reservoirsOfSystem(db, systemId).map(({ id }) => reservoirRow(db, id).volumeL);
+  const volumes = reservoirsOfSystem(db, systemId).map(({ volumeL }) => volumeL);
   return LOOK_ERROR * Math.max(0, ...volumes);
 }
 

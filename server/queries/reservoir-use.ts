@@ -1,11 +1,12 @@
-import { and, asc, desc, eq, gte, lt, sql } from 'drizzle-orm';
+import { and, asc, eq, gte, inArray, lt, max, or, sql } from 'drizzle-orm';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
+import { groupBy } from '../../shared/domain/group-by.ts';
 import { onlineSpans, type ReservoirEventKind } from '../../shared/domain/reservoir-state.ts';
-import { feedsAt, partOfSystem } from '../../shared/domain/reservoir-shares.ts';
+import { type FeedSet, feedsAt, partOfSystem } from '../../shared/domain/reservoir-shares.ts';
 import { reservoirUse, type ReservoirEvent, type UseInterval } from '../../shared/domain/reservoir-use.ts';
 import type { Db } from '../db/client.ts';
 import { reservoirEvents } from '../db/schema/index.ts';
-import { feedSets, reservoirsOfSystem } from './reservoir-feeds.ts';
+import { feedSetsOf, reservoirsOfSystem } from './reservoir-feeds.ts';
 
 const USUAL_DAYS = 60;
 
@@ -45,37 +46,58 @@ export function onlineUse(events: readonly EventRow[]): OnlineUse {
 
 /** What a system got from all reservoirs that feed it, by its share of each. */
 export function systemUse(db: Db, systemId: string, now: number, days: number): OnlineUse[] {
-  return reservoirsOfSystem(db, systemId).map(({ id, systemId: ownSystemId }) => {
-    const use = onlineUse(recentEvents(db, id, now, days));
-    const sets = feedSets(db, id);
-    if (sets.length === 0) return use;
-    const share = feedsAt(sets, ownSystemId, now).find((feed) => feed.systemId === systemId)?.share ?? 0;
-    return {
-      ...use,
-      intervals: partOfSystem(use.intervals, sets, { ownSystemId, systemId }),
-      onlineSince: share > 0 ? use.onlineSince : null,
-      levelL: use.levelL * share,
-    };
-  });
+  const feeding = reservoirsOfSystem(db, systemId);
+  const ids = feeding.map(({ id }) => id);
+  const [events, sets] = [recentEventsOf(db, ids, now, days), feedSetsOf(db, ids)];
+  return feeding.map(({ id, systemId: ownSystemId }) =>
+    partOfUse(onlineUse(events.get(id) ?? []), sets.get(id) ?? [], { ownSystemId, systemId, now }),
+  );
+}
+
+function partOfUse(
+  use: OnlineUse,
+  sets: readonly FeedSet[],
+  { ownSystemId, systemId, now }: { ownSystemId: string; systemId: string; now: number },
+): OnlineUse {
+  if (sets.length === 0) return use;
+  const share = feedsAt(sets, ownSystemId, now).find((feed) => feed.systemId === systemId)?.share ?? 0;
+  return {
+    ...use,
+    intervals: partOfSystem(use.intervals, sets, { ownSystemId, systemId }),
+    onlineSince: share > 0 ? use.onlineSince : null,
+    levelL: use.levelL * share,
+  };
 }
 
 /** Events of the last days, led by the changeover before them, so that it is known whether the reservoir was online. */
 export function recentEvents(db: Db, reservoirId: string, now: number, days: number = USUAL_DAYS): EventRow[] {
+  return recentEventsOf(db, [reservoirId], now, days).get(reservoirId) ?? [];
+}
+
+/** The same for many reservoirs at once. */
+export function recentEventsOf(
+  db: Db,
+  reservoirIds: readonly string[],
+  now: number,
+  days: number = USUAL_DAYS,
+): Map<string, EventRow[]> {
   const from = now - days * MS_PER_DAY;
-  const ofReservoir = eq(reservoirEvents.reservoirId, reservoirId);
-  const change = db
-    .select({ at: reservoirEvents.at })
+  const { reservoirId, at, kind } = reservoirEvents;
+  const ofThese = inArray(reservoirId, [...reservoirIds]);
+  const leads = db
+    .select({ reservoirId, at: max(at) })
     .from(reservoirEvents)
-    .where(and(ofReservoir, lt(reservoirEvents.at, from), eq(reservoirEvents.kind, 'online')))
-    .orderBy(desc(reservoirEvents.at))
-    .limit(1)
-    .get();
-  return db
+    .where(and(ofThese, eq(kind, 'online'), lt(at, from)))
+    .groupBy(reservoirId)
+    .all();
+  const led = or(...leads.map((lead) => and(eq(reservoirId, lead.reservoirId), gte(at, lead.at ?? from))));
+  const rows = db
     .select()
     .from(reservoirEvents)
-    .where(and(ofReservoir, gte(reservoirEvents.at, change?.at ?? from)))
-    .orderBy(asc(reservoirEvents.at), asc(sql`rowid`))
+    .where(or(and(ofThese, gte(at, from)), led))
+    .orderBy(asc(at), asc(sql`rowid`))
     .all();
+  return groupBy(rows, (row) => row.reservoirId);
 }
 
 /** Events that change what stands in a reservoir, or its strength, other than by use. */

@@ -7,24 +7,45 @@ import { litresBelowIntake, usableLitres } from '../../shared/domain/reservoir-v
 import type { Db } from '../db/client.ts';
 import type { reservoirs, systems } from '../db/schema/index.ts';
 import { reservoirEvents } from '../db/schema/index.ts';
-import { feedsOf } from './reservoir-feeds.ts';
-import { onlineUse, recentEvents } from './reservoir-use.ts';
+import { feedsOfAll } from './reservoir-feeds.ts';
+import { onlineUse, recentEventsOf } from './reservoir-use.ts';
 
 type ReservoirRow = typeof reservoirs.$inferSelect;
 
-/** A reservoir as people see it: what stands in it, what may be drawn, how long it lasts and what it wants. */
-export function toReservoir(
-  db: Db,
-  { reservoir, system }: { reservoir: ReservoirRow; system: typeof systems.$inferSelect },
-  now: number,
-): Reservoir {
+export interface OwnedReservoir {
+  reservoir: ReservoirRow;
+  system: typeof systems.$inferSelect;
+}
+
+/**
+ * Reservoirs as people see them: what stands in each, what may be drawn, how long it lasts and what it wants. Read for
+ * all at once, since a farm looks at all of them.
+ */
+export function toReservoirs(db: Db, rows: readonly OwnedReservoir[], now: number): Reservoir[] {
+  const ids = rows.map(({ reservoir }) => reservoir.id);
+  const owned = rows.map(({ reservoir }) => reservoir);
+  const [events, feeds] = [recentEventsOf(db, ids, now), feedsOfAll(db, owned, now)];
+  const [lastAt, sludge] = [lastEventsAt(db, ids), sludgeSince(db, ids)];
+  return rows.map((row) => {
+    const { id } = row.reservoir;
+    const known = { events: events.get(id) ?? [], feeds: feeds.get(id) ?? [] };
+    return toReservoir(row, { ...known, lastAt: lastAt.get(id) ?? null, sludgeSince: sludge.get(id) ?? null }, now);
+  });
+}
+
+interface Known {
+  events: readonly (typeof reservoirEvents.$inferSelect)[];
+  feeds: (Reservoir['feeds'][number] & { netVolumeL: number })[];
+  lastAt: number | null;
+  sludgeSince: number | null;
+}
+
+function toReservoir({ reservoir, system }: OwnedReservoir, known: Known, now: number): Reservoir {
   const { createdAt: _, state: __, ...fields } = reservoir;
-  const events = recentEvents(db, reservoir.id, now);
-  const lastAt = lastEventAt(db, reservoir.id, events);
+  const { events, feeds, lastAt } = known;
   const perDay = litresPerDay(onlineUse(events).intervals, now);
   const vessel = { ...reservoir, ...setUpAtLastChangeOver(events) };
   const usableL = usableLitres(vessel, reservoir.levelL);
-  const feeds = feedsOf(db, reservoir, now);
   const isOnline = reservoir.state === 'online' && lastAt !== null;
   const smallestL = Math.min(...feeds.map(({ netVolumeL }) => netVolumeL));
   const { onlineSince, replaceAt, lastCheck, strengthLow } = careOf(events, reservoir.replaceDays);
@@ -38,7 +59,7 @@ export function toReservoir(
     emptyAt: isOnline && perDay !== null ? emptyAt(usableL, perDay, lastAt) : null,
     wholeDoseMeqL: (reservoir.levelL * reservoir.alkalinityMeqL) / smallestL,
     ...{ onlineSince: isOnline ? onlineSince : null, dueAt: isOnline ? replaceAt : null, lastCheck, strengthLow },
-    sludgeDueAt: sludgeDueAt(sludgeSince(db, reservoir.id), reservoir.sludgeWeeks),
+    sludgeDueAt: sludgeDueAt(known.sludgeSince, reservoir.sludgeWeeks),
   };
 }
 
@@ -53,30 +74,36 @@ function setUpAtLastChangeOver(
   };
 }
 
-function lastEventAt(db: Db, reservoirId: string, recent: readonly { at: number }[]): number | null {
-  const last = recent.at(-1);
-  if (last) return last.at;
-  const older = db
-    .select({ at: max(reservoirEvents.at) })
-    .from(reservoirEvents)
-    .where(eq(reservoirEvents.reservoirId, reservoirId))
-    .get();
-  return older?.at ?? null;
+function lastEventsAt(db: Db, ids: readonly string[]): Map<string, number> {
+  return instants(
+    db
+      .select({ id: reservoirEvents.reservoirId, at: max(reservoirEvents.at) })
+      .from(reservoirEvents)
+      .where(inArray(reservoirEvents.reservoirId, [...ids]))
+      .groupBy(reservoirEvents.reservoirId)
+      .all(),
+  );
 }
 
 /** Sludge gathers from its last removal on, or from the first mix. */
-function sludgeSince(db: Db, reservoirId: string): number | null {
-  const ofReservoir = eq(reservoirEvents.reservoirId, reservoirId);
-  const removed = db
-    .select({ at: max(reservoirEvents.at) })
-    .from(reservoirEvents)
-    .where(and(ofReservoir, inArray(reservoirEvents.kind, ['sludge_removed', 'cleaned'])))
-    .get();
-  if (removed?.at) return removed.at;
+function sludgeSince(db: Db, ids: readonly string[]): Map<string, number> {
+  const { reservoirId, kind, at } = reservoirEvents;
+  const ofThese = inArray(reservoirId, [...ids]);
   const mixed = db
-    .select({ at: min(reservoirEvents.at) })
+    .select({ id: reservoirId, at: min(at) })
     .from(reservoirEvents)
-    .where(and(ofReservoir, eq(reservoirEvents.kind, 'refill')))
-    .get();
-  return mixed?.at ?? null;
+    .where(and(ofThese, eq(kind, 'refill')))
+    .groupBy(reservoirId)
+    .all();
+  const removed = db
+    .select({ id: reservoirId, at: max(at) })
+    .from(reservoirEvents)
+    .where(and(ofThese, inArray(kind, ['sludge_removed', 'cleaned'])))
+    .groupBy(reservoirId)
+    .all();
+  return new Map([...instants(mixed), ...instants(removed)]);
+}
+
+function instants(rows: readonly { id: string; at: number | null }[]): Map<string, number> {
+  return new Map(rows.flatMap(({ id, at }) => (at === null ? [] : [[id, at] as const])));
 }

@@ -6,8 +6,8 @@ import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { reservoirEvents, reservoirs, systems } from '../db/schema/index.ts';
 import { pageFrom, readCursor } from './cursor.ts';
-import { fedSystems, reservoirsOfSystem } from './reservoir-feeds.ts';
-import { toReservoir } from './reservoir-view.ts';
+import { feedsOfAll, reservoirsOfSystem } from './reservoir-feeds.ts';
+import { toReservoirs } from './reservoir-view.ts';
 
 export type ReservoirRow = typeof reservoirs.$inferSelect;
 export type ReservoirEventRow = typeof reservoirEvents.$inferSelect;
@@ -21,7 +21,7 @@ export function reservoirRow(db: Db, reservoirId: string): ReservoirRow {
 
 /** Reservoirs that feed a system, or all; those that were put away only when they are asked for. */
 export function listReservoirs(db: Db, now: number, systemId?: string, retired: 'no' | 'only' = 'no'): Reservoir[] {
-  return db
+  const rows = db
     .select({ reservoir: reservoirs, system: systems })
     .from(reservoirs)
     .innerJoin(systems, eq(systems.id, reservoirs.systemId))
@@ -32,14 +32,14 @@ export function listReservoirs(db: Db, now: number, systemId?: string, retired: 
       ),
     )
     .orderBy(asc(systems.code), asc(reservoirs.code))
-    .all()
-    .map((row) => toReservoir(db, row, now));
+    .all();
+  return toReservoirs(db, rows, now);
 }
 
 function feeding(db: Db, systemId: string, now: number): string[] {
-  return reservoirsOfSystem(db, systemId)
-    .filter((reservoir) => fedSystems(db, reservoir, now).includes(systemId))
-    .map(({ id }) => id);
+  const owned = reservoirsOfSystem(db, systemId);
+  const feeds = feedsOfAll(db, owned, now);
+  return owned.flatMap(({ id }) => (feeds.get(id)?.some((feed) => feed.systemId === systemId) ? [id] : []));
 }
 
 export function showReservoir(db: Db, reservoirId: string, now: number): Reservoir {
@@ -49,8 +49,9 @@ export function showReservoir(db: Db, reservoirId: string, now: number): Reservo
     .innerJoin(systems, eq(systems.id, reservoirs.systemId))
     .where(eq(reservoirs.id, reservoirId))
     .get();
-  if (!row) throw new DomainError('record.not_found', 'There is no such reservoir. Choose one from the list.');
-  return toReservoir(db, row, now);
+  const [found] = row ? toReservoirs(db, [row], now) : [];
+  if (!found) throw new DomainError('record.not_found', 'There is no such reservoir. Choose one from the list.');
+  return found;
 }
 
 /** The last thing that happened; events of one instant keep the order in which they were written. */

@@ -59,6 +59,7 @@ it('when limewater is mixed and put online on a phone, the reservoirs have swapp
   await page.getByLabel('Left in it').fill('0');
   await page.getByLabel('Water added').fill(String(Math.floor(other.volumeL * 0.9)));
   await page.getByLabel('Lime, weighed').fill('20');
+  await page.getByLabel('Vinegar, if any').fill('0');
   await page.getByRole('button', { name: 'Log this mix' }).click();
   await heading(page, other.code);
   await page.getByText('Limewater mixed').first().waitFor();

@@ -11,7 +11,7 @@ export interface MixAmounts {
   temperatureC: number | null;
 }
 
-interface MixProgress {
+export interface MixProgress {
   startedAt: number;
   done: MixingStep['code'][];
   amounts: MixAmounts;
