@@ -47,14 +47,29 @@ function planOf(db: Db, system: SystemRow, now: number): SystemPlan {
   };
 }
 
-/** What of an advice a person reads: its kind and its amounts to two digits. Smaller changes are the same advice. */
+/** What of an advice a person reads: its kind and its amounts. */
 function keyOf({ kind, limewater, supplements, correction }: Advice): string {
   const amounts = [
     ...(limewater ? [limewater.limeGPerL, limewater.vinegarMlPerL] : []),
     ...supplements.map(({ amountPerDay }) => amountPerDay),
     ...(correction?.supplement ? [correction.supplement.amountPerDay] : []),
   ];
-  return [kind, ...amounts.map((amount) => amount.toPrecision(2))].join(' ');
+  return [kind, ...amounts.map((amount) => amount.toPrecision(4))].join(' ');
+}
+
+/** Amounts drift by a little from hour to hour, as demand is told anew: so much of them is the same advice. */
+const SAME_PART = 0.05;
+const SAME_AMOUNT = 0.02;
+
+/** Whether what was read is what is advised now, but for what nobody would measure. */
+export function isSameAdvice(readKey: string, currentKey: string): boolean {
+  const [readKind, ...read] = readKey.split(' ');
+  const [kind, ...current] = currentKey.split(' ');
+  if (readKind !== kind || read.length !== current.length) return false;
+  return current.every((text, index) => {
+    const [now, then] = [Number(text), Number(read[index])];
+    return Math.abs(now - then) <= Math.max(SAME_AMOUNT, SAME_PART * now);
+  });
 }
 
 function dismissalOf(db: Db, systemId: string, { kind }: Advice, now: number): SystemPlan['dismissed'] {

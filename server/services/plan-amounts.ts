@@ -1,6 +1,7 @@
 import type { AcceptAdvice, SystemPlan } from '../../shared/contracts/plan.ts';
 import { hourlyRoom } from '../../shared/domain/dosing-plan/hourly-room.ts';
-import { limewaterCeiling, mixLimewater } from '../../shared/domain/limewater.ts';
+import { leaves } from '../../shared/domain/dosing-plan/advice-kind.ts';
+import { limeGPerLOf, limewaterCeiling, mixLimewater } from '../../shared/domain/limewater.ts';
 import { DomainError } from '../../shared/errors.ts';
 
 export interface PlanAmounts {
@@ -22,8 +23,9 @@ const LEFT_OVER_G = 0.02;
  */
 export function planAmounts(current: SystemPlan, changes: AcceptAdvice['changes']): PlanAmounts {
   const { limewater } = current.advice;
+  const { limeGPerL } = asItIs(current);
   const advised = {
-    limeGPerL: limewater?.limeGPerL ?? 0,
+    limeGPerL: limewater?.limeGPerL ?? limeGPerL,
     vinegarMlPerL: limewater?.vinegarMlPerL ?? 0,
     supplements: current.advice.supplements.map(({ itemId, amountPerDay }) => ({ itemId, amountPerDay })),
   };
@@ -33,11 +35,17 @@ export function planAmounts(current: SystemPlan, changes: AcceptAdvice['changes'
     supplements: (changes?.supplements ?? advised.supplements).filter(({ amountPerDay }) => amountPerDay > 0),
   };
   const isChanged = changes !== undefined && JSON.stringify(chosen) !== JSON.stringify(advised);
-  const litresPerDay = limewater?.litresPerDay ?? 0;
+  const litresPerDay = limewater?.litresPerDay ?? current.facts.evaporationLPerDay ?? 0;
   const strengthMeqL = isChanged ? strengthOf(current, chosen) : (limewater?.strengthMeqL ?? 0);
   const amounts = { ...chosen, isChanged, strengthMeqL, litresPerDay };
   if (isChanged) assertRoom(current, amounts);
   return amounts;
+}
+
+/** What advice that leaves the dosing as it is stands for: the strength that is online. */
+function asItIs({ advice, facts }: SystemPlan): { limeGPerL: number } {
+  if (!leaves(advice.kind) || !facts.limewater) return { limeGPerL: 0 };
+  return { limeGPerL: limeGPerLOf(facts.limewater.onlineMeqL ?? 0, facts.limewater.purity) };
 }
 
 /** Strength of a litre of the mix; what settles of it is refused, since it would only be wasted. */

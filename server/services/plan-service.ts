@@ -1,10 +1,10 @@
 import { eq } from 'drizzle-orm';
 import type { AcceptAdvice, DismissAdvice, SystemPlan } from '../../shared/contracts/plan.ts';
-import { proposes } from '../../shared/domain/dosing-plan/advice-kind.ts';
+import { leaves, proposes } from '../../shared/domain/dosing-plan/advice-kind.ts';
 import { DomainError } from '../../shared/errors.ts';
 import { dosingAdvice, dosingPlans } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
-import { systemPlan } from '../queries/plan.ts';
+import { isSameAdvice, systemPlan } from '../queries/plan.ts';
 import { adviceRow, type AdviceRow, lastAnswer, planBefore, runningPlan } from '../queries/plan-rows.ts';
 import { adviceAsText } from './plan-text.ts';
 import { askForPlanWork } from './plan-tasks.ts';
@@ -20,10 +20,11 @@ import { endTasksOf } from './task-service.ts';
  */
 export function acceptAdvice(write: Write, systemId: string, input: AcceptAdvice): SystemPlan {
   const current = currentAdvice(write, systemId, input.key);
-  if (!proposes(current.advice.kind)) {
+  const { kind } = current.advice;
+  const amounts = planAmounts(current, input.changes);
+  if (!proposes(kind) && !(leaves(kind) && amounts.isChanged)) {
     throw new DomainError('rule.refused', 'This advice names nothing to dose, so there is no plan to take.');
   }
-  const amounts = planAmounts(current, input.changes);
   const outcome = amounts.isChanged ? 'changed' : 'accepted';
   if (amounts.isChanged && input.reason === '') {
     const message = 'Say why, so that the next person understands it.';
@@ -65,7 +66,7 @@ export function takeAnswerBack(write: Write, adviceId: string): void {
 /** The advice of now, which must be the one that was read. */
 function currentAdvice(write: Write, systemId: string, key: string): SystemPlan {
   const current = systemPlan(write.tx, systemId, write.now);
-  if (current.key === key) return current;
+  if (isSameAdvice(key, current.key)) return current;
   throw new DomainError('rule.refused', 'The advice has changed since you opened it. Read it again.', {
     details: { key: current.key },
   });

@@ -116,6 +116,12 @@ export function limeForStrength(wanted: Omit<LimewaterMix, 'limeG'> & { alkalini
   return (neededMol * CALCIUM_HYDROXIDE_G_PER_MOL) / purity;
 }
 
+/** Powder in each litre of limewater of a strength, all of it dissolved, g. */
+export function limeGPerLOf(alkalinityMeqL: number, purity: number): number {
+  assertPurity(purity);
+  return (alkalinityMeqL * CALCIUM_HYDROXIDE_G_PER_MOL) / 2000 / purity;
+}
+
 /**
  * Strength of what stands in a reservoir after new mix joins what was left, meq/L; zero when empty.
  */

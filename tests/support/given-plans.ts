@@ -7,19 +7,25 @@ import type { TestClient, TestFarm } from './start-farm.ts';
 
 const DAYS = 18;
 
+export interface DosedOptions {
+  limeItemId: string;
+  fromDkh?: number;
+  perDayDkh?: number;
+}
+
 export interface DosedSystem {
   systemId: string;
   onlineId: string;
   standbyId: string;
 }
 
-/** Lime, vinegar and a supplement that raises alkalinity, with prices. @returns the supplement's id */
-export function givenMeans(farm: TestFarm): string {
+/** Lime, vinegar and a supplement that raises alkalinity, with prices. */
+export function givenMeans(farm: TestFarm): { limeId: string; supplementId: string } {
   const limeId = givenItem(farm, { kind: 'lime', strength: 0.95 });
   const vinegarId = givenItem(farm, { kind: 'vinegar', unit: 'mL', strength: 5 });
   const supplementId = givenItem(farm, { kind: 'supplement', unit: 'mL', strength: 1.9 });
   for (const itemId of [limeId, vinegarId, supplementId]) givenLot(farm, itemId, { quantity: 20_000, costMinor: 9000 });
-  return supplementId;
+  return { limeId, supplementId };
 }
 
 /**
@@ -28,7 +34,7 @@ export function givenMeans(farm: TestFarm): string {
  */
 export function givenDosedSystem(
   farm: TestFarm,
-  { fromDkh = 8.4, perDayDkh = -0.1, limeG = 80 }: { fromDkh?: number; perDayDkh?: number; limeG?: number } = {},
+  { fromDkh = 8.4, perDayDkh = -0.1, limeItemId }: DosedOptions,
 ): DosedSystem {
   const now = farm.deps.clock.now();
   const at = (daysAgo: number) => now - daysAgo * MS_PER_DAY;
@@ -37,7 +43,7 @@ export function givenDosedSystem(
   });
   const onlineId = givenReservoir(farm, systemId, { volumeL: 120 });
   const standbyId = givenReservoir(farm, systemId, { volumeL: 100 });
-  givenRefill(farm, onlineId, { waterL: 110, limeG, at: at(DAYS + 1) });
+  givenRefill(farm, onlineId, { waterL: 110, limeG: 80, limeItemId, at: at(DAYS + 1) });
   givenChangeOver(farm, onlineId, at(DAYS));
   for (let day = 1; day <= DAYS; day += 1) {
     givenLevel(farm, onlineId, 110 - 5 * day, at(DAYS - day));

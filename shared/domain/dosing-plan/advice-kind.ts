@@ -18,6 +18,11 @@ export function proposes(kind: AdviceKind): boolean {
   return kind === 'start' || kind === 'change' || kind === 'correct_low' || kind === 'correct_high';
 }
 
+/** The kinds that leave the dosing as it is, where a person may decide otherwise all the same. */
+export function leaves(kind: AdviceKind): boolean {
+  return kind === 'hold' || kind === 'wait_after_change' || kind === 'mix_plan';
+}
+
 /** Only where the tests leave no doubt: a level that may as well be inside needs no correction. */
 function outOfBand({ band, level }: AdviceFacts): AdviceKind | null {
   if (!band || !level) return null;

@@ -8,8 +8,8 @@ import { startFarm } from '../../support/start-farm.ts';
 /** 20 L stand online at about 20 meq/L, of a system of 1,000 L. */
 async function aFarm() {
   const farm = await startFarm();
-  givenMeans(farm);
-  const system = givenDosedSystem(farm, { perDayDkh: 0 });
+  const { limeId } = givenMeans(farm);
+  const system = givenDosedSystem(farm, { limeItemId: limeId, perDayDkh: 0 });
   return { farm, ...system, grower: await farm.as('grower') };
 }
 

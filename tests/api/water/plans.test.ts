@@ -2,14 +2,14 @@ import { eq } from 'drizzle-orm';
 import { describe, expect, it } from 'vitest';
 import { auditLog, dosingPlans, tasks } from '../../../server/db/schema/index.ts';
 import { MS_PER_DAY } from '../../../shared/domain/days.ts';
-import { givenDosedSystem, givenMeans, planOf } from '../../support/given-plans.ts';
+import { type DosedOptions, givenDosedSystem, givenMeans, planOf } from '../../support/given-plans.ts';
 import { givenReading, givenRefill, givenSystem } from '../../support/given-water.ts';
 import { startFarm } from '../../support/start-farm.ts';
 
-async function aFarm(options: Parameters<typeof givenDosedSystem>[1] = {}) {
+async function aFarm(options: Partial<DosedOptions> = {}) {
   const farm = await startFarm();
-  const supplementId = givenMeans(farm);
-  const system = givenDosedSystem(farm, options);
+  const { limeId, supplementId } = givenMeans(farm);
+  const system = givenDosedSystem(farm, { limeItemId: limeId, ...options });
   return { farm, supplementId, ...system, grower: await farm.as('grower') };
 }
 
@@ -111,6 +111,15 @@ describe('accepting advice', () => {
     expect(farm.db.select().from(dosingPlans).all()).toEqual([]);
   });
 
+  it('when the amounts have drifted by what nobody would measure, is the same advice', async () => {
+    const { systemId, grower } = await aFarm();
+    const { key } = await planOf(grower, systemId);
+    const [kind = '', ...amounts] = key.split(' ');
+    const drifted = [kind, ...amounts.map((amount) => (Number(amount) * 1.03).toPrecision(4))].join(' ');
+    const reply = await grower.post(`/api/systems/${systemId}/advice/accept`).send({ key: drifted });
+    expect(reply.status).toBe(201);
+  });
+
   it('when the advice is to leave it, there is nothing to accept or dismiss', async () => {
     const { systemId, grower } = await aFarm({ perDayDkh: 0 });
     const { key } = await planOf(grower, systemId);
@@ -154,6 +163,16 @@ describe('changing advice', () => {
     expect(reply.body.plan.strengthMeqL).toBeCloseTo((0.855 * 2000) / 74.092, 3);
     const history = await grower.get(`/api/systems/${systemId}/advice`);
     expect(history.body.items[0]).toMatchObject({ outcome: 'changed', reason: 'The pH is high already.' });
+  });
+
+  it('when the advice is to leave it, other amounts may be decided all the same', async () => {
+    const { systemId, grower } = await aFarm({ perDayDkh: 0 });
+    const { key } = await planOf(grower, systemId);
+    const reply = await grower
+      .post(`/api/systems/${systemId}/advice/accept`)
+      .send({ key, changes: { limeGPerL: 0.85 }, reason: 'Many frags go in tomorrow.' });
+    expect(reply.status).toBe(201);
+    expect(reply.body.plan).toMatchObject({ limeGPerL: 0.85, litresPerDay: expect.closeTo(5, 1) });
   });
 
   it.each([

@@ -1,4 +1,3 @@
-import { reservoirEvents } from '../../../server/db/schema/index.ts';
 import type { Endpoint } from '../../../shared/contracts/endpoint.ts';
 import { calibrate } from '../../../server/services/calibration-service.ts';
 import { addReadingPhoto } from '../../../server/services/reading-photos.ts';
@@ -46,7 +45,7 @@ export async function workedFarm(): Promise<WorkedFarm> {
   const known: KnownValues = {
     ...{ lineId, colonyId, listingId, systemId, tankId: water.tankId, itemId: supplies.limeId, code: 'NEW-1' },
     ...{ batchId: stock.batchId, rackId: stock.rackId, codes: [code], groupId: stock.groupId },
-    eventId: farm.db.select().from(reservoirEvents).all().at(-1)?.id,
+    eventId: water.mixEventId,
   };
   /** By the start of the path; where several fit, the longest counts for its names. */
   const byPath: Record<string, KnownValues> = {
@@ -95,6 +94,8 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/reservoirs': { id: water.emptyId, limeG: 0 },
     '/api/reservoirs/:id/changeovers': { id: water.standbyId },
     '/api/reservoirs/:id/undo': { id: water.standbyId },
+    '/api/reservoirs/:id/strength-checks': { id: water.standbyId, conductivityMsCm: 9, freshMsCm: 10 },
+    '/api/reservoirs/:id/sludge-removals': { id: water.standbyId, levelBeforeL: 50, levelL: 49 },
     '/api/tasks': { id: work.taskId, dueOn: work.dueOn, startsOn: '2026-03-02' },
     '/api/task-outcomes': { id: work.outcomeId },
     '/api/alerts': { id: work.alertId },
