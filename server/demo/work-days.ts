@@ -3,7 +3,7 @@ import { addDays, dayOf, type Day, startOfDay } from '../../shared/domain/days.t
 import { PARAMETER_CODES } from '../../shared/domain/units.ts';
 import { alerts, notificationChoices, readings, tasks, users } from '../db/schema/index.ts';
 import { SYSTEM, type Write } from '../db/write.ts';
-import { acknowledgeAlert, evaluateAlerts, weighDemand } from '../services/alert-service.ts';
+import { acknowledgeAlert, evaluateAlerts, weighRisks } from '../services/alert-service.ts';
 import { lastAnnouncement } from '../services/notification-service.ts';
 import { completeTask, skipTask } from '../services/task-outcomes.ts';
 import { createTask } from '../services/task-service.ts';
@@ -41,7 +41,7 @@ export function planWork(world: World): void {
   agenda.put(now, staff.grower, (write) => settleByTests(world, write, dayOf(now, FARM.timeZone)));
   agenda.put(now, staff.owner, (write) => {
     lookAtAll(world, write);
-    for (const { id } of world.systems) weighDemand(write, id);
+    for (const { id } of world.systems) weighRisks(write, id);
     knowOfStandingRisks(write);
     chooseMails(write);
   });

@@ -9,7 +9,7 @@ import { bookDosingDays } from './book-dosing.ts';
 import { closeCheckouts } from './close-checkouts.ts';
 import { expireHolds } from './expire-holds.ts';
 import { keepDemands } from './keep-demands.ts';
-import { raiseAlerts, raiseDemandAlerts } from './raise-alerts.ts';
+import { raiseAlerts, raiseSlowAlerts } from './raise-alerts.ts';
 import { importReadings } from './import-readings.ts';
 import { sendAlertMails } from './send-alert-mails.ts';
 import { sendDigests } from './send-digests.ts';
@@ -39,7 +39,7 @@ const JOBS: readonly Job[] = [
   { name: 'book steady dosing', everyMs: 600 * SECOND, run: bookDosingDays },
   { name: 'keep demands', everyMs: 10 * SECOND, run: keepDemands },
   { name: 'raise alerts', everyMs: 60 * SECOND, run: raiseAlerts },
-  { name: 'raise demand alerts', everyMs: 3600 * SECOND, run: raiseDemandAlerts },
+  { name: 'raise slow alerts', everyMs: 3600 * SECOND, run: raiseSlowAlerts },
   { name: 'send alert mails', everyMs: 15 * SECOND, run: sendAlertMails },
   { name: 'send daily mails', everyMs: 60 * SECOND, run: sendDigests },
   { name: 'share costs', everyMs: 3600 * SECOND, run: shareCosts },

@@ -14,25 +14,31 @@ import { listReservoirs } from './reservoirs.ts';
 import { bandsOf, type SystemRow } from './systems.ts';
 
 const LOOK_BACK_DAYS = 28;
+/** A smaller change of demand, per day, calls for nothing, however sure it is (common practice, no source). */
+const LEAST_CHANGE_MEQ_L = 0.05;
 
 /** Kinds of the alerts that are open, by subject: what is open ends later than it would begin. */
 export type OpenKinds = ReadonlyMap<string, AlertKind>;
 
-/** Everything about a system that should be known now, but for its demand. */
+/** What about a system should be known at once. */
 export function conditionsOf(db: Db, system: SystemRow, now: number, open: OpenKinds): Condition[] {
   if (system.retiredAt !== null) return [];
   return [
-    ...overfillConditions(db, system, now),
     ...levelConditions(db, system, now, open),
     ...testConditions(db, system, now),
     ...reservoirConditions(db, system, now, open),
   ];
 }
 
-/** Whether demand changed by more than can be explained. It takes long to work out and changes slowly. */
-export function demandConditions(db: Db, system: SystemRow, now: number): Condition[] {
-  const change = system.retiredAt === null ? demandChangeOf(db, system, now) : null;
-  if (!change || change.direction === 'none') return [];
+/** Demand that changed, and overfills that would harm: they take long to work out and change slowly. */
+export function slowConditionsOf(db: Db, system: SystemRow, now: number): Condition[] {
+  if (system.retiredAt !== null) return [];
+  return [...demandConditions(db, system, now), ...overfillConditions(db, system, now)];
+}
+
+function demandConditions(db: Db, system: SystemRow, now: number): Condition[] {
+  const change = demandChangeOf(db, system, now);
+  if (!change || change.direction === 'none' || Math.abs(change.now - change.expected) < LEAST_CHANGE_MEQ_L) return [];
   const { now: is, expected, half, since } = change;
   return [
     {

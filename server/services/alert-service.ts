@@ -1,30 +1,32 @@
 import { and, eq, isNull, max } from 'drizzle-orm';
-import { type AlertEnd, type Condition, nextStep } from '../../shared/domain/alert-rules.ts';
+import { type AlertEnd, type AlertKind, type Condition, nextStep } from '../../shared/domain/alert-rules.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { alerts } from '../db/schema/index.ts';
 import type { Write } from '../db/write.ts';
-import { conditionsOf, demandConditions } from '../queries/alert-conditions.ts';
+import { conditionsOf, slowConditionsOf } from '../queries/alert-conditions.ts';
 import { latestReadings } from '../queries/readings.ts';
 import { systemRow } from '../queries/systems.ts';
 import type { AlertRow } from '../queries/alerts.ts';
 
+const SLOW_KINDS: readonly AlertKind[] = ['demand_changed', 'overfill_risk'];
+
 /**
  * Brings the alerts of a system up to what holds now: opens, worsens and closes them. Call it in the write that may
- * change what holds; a job does it for what only time changes, and {@link weighDemand} for demand.
+ * change what holds; a job does it for what only time changes, and {@link weighRisks} does it for what takes longer to work out.
  */
 export function evaluateAlerts(write: Write, systemId: string): readonly Condition[] {
-  const open = openAlerts(write.tx, systemId).filter(({ kind }) => kind !== 'demand_changed');
+  const open = openAlerts(write.tx, systemId).filter(({ kind }) => !SLOW_KINDS.includes(kind));
   const kinds = new Map(open.map(({ subject, kind }) => [subject, kind]));
   const conditions = conditionsOf(write.tx, systemRow(write.tx, systemId), write.now, kinds);
   bringUpToDate(write, systemId, open, conditions);
   return conditions;
 }
 
-/** The same for the alert about a system's demand, which takes longer to work out. */
-export function weighDemand(write: Write, systemId: string): readonly Condition[] {
-  const open = openAlerts(write.tx, systemId).filter(({ kind }) => kind === 'demand_changed');
-  const conditions = demandConditions(write.tx, systemRow(write.tx, systemId), write.now);
+/** The same for the alerts about demand and overfills. */
+export function weighRisks(write: Write, systemId: string): readonly Condition[] {
+  const open = openAlerts(write.tx, systemId).filter(({ kind }) => SLOW_KINDS.includes(kind));
+  const conditions = slowConditionsOf(write.tx, systemRow(write.tx, systemId), write.now);
   bringUpToDate(write, systemId, open, conditions);
   return conditions;
 }
@@ -52,7 +54,7 @@ export function withAlerts<T>(write: Write, systemId: string, answer: T): T {
 /** Says that someone knows: it is quiet until it is worse by a step. */
 export function acknowledgeAlert(write: Write, alertId: string): void {
   const { systemId, subject, kind } = alertRow(write.tx, alertId);
-  const evaluate = kind === 'demand_changed' ? weighDemand : evaluateAlerts;
+  const evaluate = SLOW_KINDS.includes(kind) ? weighRisks : evaluateAlerts;
   const current = evaluate(write, systemId).find((condition) => condition.subject === subject);
   const alert = alertRow(write.tx, alertId);
   if (alert.closedAt !== null)

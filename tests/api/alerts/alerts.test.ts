@@ -19,7 +19,7 @@ const DAY = 24 * HOUR;
 const BAND = [{ parameter: 'alkalinity' as const, low: 7.5 * MEQ_PER_DKH, high: 9 * MEQ_PER_DKH }];
 
 async function alertsOf(farm: TestFarm, state: 'open' | 'closed' = 'open') {
-  raiseAlerts(farm.deps);
+  await raiseAlerts(farm.deps);
   return (await (await farm.as('grower')).get(`/api/alerts?state=${state}`)).body.items;
 }
 
@@ -78,7 +78,7 @@ describe('alerts', () => {
     const { farm, systemId, alert } = await lowSystem();
     const grower = await farm.as('grower');
     const onToday = async () => {
-      raiseAlerts(farm.deps);
+      await raiseAlerts(farm.deps);
       return (await grower.get('/api/today')).body;
     };
 
@@ -192,7 +192,7 @@ describe('alerts', () => {
     const refused = await viewer.post(`/api/alerts/${alert.id}/acknowledgement`);
     farm.wait(HOUR);
     givenReading(farm, systemId, 8.2);
-    raiseAlerts(farm.deps);
+    await raiseAlerts(farm.deps);
 
     const late = await (await farm.as('owner')).post(`/api/alerts/${alert.id}/acknowledgement`);
 
@@ -204,7 +204,7 @@ describe('alerts', () => {
     for (const dkh of [8.2, 7, 8.2, 7, 8.2]) {
       farm.wait(HOUR);
       givenReading(farm, systemId, dkh);
-      raiseAlerts(farm.deps);
+      await raiseAlerts(farm.deps);
     }
     const grower = await farm.as('grower');
 

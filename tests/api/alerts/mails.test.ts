@@ -31,7 +31,7 @@ function givenLow(farm: TestFarm, code: string): string {
 
 /** What the jobs of one minute do. */
 async function work(farm: TestFarm) {
-  raiseAlerts(farm.deps);
+  await raiseAlerts(farm.deps);
   sendAlertMails(farm.deps);
   sendDigests(farm.deps);
   await sendDueMails(farm.deps);
@@ -69,7 +69,7 @@ describe('alerts by e-mail', () => {
     givenSystem(farm, { bands: BAND }); // never tested
     givenLow(farm, 'KNOWN');
     const endedId = givenLow(farm, 'ENDED');
-    raiseAlerts(farm.deps);
+    await raiseAlerts(farm.deps);
     const { items } = (await grower.get('/api/alerts')).body;
     const known = items.find((alert: { systemCode: string }) => alert.systemCode === 'KNOWN');
     await grower.post(`/api/alerts/${known.id}/acknowledgement`);
@@ -84,7 +84,7 @@ describe('alerts by e-mail', () => {
   it('when someone asks for them, what was open before is not sent after', async () => {
     const farm = await startFarm();
     givenLow(farm, 'OLD');
-    raiseAlerts(farm.deps);
+    await raiseAlerts(farm.deps);
     await choose(farm, { alertsAtOnce: true });
     farm.wait(2 * MINUTE);
 

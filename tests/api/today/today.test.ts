@@ -22,7 +22,7 @@ const DAY = 24 * HOUR;
 const BAND = [{ parameter: 'alkalinity' as const, low: 7.5 * MEQ_PER_DKH, high: 9 * MEQ_PER_DKH }];
 
 async function todayFor(farm: TestFarm, role: Role = 'owner') {
-  raiseAlerts(farm.deps);
+  await raiseAlerts(farm.deps);
   const reply = await (await farm.as(role)).get('/api/today');
   expect(reply.status).toBe(200);
   return reply.body;

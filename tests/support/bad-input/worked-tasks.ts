@@ -1,5 +1,5 @@
 import { taskOutcomes } from '../../../server/db/schema/index.ts';
-import { raiseAlerts } from '../../../server/jobs/raise-alerts.ts';
+import { evaluateAlerts } from '../../../server/services/alert-service.ts';
 import { listAlerts } from '../../../server/queries/alerts.ts';
 import { completeTask } from '../../../server/services/task-outcomes.ts';
 import { renewCalendar } from '../../../server/services/notification-service.ts';
@@ -13,7 +13,7 @@ import type { TestFarm } from '../start-farm.ts';
 export function givenTasksAndAlerts(farm: TestFarm) {
   const systemId = givenSystem(farm, { bands: [{ parameter: 'alkalinity', low: 7.5 * MEQ_PER_DKH, high: 3.3 }] });
   givenReading(farm, systemId, 7);
-  raiseAlerts(farm.deps);
+  farm.write((write) => evaluateAlerts(write, systemId));
   const done = givenTask(farm);
   farm.write((write) => completeTask(write, done.id, { dueOn: done.startsOn, note: '' }));
   const open = givenTask(farm);
