@@ -14,12 +14,12 @@ const DAY = 86_400_000;
 
 /** Of the usual methods, those that this farm works with, and the box or instrument that it began with. */
 const USED: Record<ParameterCode, { method: string; lot: string | null; months: number | null }> = {
-  alkalinity: { method: 'Photometer', lot: 'No. 0412', months: null },
+  alkalinity: { method: 'Photometer', lot: 'P-0412', months: null },
   calcium: { method: 'Titration', lot: 'CA-25-31', months: 18 },
   magnesium: { method: 'Titration', lot: 'MG-25-08', months: 18 },
-  salinity: { method: 'Conductivity meter', lot: 'No. 77', months: null },
+  salinity: { method: 'Conductivity meter', lot: 'C-77', months: null },
   temperature: { method: 'Thermometer', lot: null, months: null },
-  ph: { method: 'pH meter', lot: 'Probe 3', months: null },
+  ph: { method: 'pH meter', lot: 'PR-3', months: null },
   nitrate: { method: 'Photometer', lot: null, months: null },
   phosphate: { method: 'Photometer', lot: null, months: null },
 };

@@ -3,7 +3,7 @@ import { MS_PER_DAY } from '@shared/domain/days.ts';
 import { differenceInUnit } from '@shared/domain/test-error.ts';
 import { unitOf } from '@shared/domain/units.ts';
 import type { Sentence } from '@/components/sentence.ts';
-import { formatNumber } from '@/formatting/format-number.ts';
+import { decimalsForError, formatNumber } from '@/formatting/format-number.ts';
 import { plural } from '@/formatting/plural.ts';
 import { parameterOf } from '@/views/water/water-labels.ts';
 
@@ -22,14 +22,19 @@ export function differenceWords({ parameter, unit }: Kind, difference: number, d
 
 /** "reads 0.4 ± 0.2 dKH too high", or that it can't be told from right. */
 export function biasWords(
-  method: Kind,
+  { parameter, unit }: Kind,
   { bias, low, high, isDistinct }: Pick<Calibration, 'bias' | 'low' | 'high' | 'isDistinct'>,
 ): string {
-  const half = differenceWords(method, (high - low) / 2, 1);
-  if (!isDistinct) {
-    return `no bias to be told: ${signed(method, bias)} ± ${half}`;
-  }
-  return `reads ${differenceWords(method, Math.abs(bias))} ± ${half} too ${bias > 0 ? 'high' : 'low'}`;
+  const [shown, half] = [bias, (high - low) / 2].map((each) => differenceInUnit(parameter, each, unit)) as [
+    number,
+    number,
+  ]; // two in, two out
+  const decimals = decimalsForError(half);
+  const label = parameter === 'ph' ? '' : ` ${unitOf(parameter, unit).label}`;
+  const number = (value: number) =>
+    `${formatNumber(value, { decimals })} ± ${formatNumber(half, { decimals })}${label}`;
+  if (!isDistinct) return `no bias to be told, ${number(shown)}`;
+  return `reads ${number(Math.abs(shown))} too ${bias > 0 ? 'high' : 'low'}`;
 }
 
 /** What is so with the farm's methods, and which to check next. */
@@ -61,10 +66,6 @@ function nameOf({ name, parameter }: TestMethod): string {
   const small = /^[A-Z][a-z]/.test(name) ? name[0]?.toLowerCase() + name.slice(1) : name;
   const label = parameterOf(parameter).label;
   return `${small} for ${parameter === 'ph' ? label : label.toLowerCase()}`;
-}
-
-function signed(method: Kind, difference: number): string {
-  return `${difference < 0 ? '−' : ''}${differenceWords(method, Math.abs(difference))}`;
 }
 
 function decimalsFor(value: number, digits: number): number {
