@@ -43,13 +43,14 @@ export function givenWater(farm: TestFarm) {
   givenRefill(farm, reservoirId);
   givenChangeOver(farm, reservoirId);
   const standbyId = givenReservoir(farm, systemId);
-  givenRefill(farm, standbyId);
+  const mixEventId = givenRefill(farm, standbyId).event.id;
   const dose = { systemId, itemId: supplementId, amount: 5, note: '' };
   return {
     ...{
       systemId,
       tankId: givenTank(farm, systemId),
       standbyId,
+      mixEventId,
       supplementId,
       emptyId: givenReservoir(farm, systemId),
     },
