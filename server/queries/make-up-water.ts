@@ -1,7 +1,7 @@
-import { desc, eq, gt, isNotNull, isNull, sql } from 'drizzle-orm';
+import { desc, eq, isNotNull, isNull, sql } from 'drizzle-orm';
 import type { Cartridge, MakeUpReading, MakeUpWater } from '../../shared/contracts/make-up-water.ts';
 import { CARTRIDGE_STAGES, cartridgeState, rejectionPercent } from '../../shared/domain/cartridges.ts';
-import { type Day, dayOf, daysBetween, MS_PER_DAY, startOfDay } from '../../shared/domain/days.ts';
+import { addDays, type Day, dayOf, daysBetween, MS_PER_DAY, startOfDay } from '../../shared/domain/days.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { cartridges, makeUpReadings } from '../db/schema/index.ts';
@@ -59,7 +59,11 @@ export function toMakeUpReading({
 export function toCartridge(db: Db, row: CartridgeRow, now: number): Cartridge {
   const { timeZone } = farmOf(db);
   const until = row.removedOn ?? dayOf(now, timeZone);
-  const span = { from: startOfDay(row.installedOn, timeZone), to: row.removedOn ? startOfDay(until, timeZone) : now };
+  // What was read on the day of a change is about the one that went out.
+  const span = {
+    from: startOfDay(addDays(row.installedOn, 1), timeZone),
+    to: row.removedOn === null ? now : startOfDay(addDays(row.removedOn, 1), timeZone) - 1,
+  };
   const daysUsed = Math.max(0, daysBetween(row.installedOn, until));
   const litresUsed = litresMade(db, span);
   const { stage, lifeDays, lifeL, limit } = row;
@@ -87,7 +91,7 @@ function litresMade(db: Db, { from, to }: Span): number {
   const row = db
     .select({ litres: sql<number>`total(${makeUpReadings.litresMade})` })
     .from(makeUpReadings)
-    .where(sql`${makeUpReadings.at} > ${from} AND ${makeUpReadings.at} <= ${to}`)
+    .where(sql`${makeUpReadings.at} >= ${from} AND ${makeUpReadings.at} <= ${to}`)
     .get();
   return row?.litres ?? 0;
 }
@@ -102,7 +106,7 @@ function measuredFor(db: Db, { stage }: CartridgeRow, { from, to }: Span): numbe
   const row = db
     .select()
     .from(makeUpReadings)
-    .where(sql`${gt(makeUpReadings.at, from)} AND ${makeUpReadings.at} <= ${to} AND ${isKnown}`)
+    .where(sql`${makeUpReadings.at} >= ${from} AND ${makeUpReadings.at} <= ${to} AND ${isKnown}`)
     .orderBy(desc(makeUpReadings.at))
     .limit(1)
     .get();

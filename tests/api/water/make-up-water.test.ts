@@ -46,7 +46,7 @@ it('when TDS leaves the resin, it is due; a new one takes its place and a piece 
   const after = await grower.get(BASE);
 
   expect(due.body.cartridges).toMatchObject([{ state: 'due', dueBy: 'limit' }]);
-  expect(after.body.cartridges).toMatchObject([{ id: fresh.body.id, daysUsed: 0 }]);
+  expect(after.body.cartridges).toMatchObject([{ id: fresh.body.id, daysUsed: 0, state: 'ok' }]);
   expect(after.body.replaced).toMatchObject([{ id: old.id, removedOn: '2026-03-02', daysUsed: 51 }]);
   expect(farm.db.select().from(lots).all()[0]?.remaining).toBe(2);
 
