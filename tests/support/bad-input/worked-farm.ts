@@ -37,7 +37,6 @@ export async function workedFarm(): Promise<WorkedFarm> {
   const work = givenTasksAndAlerts(farm);
   const imports = givenImport(farm, water.systemId);
   const tested = givenTested(farm, water.systemId);
-  const plans = givenPlans(farm);
   const { systemId } = water;
   const [code] = stock.codes;
   const { lineId, colonyId, listingId } = sales;
@@ -87,10 +86,6 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/water-changes': { id: water.changeId, alkalinityMeqL: 3 },
     '/api/doses': { itemId: water.supplementId, id: water.doseId },
     '/api/systems': { id: systemId },
-    '/api/systems/:id/advice/': { id: plans.systemId, key: plans.key },
-    '/api/advice': { id: plans.adviceId },
-    '/api/systems/:id/overfills': { id: plans.dosedId },
-    '/api/overfills': { id: plans.overfillId },
     '/api/reservoirs': { id: water.emptyId, limeG: 0 },
     '/api/reservoirs/:id/changeovers': { id: water.standbyId },
     '/api/reservoirs/:id/undo': { id: water.standbyId },
@@ -106,6 +101,8 @@ export async function workedFarm(): Promise<WorkedFarm> {
     '/api/calibrations': { id: tested.calibrationId },
     '/api/reading-photos': { id: tested.photoId },
     ...givenDosingWork(farm, systemId),
+    // Last: supplies that come later would make another advice of it.
+    ...givenPlans(farm),
     '/api/reading-imports': { mapping: imports.mapping, id: imports.importId },
   };
   return {
