@@ -169,7 +169,7 @@ function overfillRisk({ code, litres, changeMeqL, ph, harmlessL }: Facts<'overfi
       volume(litres),
       ' raise alkalinity by ',
       { quantity: 'alkalinity', value: changeMeqL, difference: true },
-      ' and pH to ',
+      ', and bring the water to ',
       { quantity: 'ph', value: ph },
       '. Fit a second, independent cut-off',
       ...(harmlessL === null ? ['.'] : [', or keep at most ', volume(harmlessL), ' in it.']),

@@ -35,6 +35,7 @@ export function digestMail(deps: Deps, data: Record<string, unknown>): MailBody 
       `${summary.charAt(0).toUpperCase()}${summary.slice(1)}.`,
       ...digest.alerts.slice(0, MOST_ALERTS).map((alert) => alertLine(alert, timeZone)),
       ...moreLine(digest.alerts.length - MOST_ALERTS, 'alert'),
+      ...quietLine(digest.quiet),
     ],
     rows: [
       ...digest.tasks.slice(0, MOST_TASKS).map((task) => ({
@@ -57,9 +58,13 @@ function summaryOf({ alerts, tasks }: Digest): string {
   return parts.length > 0 ? parts.join(' and ') : 'nothing is due';
 }
 
-function alertLine({ title, detail, acknowledgedBy }: OpenAlert, timeZone: string): string {
-  const known = acknowledgedBy === null ? '' : ` (${acknowledgedBy} knows.)`;
-  return `${plainWords(title, timeZone)}. ${plainWords(detail, timeZone)}${known}`;
+function alertLine({ title, detail }: OpenAlert, timeZone: string): string {
+  return `${plainWords(title, timeZone)}. ${plainWords(detail, timeZone)}`;
+}
+
+function quietLine(quiet: number): string[] {
+  if (quiet === 0) return [];
+  return [`${counted(quiet, 'more alert')} ${quiet === 1 ? 'is' : 'are'} known, and quiet until worse.`];
 }
 
 function moreLine(more: number, what: string): string[] {

@@ -126,6 +126,24 @@ describe('the daily mail', () => {
     expect(farm.mails[0]?.html).toContain('Today at Test Farm');
   });
 
+  it('when somebody knows of an alert, it is counted and not told again', async () => {
+    const farm = await startFarm({ now: '2026-03-02T05:00:00Z' });
+    await choose(farm, { digestHour: 6 });
+    givenLow(farm, 'KNOWN');
+    await raiseAlerts(farm.deps);
+    const grower = await farm.as('grower');
+    const { items } = (await grower.get('/api/alerts')).body;
+    await grower.post(`/api/alerts/${items[0].id}/acknowledgement`);
+    givenTask(farm, { startsOn: '2026-03-02' });
+    farm.wait(HOUR);
+
+    await work(farm);
+
+    expect(farm.mails[0]?.subject).toBe('Today: 1 task due');
+    expect(farm.mails[0]?.text).toContain('1 more alert is known, and quiet until worse.');
+    expect(farm.mails[0]?.text).not.toContain('KNOWN Saltings');
+  });
+
   it('when nothing is open, the day passes without one', async () => {
     const farm = await startFarm({ now: '2026-03-02T05:00:00Z' });
     await choose(farm, { digestHour: 6 });
