@@ -39,7 +39,7 @@ function litresOf(systems: readonly WaterChangePlan[]): number {
 function enoughWords({ coming, saltOnHandG, horizonDays }: WaterChangePlans, today: Day): string {
   const short = coming.find(({ saltLeftG }) => saltLeftG < 0);
   if (short)
-    return ` Salt in store runs out with the change of ${short.systemCode} ${nearDay(short.on, today)}: order before then.`;
+    return ` Salt in store runs out with the change of ${short.systemCode} (${nearDay(short.on, today)}): order before then.`;
   const wants = coming.reduce((sum, { saltG }) => sum + saltG, 0);
   const kg = (grams: number) => `${formatNumber(grams / 1000, { decimals: 1 })} kg`;
   return ` The next ${plural(horizonDays, 'day')} want ${kg(wants)} of salt; ${kg(saltOnHandG)} is in store.`;
