@@ -64,8 +64,10 @@ export const TestMethod = z.object({
 export type TestMethod = z.infer<typeof TestMethod>;
 
 const unit = z.string().min(1, 'Choose a unit.').max(20);
-const error = z.number('Enter the error.').positive('Above zero.').max(10_000);
-const step = z.number('Enter the step.').positive('Above zero.').max(10_000);
+/** No test shows less, in whatever unit. */
+const LEAST = 0.000_001;
+const error = z.number('Enter the error.').min(LEAST, 'Above zero.').max(10_000);
+const step = z.number('Enter the step.').min(LEAST, 'Above zero.').max(10_000);
 const source = z.string().trim().max(300, 'At most 300 characters.');
 const lotCode = z.string().trim().min(1, 'Fill this in.').max(40, 'At most 40 characters.');
 
