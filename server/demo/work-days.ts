@@ -15,6 +15,8 @@ import { daysToEnd, growerOf, timeOn, type World } from './world.ts';
 
 /** The farm has written its work down since so many days; what lies before has left no trace. */
 const WORK_DAYS = 40;
+/** In the last ones alerts are looked at after the swaps too, not each morning alone. */
+const CLOSELY_DAYS = 10;
 /** Part of the tasks that get done on their day, and of the rest that are skipped. */
 const DONE_ON_ITS_DAY = 0.94;
 const SKIPPED = 0.3;
@@ -36,7 +38,7 @@ export function planWork(world: World): void {
     agenda.put(timeOn(day, 16 * 60 + 20), growerOf(world, index), (write) =>
       doTheRest(write, chance, specs, { day, toEnd }),
     );
-    agenda.put(timeOn(day, 11 * 60), SYSTEM, (write) => lookAtAll(world, write));
+    if (toEnd <= CLOSELY_DAYS) agenda.put(timeOn(day, 11 * 60), SYSTEM, (write) => lookAtAll(world, write));
   });
   agenda.put(now, staff.grower, (write) => settleByTests(world, write, dayOf(now, FARM.timeZone)));
   agenda.put(now, staff.owner, (write) => {
