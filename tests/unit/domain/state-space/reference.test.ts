@@ -8,7 +8,7 @@ import reference from '../../../reference/state-space.json' with { type: 'json' 
 type Case = (typeof reference.cases)[number];
 
 /** The three models of the file: level alone, level and slope by steps, and level and slope over continuous time. */
-function transitionOf({ model, params }: Case, days: number, jump: number): Transition {
+function transitionOf({ model, params }: Pick<Case, 'model' | 'params'>, days: number, jump: number): Transition {
   const qLevel = params.q_level;
   const qSlope = 'q_slope' in params ? (params.q_slope ?? 0) : 0;
   if (model === 'll') return { keep: 1, reach: 0, input: jump, noise: { ...NOTHING, ll: qLevel * days } };
@@ -17,7 +17,7 @@ function transitionOf({ model, params }: Case, days: number, jump: number): Tran
   return { keep: 1, reach: days, input: jump, noise };
 }
 
-function startOf({ initial, model }: Case): Belief {
+function startOf({ initial, model }: Pick<Case, 'initial' | 'model'>): Belief {
   const known = typeof initial === 'string' ? null : initial;
   const number = (rows: readonly (readonly (string | number)[])[] | undefined, row: number, column: number) =>
     Number(rows?.[row]?.[column] ?? 0);
@@ -30,7 +30,7 @@ function startOf({ initial, model }: Case): Belief {
 }
 
 /** Filtered and smoothed beliefs of a case, and its log-likelihood. */
-function run(each: Case) {
+function run(each: Pick<Case, 'model' | 'params' | 'H' | 'initial' | 'inputs' | 'rows'>) {
   const predicted: Belief[] = [];
   const steps: FilteredStep[] = [];
   let logLikelihood = 0;
