@@ -2,6 +2,7 @@ import type { DemandInputs } from '../../shared/domain/demand/inputs.ts';
 import { MS_PER_DAY } from '../../shared/domain/days.ts';
 import { trackDemand } from '../../shared/domain/demand/track-demand.ts';
 import { readings } from '../../server/db/schema/index.ts';
+import { keepDemands } from '../../server/jobs/keep-demands.ts';
 import { systemDemand } from '../../server/queries/demand.ts';
 import { knownDemand } from '../../server/queries/demand-state.ts';
 import { listSystems, systemRow } from '../../server/queries/systems.ts';
@@ -31,6 +32,7 @@ export async function demandTimes({ deps, sqlite, now }: BenchFarm): Promise<[wh
   });
   const one = await medianOf(ROUNDS, (run) => newTest(now + run * 60_000));
   const page = await medianOf(ROUNDS, () => systemDemand(db, row.id, now));
+  await keepDemands(deps);
   const overview = await medianOf(ROUNDS, () => waterOverview(db, now));
   return [
     [`Demand of ${SYSTEMS} systems over ${YEARS} years of daily tests`, `${all.toFixed(0)} ms`],
