@@ -61,7 +61,7 @@ describe('the address of the bench', () => {
 describe('what a calculator says', () => {
   it('when a field is empty, asks for it by its name', () => {
     const outcome = outcomeOf({ ...start, volumeL: null }, ['salinity', 'volumeL'], () => 1);
-    expect(outcome).toEqual({ value: null, problem: 'Fill in “Water in the system”.' });
+    expect(outcome).toEqual({ value: null, problem: 'Fill in “System volume”.' });
   });
 
   it('when the numbers are refused, says why', () => {

@@ -23,7 +23,7 @@ const FIELDS = {
   dicUmolKg: { label: 'Inorganic carbon', unit: 'µmol/kg', start: 2300 },
   pco2Uatm: { label: 'CO₂ of the water', unit: 'µatm', start: 450 },
   roomPco2Uatm: { label: 'CO₂ of the room', unit: 'µatm', start: USUAL_ROOM_PCO2_UATM },
-  volumeL: { label: 'Water in the system', quantity: 'volume', start: 1000 },
+  volumeL: { label: 'System volume', quantity: 'volume', start: 1000 },
   reading: { label: 'Reading', start: 53.1 },
   amount: { label: 'Amount', start: 8 },
   waterL: { label: 'Fresh water', quantity: 'volume', start: 100 },
