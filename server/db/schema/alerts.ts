@@ -4,7 +4,8 @@ import { ALERT_KINDS } from '../../../shared/domain/alert-rules.ts';
 import type { AlertEnd, AlertFacts } from '../../../shared/domain/alert-rules.ts';
 import { day, id, instant, version } from './columns.ts';
 import { users } from './people.ts';
-import { reservoirs, systems } from './water.ts';
+import { reservoirs } from './reservoirs.ts';
+import { systems } from './water.ts';
 
 /** Something about a system that needs a look, from when it began until what ended it. One open alert for each subject. */
 export const alerts = sqliteTable(

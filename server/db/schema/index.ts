@@ -2,6 +2,7 @@ export * from './farm.ts';
 export * from './people.ts';
 export * from './test-methods.ts';
 export * from './water.ts';
+export * from './reservoirs.ts';
 export * from './stock.ts';
 export * from './supplies.ts';
 export * from './costs.ts';

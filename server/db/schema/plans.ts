@@ -1,7 +1,8 @@
 import { sql } from 'drizzle-orm';
 import { check, index, real, sqliteTable, text, uniqueIndex } from 'drizzle-orm/sqlite-core';
 import { id, instant } from './columns.ts';
-import { reservoirs, systems } from './water.ts';
+import { reservoirs } from './reservoirs.ts';
+import { systems } from './water.ts';
 
 /** Advice on dosing that a person answered, with all that it was based on. Never edited, but for being taken back. */
 export const dosingAdvice = sqliteTable(

@@ -5,7 +5,8 @@ import type { RepeatRule } from '../../../shared/domain/repeat-rule.ts';
 import { ROLES } from '../../../shared/permissions.ts';
 import { day, id, instant, version } from './columns.ts';
 import { users } from './people.ts';
-import { reservoirs, systems } from './water.ts';
+import { reservoirs } from './reservoirs.ts';
+import { systems } from './water.ts';
 
 /** Work that comes due once or again and again. `dueOn` is the next time; null once nothing more comes. */
 export const tasks = sqliteTable(
