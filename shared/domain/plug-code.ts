@@ -57,18 +57,25 @@ export function parsePlugCode(text: string): ParsedPlugCode {
   if (folded.length < PLUG_CODE_LENGTH) return { problem: 'too_short' };
   if (folded.length > PLUG_CODE_LENGTH) return { problem: 'too_long' };
   if (isPlugCode(folded)) return { code: folded };
-  const problem = [...folded].every((character) => PLUG_ALPHABET.includes(character))
-    ? 'wrong_check'
-    : 'wrong_character';
+  const problem = isInAlphabet(folded) ? 'wrong_check' : 'wrong_character';
   const [suggestion, ...others] = nearCodes(folded);
   return suggestion !== undefined && others.length === 0 ? { problem, suggestion } : { problem };
+}
+
+/**
+ * The text in the form that codes are stored in, where it has the shape of one: seven characters of the alphabet, be the
+ * check right or wrong. Null for everything else.
+ */
+export function foldPlugCode(text: string): string | null {
+  const folded = fold(text);
+  return folded.length === PLUG_CODE_LENGTH && isInAlphabet(folded) ? folded : null;
 }
 
 /** Whether the text is a plug code exactly as it is stored: seven capital characters with a right check. */
 export function isPlugCode(text: string): boolean {
   return (
     text.length === PLUG_CODE_LENGTH &&
-    [...text].every((character) => PLUG_ALPHABET.includes(character)) &&
+    isInAlphabet(text) &&
     checkCharacter(text.slice(0, BODY_LENGTH)) === text.charAt(BODY_LENGTH)
   );
 }
@@ -81,6 +88,10 @@ export function formatPlugCode(code: string): string {
 /** What a label's QR holds, in capitals so that the compact alphanumeric mode of ISO/IEC 18004 serves. */
 export function plugUrl(origin: string, code: string): string {
   return `${origin.replace(/\/+$/, '')}/P/${code}`.toUpperCase();
+}
+
+function isInAlphabet(text: string): boolean {
+  return [...text].every((character) => PLUG_ALPHABET.includes(character));
 }
 
 function fold(text: string): string {

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { CALCULATORS } from '../../../shared/domain/calculators/index.ts';
 import { domainErrorOf } from '../../support/domain-error.ts';
 import carbonate from '../../reference/carbonate.json' with { type: 'json' };
+import checks from '../../reference/check-characters.json' with { type: 'json' };
 import survival from '../../reference/survival.json' with { type: 'json' };
 
 function calculate(name: string, input: unknown) {
@@ -157,21 +158,35 @@ describe('survival', () => {
 });
 
 describe('code', () => {
-  // AB3DE4 has the check E by ISO 7064 MOD 37-2.
-  it('when it is a plug code in small letters with a dash, or the address of a label, is read', () => {
-    const right = { code: 'AB3DE4E', valid: true, suggestion: null };
-    expect(calculate('code', { text: 'ab3-de4e' })).toEqual(right);
-    expect(calculate('code', { text: 'https://farm.example.com/p/AB3DE4E' })).toEqual(right);
+  // ISO/IEC 7064 MOD 37-2: the check of B00017 is J (check-characters.json).
+  const six = checks.mod37_2.filter(({ body }) => body.length === 6);
+
+  it.each(six)('of $body with its published check $check is right, however it is written', ({ body, check }) => {
+    const code = `${body}${check}`;
+    const written = code.replaceAll('0', 'o').replaceAll('1', 'l').toLowerCase();
+    for (const text of [code, written, `${code.slice(0, 3)}-${code.slice(3)}`, `HTTPS://FARM.EXAMPLE.COM/P/${code}`]) {
+      expect(calculate('code', { text })).toEqual({ code, valid: true, suggestion: null });
+    }
+  });
+
+  it.each(six)('when the check of $body is wrong, is the code as read, and not right', ({ body, check }) => {
+    for (const wrong of [...checks.alphabet].filter((character) => character !== check)) {
+      expect(calculate('code', { text: `${body}${wrong}`.toLowerCase() })).toMatchObject({
+        ...{ code: `${body}${wrong}`, valid: false },
+      });
+    }
   });
 
   it.each([
-    ['two neighbours are swapped', 'BA3DE4E'],
-    ['a character is read as its look-alike', '4B3DE4E'],
-  ])('when %s, the right one is suggested', (_, text) => {
-    expect(calculate('code', { text })).toEqual({ code: null, valid: false, suggestion: 'AB3DE4E' });
+    ['B0001J7', 'B00017J'],
+    ['800017J', 'B00017J'],
+    ['BA3DE4E', 'AB3DE4E'],
+    ['4B3DE4E', 'AB3DE4E'],
+  ])('when %s has a swap or a look-alike in it, suggests the one right code %s', (text, suggestion) => {
+    expect(calculate('code', { text })).toEqual({ code: text, valid: false, suggestion });
   });
 
-  it('when nothing near it is a code, nothing is suggested', () => {
-    expect(calculate('code', { text: 'AB3' })).toEqual({ code: null, valid: false, suggestion: null });
+  it.each(['', 'B0001', 'B00017JJ', 'B0001*J', 'B00U17J'])('when it is "%s", has no shape of a code', (text) => {
+    expect(calculate('code', { text })).toMatchObject({ code: null, valid: false });
   });
 });
