@@ -4,6 +4,7 @@ export * from './test-methods.ts';
 export * from './water.ts';
 export * from './reservoirs.ts';
 export * from './stock.ts';
+export * from './labels.ts';
 export * from './supplies.ts';
 export * from './costs.ts';
 export * from './orders.ts';
