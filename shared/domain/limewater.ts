@@ -1,10 +1,11 @@
 import { DomainError } from '../errors.ts';
+import { ATOMIC_G_PER_MOL } from './atomic-weights.ts';
 import { assertAboveZero, assertNotNegative, assertPurity, assertWithin } from './ranges.ts';
 
 /** Molar masses, g/mol, from CIAAW abridged standard atomic weights. */
 export const CALCIUM_HYDROXIDE_G_PER_MOL = 74.092;
 const ACETIC_ACID_G_PER_MOL = 60.052;
-export const CALCIUM_G_PER_MOL = 40.078;
+export const CALCIUM_G_PER_MOL = ATOMIC_G_PER_MOL.Ca;
 
 const SOLUBILITY_LIMITS = { min: 15, max: 30 } as const;
 

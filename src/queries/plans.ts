@@ -15,10 +15,11 @@ const planKeys = {
 };
 
 /** Advice on the dosing of a system, and the plan that runs. */
-export function useSystemPlan(systemId: MaybeRefOrGetter<string>) {
+export function useSystemPlan(systemId: MaybeRefOrGetter<string | undefined>) {
   return useQuery({
-    queryKey: computed(() => planKeys.one(toValue(systemId))),
-    queryFn: ({ signal }) => callApi(planEndpoints.show, { params: { id: toValue(systemId) }, signal }),
+    queryKey: computed(() => planKeys.one(toValue(systemId) ?? '')),
+    queryFn: ({ signal }) => callApi(planEndpoints.show, { params: { id: toValue(systemId) ?? '' }, signal }),
+    enabled: computed(() => toValue(systemId) !== undefined),
   });
 }
 

@@ -4,6 +4,7 @@ import { reservoirEndpoints } from '@shared/contracts/reservoirs.ts';
 import { USUAL_ACID_PERCENT, USUAL_LIME_PURITY } from '@shared/domain/limewater.ts';
 import { callApi } from '@/api/call-api.ts';
 import { useForm } from '@/composables/useForm.ts';
+import { useSystemPlan } from '@/queries/plans.ts';
 import { useReservoirs } from '@/queries/reservoirs.ts';
 import { useSystems } from '@/queries/systems.ts';
 import { useAct, useSystemDemand, useWaterItems } from '@/queries/water.ts';
@@ -35,6 +36,7 @@ export function useMixForm(asked: MixAsked) {
   const { data: items } = useWaterItems();
   const { chosenId, reservoir, choices } = useMixTarget(reservoirs, () => asked.reservoirId);
   const { data: demand } = useSystemDemand(() => reservoir.value?.systemId, 90);
+  const { data: advised } = useSystemPlan(() => reservoir.value?.systemId);
   const progress = useMixProgress(chosenId);
 
   const form = useForm(
@@ -79,8 +81,13 @@ export function useMixForm(asked: MixAsked) {
     if (!base.value || facts?.systemId !== reservoir.value?.systemId || !facts) return null;
     return temperatureC < 15 || temperatureC > 30 ? null : holdingMix(facts, base.value);
   });
-  const suggestion = computed(() => planned(asked, base.value?.waterL ?? null) ?? holding.value);
-  const isPlanned = computed(() => planned(asked, base.value?.waterL ?? null) !== null);
+  // Amounts in the address come first, then the plan that the farm has taken for this system.
+  const plan = computed(() => {
+    const runs = advised.value?.systemId === reservoir.value?.systemId ? advised.value?.plan : null;
+    return planned({ ...(runs && runs.limeGPerL > 0 ? runs : {}), ...givenOf(asked) }, base.value?.waterL ?? null);
+  });
+  const suggestion = computed(() => plan.value ?? holding.value);
+  const isPlanned = computed(() => plan.value !== null);
 
   // Another vessel, another fill: what it has room for is the likely amount; a mix under way goes on as it was.
   watch(
@@ -130,8 +137,14 @@ export function useMixForm(asked: MixAsked) {
   };
 }
 
-/** Amounts that a plan put into the address. */
-function planned(asked: MixAsked, waterL: number | null): { limeG: number; vinegarMl: number } | null {
+type AskedAmounts = Pick<MixAsked, 'limeG' | 'vinegarMl' | 'limeGPerL' | 'vinegarMlPerL'>;
+
+function givenOf({ limeG, vinegarMl, limeGPerL, vinegarMlPerL }: MixAsked): AskedAmounts {
+  return limeG === undefined && limeGPerL === undefined ? {} : { limeG, vinegarMl, limeGPerL, vinegarMlPerL };
+}
+
+/** The amounts of a plan, whole or for each litre, for so much water. */
+function planned(asked: AskedAmounts, waterL: number | null): { limeG: number; vinegarMl: number } | null {
   if (asked.limeG !== undefined) return { limeG: asked.limeG, vinegarMl: asked.vinegarMl ?? 0 };
   if (asked.limeGPerL === undefined || waterL === null) return null;
   const whole = (perL: number | undefined) => Math.round((perL ?? 0) * waterL);
