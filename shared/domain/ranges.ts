@@ -8,9 +8,7 @@ import { DomainError } from '../errors.ts';
  */
 export function assertWithin(name: string, value: number, min: number, max: number): void {
   if (value >= min && value <= max) return;
-  throw new DomainError('domain.out_of_range', `${name} must be between ${min} and ${max}.`, {
-    details: { value, min, max },
-  });
+  throw new DomainError('domain.out_of_range', betweenWords(name, min, max), { details: { value, min, max } });
 }
 
 /**
@@ -21,7 +19,7 @@ export function assertWithin(name: string, value: number, min: number, max: numb
  */
 export function assertInput(path: string, name: string, value: number, min: number, max: number): void {
   if (value >= min && value <= max) return;
-  const message = `${name} must be between ${min} and ${max}.`;
+  const message = betweenWords(name, min, max);
   throw new DomainError('domain.out_of_range', message, {
     fields: [{ path, message }],
     details: { input: path, value, min, max },
@@ -44,4 +42,10 @@ export function assertAboveZero(name: string, value: number): void {
 export function assertPurity(purity: number): void {
   if (purity > 0 && purity <= 1) return;
   throw new DomainError('domain.out_of_range', 'Purity must be above 0 % and at most 100 %.', { details: { purity } });
+}
+
+/** Limits that were worked out have more digits than anybody reads. */
+function betweenWords(name: string, min: number, max: number): string {
+  const shown = (limit: number) => String(Number(limit.toPrecision(6)));
+  return `${name} must be between ${shown(min)} and ${shown(max)}.`;
 }
