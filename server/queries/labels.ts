@@ -2,10 +2,11 @@ import { and, asc, eq, inArray, isNull, sql } from 'drizzle-orm';
 import type { LabelContents, LabelSubject, LabelSupply } from '../../shared/contracts/labels.ts';
 import type { LabelContent } from '../../shared/domain/label-layout.ts';
 import { formatPlugCode, parsePlugCode, plugUrl } from '../../shared/domain/plug-code.ts';
-import { rackUrl } from '../../shared/domain/scan-text.ts';
 import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
-import { batches, items, lines, lots, plugs, racks, systems, tanks } from '../db/schema/index.ts';
+import { batches, items, lines, lots, plugs } from '../db/schema/index.ts';
+import { inGivenOrder, listOf } from './label-lists.ts';
+import { boxLabels, rackLabels, tankLabels } from './place-labels.ts';
 
 interface PlugOnLabel {
   code: string;
@@ -17,13 +18,15 @@ interface PlugOnLabel {
 }
 
 /**
- * What the labels of a batch, of some plugs or of some racks say.
+ * What the labels of a batch, of some plugs, racks or tanks, or of the boxes of an order say.
  *
  * @param origin address of the farm's pages, which the QR codes lead to
  * @throws {DomainError} `record.not_found` naming the codes that do not exist; `input.invalid` for what is no code
  */
 export function labelContents(db: Db, subject: LabelSubject, origin: string): LabelContents {
-  if (subject.racks !== undefined) return rackLabels(db, listOf(subject.racks), origin);
+  if (subject.racks !== undefined) return rackLabels(db, subject.racks, origin);
+  if (subject.tanks !== undefined) return tankLabels(db, subject.tanks, origin);
+  if (subject.orderId !== undefined) return boxLabels(db, subject.orderId, origin);
   const found = subject.batchId === undefined ? plugsByCode(db, subject.codes ?? '') : plugsOf(db, subject.batchId);
   const batchIds = [...new Set(found.map(({ batchId }) => batchId))];
   const [first] = found;
@@ -76,51 +79,6 @@ function plugsByCode(db: Db, list: string): PlugOnLabel[] {
       .map((plug) => [plug.code, plug]),
   );
   return inGivenOrder(codes, byCode, 'plug');
-}
-
-function rackLabels(db: Db, codes: readonly string[], origin: string): LabelContents {
-  const upper = codes.map((code) => code.toUpperCase());
-  const rows = db
-    .select({ code: racks.code, tankCode: tanks.code, systemCode: systems.code })
-    .from(racks)
-    .innerJoin(tanks, eq(tanks.id, racks.tankId))
-    .innerJoin(systems, eq(systems.id, tanks.systemId))
-    .where(inArray(racks.code, upper))
-    .all();
-  const found = inGivenOrder(upper, new Map(rows.map((row) => [row.code, row])), 'rack');
-  return {
-    title: found.length === 1 ? `Rack ${found[0]?.code ?? ''}` : `${found.length} racks`,
-    batchId: null,
-    labels: found.map(({ code, tankCode, systemCode }) => ({
-      qrText: rackUrl(origin, code),
-      code,
-      glyphCode: null,
-      rows: [`tank ${tankCode}`, `system ${systemCode}`],
-    })),
-  };
-}
-
-function inGivenOrder<Found>(codes: readonly string[], byCode: ReadonlyMap<string, Found>, noun: string): Found[] {
-  const missing = codes.filter((code) => !byCode.has(code));
-  if (missing.length > 0) {
-    const shown = missing.slice(0, 5).join(', ');
-    throw new DomainError(
-      'record.not_found',
-      `There is no ${noun} ${shown}${missing.length > 5 ? ' and others' : ''}.`,
-      {
-        details: { missing: missing.slice(0, 100) },
-      },
-    );
-  }
-  return codes.flatMap((code) => byCode.get(code) ?? []);
-}
-
-function listOf(text: string): string[] {
-  const parts = text
-    .split(',')
-    .map((part) => part.trim())
-    .filter((part) => part !== '');
-  return [...new Set(parts)];
 }
 
 function selectPlugs(db: Db) {

@@ -24,6 +24,7 @@ import { paymentRoutes } from './payment-routes.ts';
 import { shopRoutes } from './shop-routes.ts';
 import { storeRoutes } from './store-routes.ts';
 import { labelRoutes } from './label-routes.ts';
+import { labelStockRoutes } from './label-stock-routes.ts';
 import { publicRoutes } from './public-routes.ts';
 import { accountRoutes } from './account-routes.ts';
 import { auditRoutes } from './audit-routes.ts';
@@ -38,6 +39,7 @@ import { supplyRoutes } from './supply-routes.ts';
 /** Every resource's routes, in one list. */
 export function registerRoutes(api: Api): void {
   labelRoutes(api);
+  labelStockRoutes(api);
   publicRoutes(api);
   sessionRoutes(api);
   stockRoutes(api);

@@ -1,108 +1,84 @@
-import { createRequire } from 'node:module';
+import { setImmediate } from 'node:timers/promises';
 import PDFDocument from 'pdfkit';
-import QRCode from 'qrcode';
-import { glyphOf } from '../../shared/domain/glyph.ts';
-import { type LabelContent, type LabelLayout, layoutLabel } from '../../shared/domain/label-layout.ts';
-import {
-  LABEL_SHEETS,
-  type LabelSheet,
-  type LabelSheetId,
-  PAPERS,
-  placesFor,
-} from '../../shared/domain/label-sheets.ts';
-import { qrRuns } from '../../shared/domain/qr-runs.ts';
+import type { LabelFit } from '../../shared/domain/label-fit.ts';
+import type { LabelContent } from '../../shared/domain/label-layout.ts';
+import { pageOf, placesFor } from '../../shared/domain/label-places.ts';
+import type { LabelMeasures } from '../../shared/domain/label-sheets.ts';
+import { DomainError } from '../../shared/errors.ts';
+import { drawEdge, drawLabel, MONO_FILE, POINTS_PER_MM } from './draw-label.ts';
 import { pdfBytes } from './pdf-bytes.ts';
 
-const POINTS_PER_MM = 72 / 25.4;
-const MONO_FILE = createRequire(import.meta.url).resolve(
-  '@fontsource/roboto-mono/files/roboto-mono-latin-500-normal.woff',
-);
-/** Fine enough not to disturb, thick enough for a printer of 600 dpi, mm. */
-const HAIRLINE = 0.08;
+/** Drawn at a stretch; between them the server answers others. */
+const LABELS_AT_A_STRETCH = 20;
 
-export interface LabelRun {
-  sheetId: LabelSheetId;
+interface LabelRun {
+  sheet: LabelMeasures;
   labels: readonly LabelContent[];
   start: number;
-  shiftX: number;
-  shiftY: number;
+  fit: LabelFit;
   edges: boolean;
   title: string;
 }
 
-/** A PDF of labels in true millimetres: vector QR codes and embedded type, black on white. */
-export async function renderLabelSheet(run: LabelRun): Promise<Buffer> {
-  const sheet = LABEL_SHEETS[run.sheetId];
-  const paper = PAPERS[sheet.paper];
-  const places = placesFor(sheet, run.labels.length, run.start);
-  const doc = new PDFDocument({
-    autoFirstPage: false,
-    size: [paper.width * POINTS_PER_MM, paper.height * POINTS_PER_MM],
-    margin: 0,
-    info: { Title: `Labels: ${run.title}`, Creator: 'Limestead' },
-  });
+/** How a run is followed, and stopped, while it is drawn. */
+interface LabelRunWatch {
+  onDrawn(labels: number): void;
+  signal: AbortSignal;
+}
+
+/**
+ * A PDF of labels in true millimetres: vector QR codes and embedded type, black on white.
+ *
+ * @throws {DomainError} `input.invalid` where the sheet has no such start; `service.unavailable` once stopped
+ */
+export async function renderLabelSheet(run: LabelRun, watch?: LabelRunWatch): Promise<Buffer> {
+  const places = placesFor(run.sheet, run.labels.length, run.start);
+  const doc = openLabelPdf(run.sheet, `Labels: ${run.title}`);
   const finished = pdfBytes(doc);
-  keepTrueSize(doc);
-  doc.registerFont('mono', MONO_FILE);
 
   let openPage = -1;
-  run.labels.forEach((label, index) => {
+  for (const [index, label] of run.labels.entries()) {
     const place = places[index];
-    if (!place) return;
-    if (place.page !== openPage) {
-      doc.addPage();
-      // From here on lengths are millimetres.
-      doc.scale(POINTS_PER_MM);
-      openPage = place.page;
-    }
+    if (!place) continue;
+    if (place.page !== openPage) addLabelPage(doc, run.fit);
+    openPage = place.page;
     doc.save();
-    doc.translate(place.x + run.shiftX, place.y + run.shiftY);
-    if (sheet.cutLines || run.edges) drawEdge(doc, sheet);
-    drawLabel(doc, sheet, label);
+    doc.translate(place.x, place.y);
+    if (run.sheet.cutLines || run.edges) drawEdge(doc, run.sheet);
+    drawLabel(doc, run.sheet, label);
     doc.restore();
-  });
+    if ((index + 1) % LABELS_AT_A_STRETCH === 0) await pause(index + 1, watch);
+  }
   doc.end();
   return finished;
 }
 
-function drawLabel(doc: PDFKit.PDFDocument, sheet: LabelSheet, label: LabelContent): void {
-  // The smallest version that holds the text; M restores about 15 % of what algae or a scratch hide.
-  const { modules } = QRCode.create(label.qrText, { errorCorrectionLevel: 'M' });
-  const layout = layoutLabel(sheet, label, modules.size);
-  drawQr(doc, modules, layout.qr);
-  if (layout.glyph && label.glyphCode !== null) drawGlyph(doc, label.glyphCode, layout.glyph);
-  for (const { text, x, y, size, anchor } of layout.texts) {
-    doc.font('mono').fontSize(size).fillColor('black');
-    const left = anchor === 'middle' ? x - doc.widthOfString(text) / 2 : x;
-    doc.text(text, left, y, { lineBreak: false, baseline: 'alphabetic' });
-  }
+/** A PDF whose pages are those of a label stock. */
+export function openLabelPdf(sheet: LabelMeasures, title: string): PDFKit.PDFDocument {
+  const page = pageOf(sheet);
+  const doc = new PDFDocument({
+    autoFirstPage: false,
+    size: [page.width * POINTS_PER_MM, page.height * POINTS_PER_MM],
+    margin: 0,
+    info: { Title: title, Creator: 'Limestead' },
+  });
+  keepTrueSize(doc);
+  doc.registerFont('mono', MONO_FILE);
+  return doc;
 }
 
-function drawQr(doc: PDFKit.PDFDocument, modules: QRCode.BitMatrix, qr: LabelLayout['qr']): void {
-  const [left, top] = [qr.x + qr.quiet, qr.y + qr.quiet];
-  for (const run of qrRuns(modules.size, (row, column) => modules.get(row, column) === 1)) {
-    doc.rect(left + run.x * qr.module, top + run.y * qr.module, run.length * qr.module, qr.module);
-  }
-  doc.fill('black');
+/** A fresh page, on which lengths are millimetres, as the printer needs them. */
+export function addLabelPage(doc: PDFKit.PDFDocument, fit: LabelFit): void {
+  doc.addPage();
+  doc.scale(POINTS_PER_MM);
+  doc.translate(fit.shiftX, fit.shiftY);
+  doc.scale(fit.scaleX, fit.scaleY);
 }
 
-function drawGlyph(doc: PDFKit.PDFDocument, code: string, box: { x: number; y: number; side: number }): void {
-  const glyph = glyphOf(code);
-  doc.save();
-  doc.translate(box.x, box.y).scale(box.side / 100);
-  doc.lineWidth(glyph.stroke).lineCap('round');
-  for (const { cx, cy, radius, septa } of glyph.corallites) {
-    doc.circle(cx, cy, radius);
-    for (const { x1, y1, x2, y2 } of septa) doc.moveTo(x1, y1).lineTo(x2, y2);
-  }
-  doc.stroke('black');
-  doc.restore();
-}
-
-function drawEdge(doc: PDFKit.PDFDocument, { shape, width, height }: LabelSheet): void {
-  if (shape === 'round') doc.circle(width / 2, height / 2, width / 2);
-  else doc.rect(0, 0, width, height);
-  doc.lineWidth(HAIRLINE).stroke('#999999');
+async function pause(drawn: number, watch: LabelRunWatch | undefined): Promise<void> {
+  watch?.onDrawn(drawn);
+  await setImmediate();
+  if (watch?.signal.aborted) throw new DomainError('service.unavailable', 'The labels were stopped.');
 }
 
 /** Asks PDF viewers not to shrink the page to the printer's margins. */

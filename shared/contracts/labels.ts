@@ -1,40 +1,59 @@
 import { z } from 'zod';
-import { LABEL_SHEET_IDS } from '../domain/label-sheets.ts';
-import { done, id } from './common.ts';
+import { done, id, idParams, instant, listQuery, pageOf } from './common.ts';
 import type { Endpoint } from './endpoint.ts';
+import { printerName, stockId } from './label-stocks.ts';
 
 /** Codes with commas between them. */
 const codeList = z.string().trim().min(1).max(6000, 'At most 6,000 characters: print the rest as a second file.');
 
-/** What labels are for: all plugs of a batch, plugs by their codes, or racks by their codes. */
+/** What labels are for: plugs of a batch or by their codes, racks, tanks, or the boxes of an order. */
 const subject = {
   batchId: id.optional(),
   codes: codeList.optional(),
   racks: codeList.optional(),
+  tanks: codeList.optional(),
+  orderId: id.optional(),
 };
-type Subject = { batchId?: string | undefined; codes?: string | undefined; racks?: string | undefined };
-const namesOneThing = ({ batchId, codes, racks }: Subject) =>
-  [batchId, codes, racks].filter((each) => each !== undefined).length === 1;
-const chooseOne = { message: 'Choose a batch, plugs or racks to print labels for.', path: ['batchId'] };
+type Subject = { [What in keyof typeof subject]?: string | undefined };
+const namesOneThing = ({ batchId, codes, racks, tanks, orderId }: Subject) =>
+  [batchId, codes, racks, tanks, orderId].filter((each) => each !== undefined).length === 1;
+const chooseOne = {
+  message: 'Choose a batch, plugs, racks, tanks or an order to print labels for.',
+  path: ['batchId'],
+};
 
 export const LabelSubject = z.strictObject(subject).refine(namesOneThing, chooseOne);
 export type LabelSubject = z.infer<typeof LabelSubject>;
 
-const shift = z.coerce.number().min(-5, 'At most 5 mm.').max(5, 'At most 5 mm.').default(0);
-export const PrintLabels = z
-  .strictObject({
-    ...subject,
-    sheet: z.enum(LABEL_SHEET_IDS),
-    /** First free place of a part-used sheet, counted from 1 along the rows. */
-    start: z.coerce.number().int().min(1).max(300).default(1),
-    /** What the printer needs to hit the labels, mm to the right and down. */
-    shiftX: shift,
-    shiftY: shift,
-    /** Draws the edge of every label, to check a sheet against the light. */
-    edges: z.enum(['0', '1']).default('0'),
-  })
+const place = z.int('Enter a whole number.').min(1, 'At least 1.').max(5000, 'At most 5,000.');
+/** A subject and which of its labels, counted from 1: all where they are left out. */
+const PrintedSubject = z
+  .strictObject({ ...subject, from: place.optional(), to: place.optional() })
   .refine(namesOneThing, chooseOne);
+export type PrintedSubject = z.infer<typeof PrintedSubject>;
+
+export const PrintLabels = z.strictObject({
+  subject: PrintedSubject,
+  stockId,
+  /** First free place of a part-used sheet, counted from 1 along the rows. */
+  start: z.int('Enter a whole number.').min(1, 'At least 1.').max(1600).default(1),
+  /** Whose saved fit is used; without one, labels are drawn where they belong. */
+  printer: printerName.nullable().default(null),
+  /** Draws the edge of every label, to check a sheet against the light. */
+  edges: z.boolean().default(false),
+});
 export type PrintLabels = z.infer<typeof PrintLabels>;
+
+/** A run of labels that can be printed again. */
+export const LabelPrint = PrintLabels.extend({
+  id,
+  title: z.string(),
+  labels: z.int(),
+  stockName: z.string(),
+  at: instant,
+  by: z.string(),
+});
+export type LabelPrint = z.infer<typeof LabelPrint>;
 
 export const LabelContents = z.object({
   /** Where the labels are from, as a title. */
@@ -64,12 +83,37 @@ export type TakeLabels = z.infer<typeof TakeLabels>;
 
 export const labelEndpoints = {
   print: {
-    method: 'get',
-    path: '/api/labels',
+    method: 'post',
+    path: '/api/labels/prints',
     access: 'stock.label',
-    summary: 'A PDF of labels for plugs or racks',
-    query: PrintLabels,
+    summary: 'Note a run of labels, whose PDF is then made',
+    body: PrintLabels,
+    response: LabelPrint,
+    creates: true,
+  },
+  prints: {
+    method: 'get',
+    path: '/api/labels/prints',
+    access: 'stock.label',
+    summary: 'Runs of labels, the latest first',
+    query: listQuery.omit({ search: true }),
+    response: pageOf(LabelPrint),
+  },
+  file: {
+    method: 'get',
+    path: '/api/labels/prints/:id/file',
+    access: 'stock.label',
+    summary: 'The PDF of a run of labels; closing the connection stops it',
+    params: idParams,
     answer: 'file',
+  },
+  progress: {
+    method: 'get',
+    path: '/api/labels/prints/:id/progress',
+    access: 'stock.label',
+    summary: 'How many labels of a run are drawn by now, while its PDF is made',
+    params: idParams,
+    response: z.object({ done: z.int(), labels: z.int() }),
   },
   contents: {
     method: 'get',

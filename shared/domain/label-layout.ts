@@ -1,4 +1,4 @@
-import type { LabelSheet } from './label-sheets.ts';
+import type { LabelMeasures } from './label-sheets.ts';
 
 /** What one label says. */
 export interface LabelContent {
@@ -30,6 +30,12 @@ const ROW_HEIGHT = 1.12;
 /** Larger squares read no better at arm's length and leave less room for words. */
 const LARGEST_MODULE = 0.5;
 const EDGE = 0.4;
+const RIGHT_EDGE = 1;
+/** The label whose words have the sizes below; larger labels have larger words. */
+const SMALL_LABEL = 12.7;
+const SMALL_CODE = 1.9;
+const SMALL_ROUND_CODE = 1.3;
+const LARGEST_STACKED_CODE = 3;
 const LARGEST_CODE = 4;
 /** Smaller words are not read on a rack, mm. */
 const SMALLEST_ROW = 1.6;
@@ -42,13 +48,16 @@ const ARC_GAP = 0.25;
  * @param modules side of the QR code in modules, without its quiet zone
  */
 export function layoutLabel(
-  sheet: Pick<LabelSheet, 'shape' | 'width' | 'height'>,
+  sheet: Pick<LabelMeasures, 'shape' | 'width' | 'height'>,
   content: LabelContent,
   modules: number,
 ): LabelLayout {
   if (sheet.shape === 'round') return roundLayout(sheet.width, content, modules);
-  if (sheet.shape === 'square') return squareLayout(sheet.width, content, modules);
-  return wideLayout(sheet, content, modules);
+  const side = wideQrSide(sheet.height, modules);
+  const roomForCode = sheet.width - EDGE - side - RIGHT_EDGE;
+  return roomForCode >= monoWidth(content.code, SMALLEST_ROW)
+    ? wideLayout(sheet, content, modules)
+    : stackedLayout(sheet, content, modules);
 }
 
 /** Width of a text in the labels' mono type, mm. */
@@ -57,11 +66,11 @@ export function monoWidth(text: string, size: number): number {
 }
 
 function wideLayout({ width, height }: { width: number; height: number }, content: LabelContent, modules: number) {
-  const side = Math.min(height - 2 * EDGE, (modules + 2 * QUIET_MODULES) * LARGEST_MODULE);
+  const side = wideQrSide(height, modules);
   const qr = qrBox(EDGE, (height - side) / 2, side, modules);
   // The quiet zone is all the space that the words need on their left.
   const left = qr.x + side;
-  const room = { width: width - left - 1, height: height - 2 * EDGE };
+  const room = { width: width - left - RIGHT_EDGE, height: height - 2 * EDGE };
 
   const codeSize = Math.min(LARGEST_CODE, sizeToFit(content.code, room.width), room.height / 3);
   const rowSize = Math.min(codeSize * 0.78, 2.6);
@@ -94,21 +103,37 @@ function wideLayout({ width, height }: { width: number; height: number }, conten
   };
 }
 
-function squareLayout(width: number, content: LabelContent, modules: number): LabelLayout {
-  const size = Math.min(1.9, sizeToFit(content.code, width - 2 * EDGE));
-  const side = width - EDGE - size;
+/** For labels too narrow for words beside the QR code: the code and what else fits stand below it. */
+function stackedLayout({ width, height }: { width: number; height: number }, content: LabelContent, modules: number) {
+  const room = width - 2 * EDGE;
+  const growth = Math.max(1, Math.min(width, height) / SMALL_LABEL);
+  const codeSize = Math.min(LARGEST_STACKED_CODE, SMALL_CODE * growth, sizeToFit(content.code, room));
+  const largest = (modules + 2 * QUIET_MODULES) * LARGEST_MODULE;
+  const side = Math.min(width, height - EDGE - codeSize, largest);
+  const rowSize = Math.max(SMALLEST_ROW, codeSize * 0.7);
+  const rowsThatFit = Math.floor((height - EDGE - codeSize - side) / (rowSize * ROW_HEIGHT));
+  const rows = content.rows.filter((text) => sizeToFit(text, room) >= SMALLEST_ROW).slice(0, Math.max(0, rowsThatFit));
+
+  const top = (height - side - codeSize - rows.length * rowSize * ROW_HEIGHT - EDGE) / 2;
+  const codeBaseline = top + side + codeSize * 0.9;
   return {
-    qr: qrBox((width - side) / 2, 0, side, modules),
+    qr: qrBox((width - side) / 2, top, side, modules),
     glyph: null,
-    texts: [{ text: content.code, x: width / 2, y: width - EDGE - 0.2, size, anchor: 'middle' }],
+    texts: [
+      { text: content.code, x: width / 2, y: codeBaseline, size: codeSize, anchor: 'middle' as const },
+      ...rows.map((text, index) => ({
+        ...{ text, x: width / 2, y: codeBaseline + (index + 1) * rowSize * ROW_HEIGHT },
+        ...{ size: Math.min(rowSize, sizeToFit(text, room)), anchor: 'middle' as const },
+      })),
+    ],
   };
 }
 
 /** The QR code with its quiet zone fills the square inside the circle; words sit in the arcs above and below. */
 function roundLayout(width: number, content: LabelContent, modules: number): LabelLayout {
-  const side = width / Math.SQRT2 - 0.1;
+  const side = Math.min(width / Math.SQRT2 - 0.1, (modules + 2 * QUIET_MODULES) * LARGEST_MODULE);
   const inset = (width - side) / 2;
-  const size = 1.3;
+  const size = Math.min(LARGEST_STACKED_CODE, (SMALL_ROUND_CODE * width) / SMALL_LABEL);
   // Clear of the cut by a little on both sides.
   const room = arcWidth(width, inset - ARC_GAP - size * CAP_HEIGHT) - 2 * EDGE;
   const above = content.glyphCode !== null && monoWidth(content.glyphCode, size) <= room ? [content.glyphCode] : [];
@@ -124,6 +149,10 @@ function roundLayout(width: number, content: LabelContent, modules: number): Lab
       },
     ],
   };
+}
+
+function wideQrSide(height: number, modules: number): number {
+  return Math.min(height - 2 * EDGE, (modules + 2 * QUIET_MODULES) * LARGEST_MODULE);
 }
 
 function qrBox(x: number, y: number, side: number, modules: number): LabelLayout['qr'] {

@@ -1,17 +1,17 @@
-import { DomainError } from '../errors.ts';
-
 /** Paper by its portrait size, mm. */
 export const PAPERS = {
   A4: { name: 'A4', width: 210, height: 297 },
   letter: { name: 'US Letter', width: 215.9, height: 279.4 },
 } as const;
 
-/** A sheet of labels; all lengths in mm, from the top left corner of the portrait page. */
-export interface LabelSheet {
-  id: LabelSheetId;
-  name: string;
-  paper: keyof typeof PAPERS;
-  shape: 'rectangle' | 'square' | 'round';
+/** `roll`: every label is a page of its own. */
+export const LABEL_PAPERS = ['A4', 'letter', 'roll'] as const;
+export const LABEL_SHAPES = ['rectangle', 'round'] as const;
+
+/** The measures of a label stock, a sheet or a roll; all lengths in mm, from the top left corner of the portrait page. */
+export interface LabelMeasures {
+  paper: (typeof LABEL_PAPERS)[number];
+  shape: (typeof LABEL_SHAPES)[number];
   width: number;
   height: number;
   columns: number;
@@ -24,8 +24,10 @@ export interface LabelSheet {
   cutLines: boolean;
 }
 
-export const LABEL_SHEET_IDS = ['a4-65', 'a4-189', 'letter-80', 'plug-square', 'plug-round'] as const;
-export type LabelSheetId = (typeof LABEL_SHEET_IDS)[number];
+export interface LabelSheet extends LabelMeasures {
+  id: string;
+  name: string;
+}
 
 /** Half an inch: the head of a small plug. */
 const PLUG_LABEL = 12.7;
@@ -36,68 +38,59 @@ const PLUG_GRID = {
   ...{ left: 16.15, top: 14.65, pitchX: 15, pitchY: 15, cutLines: true },
 } as const satisfies Partial<LabelSheet>;
 
+/** A roll of labels, one below the other. */
+export function rollOf(width: number, height: number): Omit<LabelMeasures, 'shape'> {
+  return {
+    ...{ paper: 'roll', width, height, columns: 1, rows: 1, left: 0, top: 0 },
+    ...{ pitchX: width, pitchY: height, cutLines: false },
+  };
+}
+
 /**
- * The sheets that labels can be printed on.
- * @see template measurements in the Debian package glabels-data, for the three sheets that are sold ready cut
+ * The label stocks that come with the product; farms add their own.
+ * @see template measurements in the Debian package glabels-data, for the sheets that are sold ready cut; the rolls are
+ *   sizes in common use (no source)
  */
-export const LABEL_SHEETS: Readonly<Record<LabelSheetId, LabelSheet>> = {
-  'a4-65': {
+export const LABEL_SHEETS: readonly LabelSheet[] = [
+  {
     ...{ id: 'a4-65', name: 'A4, 65 labels of 38.1 × 21.2 mm', paper: 'A4', shape: 'rectangle' },
     ...{ width: 38.1, height: 21.198, columns: 5, rows: 13 },
     ...{ left: 4.699, top: 10.901, pitchX: 40.601, pitchY: 21.198, cutLines: false },
   },
-  'a4-189': {
+  {
     ...{ id: 'a4-189', name: 'A4, 189 labels of 25.4 × 10 mm', paper: 'A4', shape: 'rectangle' },
     ...{ width: 25.4, height: 10, columns: 7, rows: 27 },
     ...{ left: 5, top: 13, pitchX: 28.5, pitchY: 10.14, cutLines: false },
   },
-  'letter-80': {
+  {
+    ...{ id: 'a4-21', name: 'A4, 21 labels of 64 × 38.1 mm', paper: 'A4', shape: 'rectangle' },
+    ...{ width: 63.994, height: 38.1, columns: 3, rows: 7 },
+    ...{ left: 7.479, top: 15.487, pitchX: 66.04, pitchY: 38.1, cutLines: false },
+  },
+  {
     ...{ id: 'letter-80', name: 'US Letter, 80 labels of 1.75 × 0.5 in', paper: 'letter', shape: 'rectangle' },
     ...{ width: 44.45, height: 12.7, columns: 4, rows: 20 },
     ...{ left: 7.144, top: 12.7, pitchX: 52.387, pitchY: 12.7, cutLines: false },
   },
-  'plug-square': {
-    ...PLUG_GRID,
-    ...{ id: 'plug-square', name: 'Plug labels, 216 squares of 12.7 mm on A4', shape: 'square' },
+  {
+    ...{ id: 'letter-30', name: 'US Letter, 30 labels of 2.625 × 1 in', paper: 'letter', shape: 'rectangle' },
+    ...{ width: 66.675, height: 25.4, columns: 3, rows: 10 },
+    ...{ left: 3.969, top: 12.7, pitchX: 70.644, pitchY: 25.4, cutLines: false },
   },
-  'plug-round': {
+  {
+    ...{ id: 'letter-24-round', name: 'US Letter, 24 rounds of 1.625 in', paper: 'letter', shape: 'round' },
+    ...{ width: 41.275, height: 41.275, columns: 4, rows: 6 },
+    ...{ left: 10.559, top: 13.945, pitchX: 51.168, pitchY: 42.047, cutLines: false },
+  },
+  {
+    ...PLUG_GRID,
+    ...{ id: 'plug-square', name: 'Plug labels, 216 squares of 12.7 mm on A4', shape: 'rectangle' },
+  },
+  {
     ...PLUG_GRID,
     ...{ id: 'plug-round', name: 'Plug labels, 216 rounds of 12.7 mm on A4', shape: 'round' },
   },
-};
-
-/** How many labels one sheet holds. */
-export function labelsOn(sheet: LabelSheet): number {
-  return sheet.columns * sheet.rows;
-}
-
-/**
- * Where the labels of a run come to lie: row by row from the first free place, then on fresh sheets from the first.
- *
- * @param start first free place of the first sheet, counted from 1 along the rows
- * @returns for each label its page from 0 and its top left corner, mm
- * @throws {DomainError} `input.invalid` where the sheet has no such place
- */
-export function placesFor(
-  sheet: LabelSheet,
-  labels: number,
-  start: number,
-): { page: number; place: number; x: number; y: number }[] {
-  const onSheet = labelsOn(sheet);
-  if (!Number.isInteger(start) || start < 1 || start > onSheet) {
-    const message = `This sheet has places 1 to ${onSheet}.`;
-    throw new DomainError('input.invalid', message, { fields: [{ path: 'start', message }] });
-  }
-  return Array.from({ length: labels }, (_, index) => {
-    const overall = start - 1 + index;
-    const place = (overall % onSheet) + 1;
-    return { page: Math.floor(overall / onSheet), place, ...cornerOf(sheet, place) };
-  });
-}
-
-/** The top left corner of a place counted from 1 along the rows, mm. */
-export function cornerOf(sheet: LabelSheet, place: number): { x: number; y: number } {
-  const column = (place - 1) % sheet.columns;
-  const row = Math.floor((place - 1) / sheet.columns);
-  return { x: sheet.left + column * sheet.pitchX, y: sheet.top + row * sheet.pitchY };
-}
+  { ...rollOf(57.15, 31.75), id: 'roll-57', name: 'Roll, 57 × 32 mm (2¼ × 1¼ in)', shape: 'rectangle' },
+  { ...rollOf(50.8, 25.4), id: 'roll-51', name: 'Roll, 51 × 25 mm (2 × 1 in)', shape: 'rectangle' },
+  { ...rollOf(25.4, 25.4), id: 'roll-25', name: 'Roll, 25 × 25 mm (1 × 1 in)', shape: 'rectangle' },
+];

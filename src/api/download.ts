@@ -19,10 +19,20 @@ export async function downloadFile<const E extends Endpoint>(
   options: CallOptions<E>,
   fallbackName = 'limestead-file',
 ): Promise<string> {
+  const { blob, name } = await fetchFile(endpoint, options, fallbackName);
+  saveBlob(blob, name);
+  return name;
+}
+
+/** A file and the name that the server gave it. */
+export async function fetchFile<const E extends Endpoint>(
+  endpoint: E,
+  options: CallOptions<E>,
+  fallbackName: string,
+): Promise<{ blob: Blob; name: string }> {
   const response = await sendRequest(endpoint, options as LooseCall);
   const name = fileNameOf(response.headers.get('Content-Disposition')) ?? fallbackName;
-  saveBlob(await response.blob(), name);
-  return name;
+  return { blob: await response.blob(), name };
 }
 
 export function saveBlob(blob: Blob, name: string): void {

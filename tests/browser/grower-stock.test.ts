@@ -3,9 +3,10 @@ import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, expect, it } from 'vitest';
 import type { Page } from 'playwright-core';
-import { LABEL_SHEETS, placesFor } from '../../shared/domain/label-sheets.ts';
+import { placesFor } from '../../shared/domain/label-places.ts';
 import { formatPlugCode, parsePlugCode } from '../../shared/domain/plug-code.ts';
 import { cameraFlags, writeCameraFile } from '../support/fake-camera.ts';
+import { sheetOf } from '../support/label-sheet.ts';
 import { crop, type GreyPicture, printPdf, readQrCodes } from '../support/read-labels.ts';
 import { choose, heading } from './support/acts.ts';
 import { useSite } from './support/use-site.ts';
@@ -55,8 +56,10 @@ it('when a cut is logged on a phone, its printed label leads the camera to the p
   await logCut(page);
   await page.getByRole('link', { name: 'Print labels' }).click();
   await heading(page, /^Labels: /);
-  const address = await page.getByRole('link', { name: 'Open to print' }).getAttribute('href');
-  const pdf = await (await page.request.get(address ?? '')).body();
+  const file = page.waitForResponse(/\/api\/labels\/prints\/.+\/file$/);
+  await page.getByRole('button', { name: 'Make the PDF' }).click();
+  const pdf = await (await file).body();
+  await page.getByRole('link', { name: 'Open to print' }).waitFor();
   const [sheet] = printPdf(pdf, 300);
   if (!sheet) throw new Error('The PDF has no page.');
   const texts = await readQrCodes(sheet);
@@ -123,7 +126,7 @@ const DOTS_PER_MM = 300 / 25.4;
 
 /** What a phone held close to the sheet sees: the first label alone. */
 function firstLabelOf(page: GreyPicture): GreyPicture {
-  const sheet = LABEL_SHEETS['a4-65'];
+  const sheet = sheetOf('a4-65');
   const [place] = placesFor(sheet, 1, 1);
   if (!place) throw new Error('The sheet has no labels.');
   const px = (mm: number) => Math.round(mm * DOTS_PER_MM);

@@ -1,6 +1,6 @@
 import { sql } from 'drizzle-orm';
 import { check, index, integer, primaryKey, real, sqliteTable, text, uniqueIndex } from 'drizzle-orm/sqlite-core';
-import type { LabelSubject } from '../../../shared/contracts/labels.ts';
+import type { PrintedSubject } from '../../../shared/contracts/labels.ts';
 import { id, instant, version } from './columns.ts';
 
 /** Label stocks of the farm's own, beside those that come with the product (`LABEL_SHEETS`). Lengths are mm. */
@@ -58,7 +58,7 @@ export const labelPrints = sqliteTable(
   'label_print',
   {
     id: id(),
-    subject: text('subject', { mode: 'json' }).$type<LabelSubject>().notNull(),
+    subject: text('subject', { mode: 'json' }).$type<PrintedSubject>().notNull(),
     title: text('title').notNull(),
     labels: integer('labels').notNull(),
     stockId: text('stock_id').notNull(),

@@ -46,6 +46,8 @@ export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: S
     const reading = readScan(text, (code) => racks.value.some((each) => each.code === code));
     if (reading.kind === 'rack') await takeRack(reading.code);
     else if (reading.kind === 'plug') await takePlug(reading.code);
+    else if (reading.kind !== 'unknown')
+      list.refuse(reading.code, `This is the label of a ${reading.kind}: open it with the phone's own camera.`);
     else list.refuse(reading.text.slice(0, 40) || 'No code', explainProblem(reading.problem), reading.suggestion);
   }
 

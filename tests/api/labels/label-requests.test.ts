@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { auditLog, consumptions, items, lots } from '../../../server/db/schema/index.ts';
 import { formatPlugCode } from '../../../shared/domain/plug-code.ts';
 import { givenLabelledBatch } from '../../support/given-labels.ts';
+import { sheetOf } from '../../support/label-sheet.ts';
 import { startFarm, type TestFarm } from '../../support/start-farm.ts';
 
 function givenBlankLabels(farm: TestFarm, quantity: number): string {
@@ -72,19 +73,70 @@ describe('what labels say', () => {
     expect([reply.status, reply.body.code]).toEqual([status, code]);
   });
 
-  it.each(['sheet=napkin', 'sheet=a4-65&start=0', 'sheet=a4-65&shiftX=6', 'sheet=a4-65&start=66', 'start=1'])(
-    'when printed with "%s", says at the field what is wrong',
-    async (query) => {
-      const farm = await startFarm();
-      const { batchId } = givenLabelledBatch(farm);
-      const grower = await farm.as('grower');
+  it.each([
+    [{ stockId: 'napkin' }, 404, 'stockId'],
+    [{ stockId: 'a4-65', start: 0 }, 400, 'start'],
+    [{ stockId: 'a4-65', start: 66 }, 400, 'start'],
+    [{ stockId: 'roll-25', start: 2 }, 400, 'start'],
+    [{ start: 1 }, 400, 'stockId'],
+    [{ stockId: 'a4-65', printer: '' }, 400, 'printer'],
+  ])('when printed with %j, says at the field what is wrong', async (fields, status, path) => {
+    const farm = await startFarm();
+    const { batchId } = givenLabelledBatch(farm);
+    const grower = await farm.as('grower');
 
-      const reply = await grower.get(`/api/labels?batchId=${batchId}&${query}`);
+    const reply = await grower.post('/api/labels/prints').send({ subject: { batchId }, ...fields });
 
-      expect(reply.status).toBe(400);
-      expect(reply.body.fields[0].path).toMatch(/^(sheet|start|shiftX)$/);
-    },
-  );
+    expect([reply.status, reply.body.fields[0].path]).toEqual([status, path]);
+  });
+
+  it('when labels beyond the last are asked for, says which there are', async () => {
+    const farm = await startFarm();
+    const { batchId } = givenLabelledBatch(farm, { pieces: 4 });
+    const grower = await farm.as('grower');
+
+    const run = { subject: { batchId, from: 5, to: 9 }, stockId: 'a4-65' };
+    const reply = await grower.post('/api/labels/prints').send(run);
+
+    expect(reply.status).toBe(400);
+    expect(reply.body.fields).toEqual([{ path: 'subject.from', message: 'There are labels 1 to 4.' }]);
+  });
+});
+
+describe('printing again', () => {
+  it('when labels were printed, they are listed, the latest first, and their PDF is made again', async () => {
+    const farm = await startFarm();
+    const { batchId } = givenLabelledBatch(farm, { pieces: 4 });
+    const grower = await farm.as('grower');
+    const print = (from: number) =>
+      grower.post('/api/labels/prints').send({ subject: { batchId, from, to: from }, stockId: 'a4-65', start: from });
+    for (const from of [1, 2, 3]) await print(from);
+
+    const first = await grower.get('/api/labels/prints?limit=2');
+    const rest = await grower.get(`/api/labels/prints?limit=2&cursor=${first.body.nextCursor}`);
+
+    const all = [...first.body.items, ...rest.body.items];
+    expect([first.body.total, all.length, new Set(all.map(({ id }) => id)).size]).toEqual([3, 3, 3]);
+    expect(all.map(({ subject }) => subject.from).sort()).toEqual([1, 2, 3]);
+    expect(all[0]).toMatchObject({
+      title: 'Batch WIG-2609-1',
+      labels: 1,
+      stockName: sheetOf('a4-65').name,
+      by: 'Test grower',
+    });
+    const again = await grower.get(`/api/labels/prints/${all[0].id}/file`);
+    expect([again.status, again.headers['content-type']]).toEqual([200, 'application/pdf']);
+    expect(farm.db.select().from(auditLog).where(eq(auditLog.action, 'labels.printed')).all()).toHaveLength(3);
+  });
+
+  it('when there is no such run, says so', async () => {
+    const farm = await startFarm();
+    const grower = await farm.as('grower');
+
+    const reply = await grower.get('/api/labels/prints/00000000-0000-4000-8000-00000000ffff/file');
+
+    expect([reply.status, reply.body.code]).toEqual([404, 'record.not_found']);
+  });
 });
 
 describe('taking blank labels', () => {

@@ -12,6 +12,7 @@ import { startFarm, TEST_PASSWORD, type TestFarm } from '../start-farm.ts';
 import type { KnownValues } from './sample-request.ts';
 import { givenDosingWork } from './worked-dosing.ts';
 import { givenPeople, givenSales, givenStock, givenWater } from './worked-records.ts';
+import { givenLabelWork } from './worked-labels.ts';
 import { givenPlans } from './worked-plans.ts';
 import { givenTasksAndAlerts } from './worked-tasks.ts';
 
@@ -50,6 +51,7 @@ export async function workedFarm(): Promise<WorkedFarm> {
   const byPath: Record<string, KnownValues> = {
     '/api/labels/takings': { itemId: supplies.labelId },
     '/api/labels': { codes: code },
+    ...givenLabelWork(farm, stock.batchId),
     '/api/public/plugs': { code },
     '/api/plugs': { code },
     '/api/session': { email: 'grower@example.com', password: TEST_PASSWORD },

@@ -1,7 +1,7 @@
 import QRCode from 'qrcode';
 import { describe, expect, it } from 'vitest';
 import { type LabelContent, layoutLabel, monoWidth } from '../../../shared/domain/label-layout.ts';
-import { LABEL_SHEET_IDS, LABEL_SHEETS } from '../../../shared/domain/label-sheets.ts';
+import { LABEL_SHEETS } from '../../../shared/domain/label-sheets.ts';
 import { plugUrl } from '../../../shared/domain/plug-code.ts';
 import { qrRuns } from '../../../shared/domain/qr-runs.ts';
 import reference from '../../reference/labels.json' with { type: 'json' };
@@ -11,9 +11,7 @@ const label: LabelContent = {
   rows: ['WIG 4831', 'cut 2026-02-26', 'WIG-2609-1'],
 };
 
-describe.each(LABEL_SHEET_IDS)('a label of sheet %s', (id) => {
-  const sheet = LABEL_SHEETS[id];
-
+describe.each(LABEL_SHEETS)('a label of stock $id', (sheet) => {
   it.each([25, 29])('when the code has %i modules, everything lies inside the label', (modules) => {
     const { qr, glyph, texts } = layoutLabel(sheet, label, modules);
 

@@ -1,20 +1,23 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
+  assertMeasures,
   cornerOf,
-  LABEL_SHEET_IDS,
-  LABEL_SHEETS,
   labelsOn,
-  PAPERS,
+  measureProblems,
+  pageOf,
   placesFor,
-} from '../../../shared/domain/label-sheets.ts';
+} from '../../../shared/domain/label-places.ts';
+import { LABEL_SHEETS, type LabelMeasures, rollOf } from '../../../shared/domain/label-sheets.ts';
+import { domainErrorOf } from '../../support/domain-error.ts';
+import { sheetOf } from '../../support/label-sheet.ts';
 import reference from '../../reference/labels.json' with { type: 'json' };
 
-const everySheet = LABEL_SHEET_IDS.map((id) => [id, LABEL_SHEETS[id]] as const);
+const everySheet = LABEL_SHEETS.map((sheet) => [sheet.id, sheet] as const);
 
 describe('label sheets', () => {
   it.each(reference.sheets)('when the sheet is $id, its measures are those published for it', (published) => {
-    const sheet = LABEL_SHEETS[published.id as keyof typeof LABEL_SHEETS];
+    const sheet = sheetOf(published.id);
 
     expect(labelsOn(sheet)).toBe(published.count);
     expect(sheet).toMatchObject({
@@ -26,30 +29,27 @@ describe('label sheets', () => {
   });
 
   it.each(everySheet)('when the sheet is %s, every label lies on the paper and beside its neighbours', (_id, sheet) => {
-    const paper = PAPERS[sheet.paper];
+    expect(measureProblems(sheet)).toEqual([]);
     const last = cornerOf(sheet, labelsOn(sheet));
-
-    expect(last.x + sheet.width).toBeLessThan(paper.width);
-    expect(last.y + sheet.height).toBeLessThan(paper.height);
-    expect(sheet.pitchX).toBeGreaterThanOrEqual(sheet.width);
-    expect(sheet.pitchY).toBeGreaterThanOrEqual(sheet.height);
+    expect(last.x + sheet.width).toBeLessThanOrEqual(pageOf(sheet).width);
+    expect(last.y + sheet.height).toBeLessThanOrEqual(pageOf(sheet).height);
   });
 
   it.each(['plug-square', 'plug-round'] as const)(
     'when the sheet is %s, its margins are equal on opposite sides',
     (id) => {
-      const sheet = LABEL_SHEETS[id];
+      const sheet = sheetOf(id);
       const last = cornerOf(sheet, labelsOn(sheet));
 
-      expect(PAPERS.A4.width - last.x - sheet.width).toBeCloseTo(sheet.left, 6);
-      expect(PAPERS.A4.height - last.y - sheet.height).toBeCloseTo(sheet.top, 6);
+      expect(pageOf(sheet).width - last.x - sheet.width).toBeCloseTo(sheet.left, 6);
+      expect(pageOf(sheet).height - last.y - sheet.height).toBeCloseTo(sheet.top, 6);
     },
   );
 });
 
 describe('placesFor', () => {
   it('when a sheet is part-used, starts at the first free place and goes on with a fresh sheet', () => {
-    const places = placesFor(LABEL_SHEETS['a4-65'], 4, 63);
+    const places = placesFor(sheetOf('a4-65'), 4, 63);
 
     expect(places.map(({ page, place }) => [page, place])).toEqual([
       [0, 63],
@@ -61,20 +61,42 @@ describe('placesFor', () => {
   });
 
   it.each([0, 66, 1.5, Number.NaN])('when the start is %s, says which places the sheet has', (start) => {
-    expect(() => placesFor(LABEL_SHEETS['a4-65'], 1, start)).toThrow('This sheet has places 1 to 65.');
+    expect(() => placesFor(sheetOf('a4-65'), 1, start)).toThrow('This sheet has places 1 to 65.');
   });
 
   it('whatever the run, no two labels share a place and none is left out', () => {
     fc.assert(
       fc.property(
-        fc.constantFrom(...LABEL_SHEET_IDS),
+        fc.constantFrom(...LABEL_SHEETS),
         fc.integer({ min: 0, max: 700 }),
         fc.integer({ min: 1, max: 65 }),
-        (id, labels, start) => {
-          const places = placesFor(LABEL_SHEETS[id], labels, start);
+        (sheet, labels, start) => {
+          const places = placesFor(sheet, labels, Math.min(start, labelsOn(sheet)));
           expect(new Set(places.map(({ page, place }) => `${page}/${place}`)).size).toBe(labels);
         },
       ),
     );
+  });
+});
+
+describe('the measures of a label stock', () => {
+  const good = sheetOf('a4-65');
+
+  it.each<[string, Partial<LabelMeasures>, string]>([
+    ['columns overlap', { pitchX: 38 }, 'pitchX'],
+    ['rows overlap', { pitchY: 21 }, 'pitchY'],
+    ['the last column leaves the paper', { left: 10 }, 'pitchX'],
+    ['the last row leaves the paper', { rows: 14 }, 'pitchY'],
+    ['one label is wider than the paper', { columns: 1, width: 220 }, 'width'],
+    ['a round is not round', { shape: 'round' }, 'height'],
+    ['a roll has a second column', { ...rollOf(20, 10), columns: 2 }, 'columns'],
+    ['a roll has a margin', { ...rollOf(20, 10), left: 1 }, 'left'],
+  ])('when %s, are refused at the field', (_, change, path) => {
+    const error = domainErrorOf(() => {
+      assertMeasures({ ...good, ...change });
+    });
+
+    expect(error.code).toBe('input.invalid');
+    expect(error.fields.map((field) => field.path)).toContain(path);
   });
 });

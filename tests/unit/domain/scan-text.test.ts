@@ -1,7 +1,15 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { makePlugCode, plugUrl } from '../../../shared/domain/plug-code.ts';
-import { explainProblem, rackUrl, readScan } from '../../../shared/domain/scan-text.ts';
+import {
+  boxCode,
+  boxUrl,
+  explainProblem,
+  orderOfBox,
+  rackUrl,
+  readScan,
+  tankUrl,
+} from '../../../shared/domain/scan-text.ts';
 
 const plug = makePlugCode((max) => 17 % max);
 const racks = new Set(['R7', 'A-12', '0000000']);
@@ -16,6 +24,8 @@ describe('readScan', () => {
     [`https://farm.example.com/p/${plug.toLowerCase()}?from=camera`, { kind: 'plug', code: plug }],
     ['HTTPS://FARM.EXAMPLE.COM/R/R7', { kind: 'rack', code: 'R7' }],
     ['https://farm.example.com/r/new-rack', { kind: 'rack', code: 'NEW-RACK' }],
+    ['HTTPS://FARM.EXAMPLE.COM/T/T-4', { kind: 'tank', code: 'T-4' }],
+    ['https://farm.example.com/b/1042-1', { kind: 'box', code: '1042-1' }],
     ['r7', { kind: 'rack', code: 'R7' }],
     ['a-12', { kind: 'rack', code: 'A-12' }],
   ])('when the text is %j, reads %j', (text, reading) => {
@@ -67,6 +77,25 @@ describe('explainProblem', () => {
     'when the problem is %s, says so in a sentence',
     (problem) => {
       expect(explainProblem(problem)).toMatch(/^[A-Z].+\.$/);
+    },
+  );
+});
+
+describe('codes of boxes', () => {
+  it('when a label of a box or a tank is read, it leads back to its order or its tank', () => {
+    const box = readScan(boxUrl('http://localhost:3000/', boxCode(1042, 3)), isRack);
+    expect(box).toEqual({ kind: 'box', code: '1042-3' });
+    expect(orderOfBox('1042-3')).toBe(1042);
+    expect(readScan(tankUrl('http://localhost:3000', 'nursery-2'), isRack)).toEqual({
+      kind: 'tank',
+      code: 'NURSERY-2',
+    });
+  });
+
+  it.each(['', '1042', '1042-', '-1', 'R-1', '1042-1-1', '12345678901-1'])(
+    'when it is "%s", is no code of a box',
+    (code) => {
+      expect(orderOfBox(code)).toBeNull();
     },
   );
 });
