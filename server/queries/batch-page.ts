@@ -1,13 +1,15 @@
 import { asc, eq, sql } from 'drizzle-orm';
 import type { BatchPage } from '../../shared/contracts/stock.ts';
-import { dayOf, daysBetween, type Day } from '../../shared/domain/days.ts';
+import { dayOf } from '../../shared/domain/days.ts';
 import { survivalCurve } from '../../shared/domain/survival.ts';
 import type { Role } from '../../shared/permissions.ts';
 import type { Db } from '../db/client.ts';
 import { racks, sizeReadings, stockAccounts, stockBalances } from '../db/schema/index.ts';
 import { stockOfBatch, toBatch } from './batches.ts';
 import { farmOf } from './farm.ts';
+import { plugFates } from './plug-fates.ts';
 import { rackPlace, toRackRef } from './places.ts';
+import { saleableForecast } from './saleable-forecast.ts';
 import { causeLabel, stockActs } from './stock-acts.ts';
 import { openWithholds, toReason } from './withholds.ts';
 
@@ -26,7 +28,8 @@ export function batchPage(db: Db, id: string, viewer: { now: number; role: Role 
     ...toBatch(stock, today),
     ...whereabouts(db, id),
     picked: stock.pieces.picked,
-    survival: survivalCurve(followedPlugs(db, id, stock.batch.cutOn, today, timeZone)),
+    forecast: saleableForecast(db, stock, today),
+    survival: survivalCurve(plugFates(db, sql`b.id = ${id}`, today, timeZone)),
     measurements: measurementsOf(db, id),
     acts: stockActs(db, sql`m.batch_id = ${id}`, viewer),
     withholds: openWithholds(db, { batchId: id }).map(toReason),
@@ -53,20 +56,6 @@ function whereabouts(db: Db, batchId: string): Pick<BatchPage, 'racks' | 'left'>
       return left ? { kind: left, detail: left === 'lost' ? causeLabel(detail) : '', pieces } : [];
     }),
   };
-}
-
-/** Each plug's age when it was lost or culled, when it left alive, or today. */
-function followedPlugs(db: Db, batchId: string, cutOn: Day, today: Day, timeZone: string) {
-  const rows = db.all<{ kind: string | null; at: number | null }>(sql`
-    SELECT a.kind, (SELECT m.at FROM stock_movement AS m WHERE m.plug_code = p.code ORDER BY m.id DESC LIMIT 1) AS at
-    FROM plug AS p LEFT JOIN stock_account AS a ON a.id = p.account_id
-    WHERE p.batch_id = ${batchId}`);
-  return rows.map(({ kind, at }) => {
-    const lost = kind === 'lost' || kind === 'culled';
-    const left = lost || LEFT_KINDS.some((each) => each === kind);
-    const day = left && at !== null ? dayOf(at, timeZone) : today;
-    return { day: Math.max(0, daysBetween(cutOn, day)), lost };
-  });
 }
 
 function measurementsOf(db: Db, batchId: string): BatchPage['measurements'] {

@@ -6,8 +6,10 @@ import { listBatches, listBatchPlugs } from '../queries/batches.ts';
 import { cuttingChoices, listColonies, showColony } from '../queries/colonies.ts';
 import { listCuts } from '../queries/cuts.ts';
 import { listLines, showLine, stockSummary } from '../queries/lines.ts';
+import { lossPatterns } from '../queries/loss-patterns.ts';
 import { plugPage } from '../queries/plug-page.ts';
 import { listRacks, listTanks, rackPage } from '../queries/racks.ts';
+import { survivalGroups } from '../queries/survival-groups.ts';
 import { listWithholds } from '../queries/withholds.ts';
 import { createColony, editColony } from '../services/colony-service.ts';
 import { createLine, editLine } from '../services/line-service.ts';
@@ -32,6 +34,9 @@ function recordRoutes(api: Api): void {
   api.read(stockEndpoints.showLine, (db, { params }) => showLine(db, params.id, now()));
   api.write(stockEndpoints.editLine, (write, { params, body, ifMatch }) => editLine(write, params.id, ifMatch, body));
   api.read(stockEndpoints.summary, (db) => stockSummary(db, now()));
+
+  api.read(stockEndpoints.survival, (db, { query }) => survivalGroups(db, query.by, now()));
+  api.read(stockEndpoints.lossPatterns, (db) => lossPatterns(db, now()));
 
   api.read(stockEndpoints.listColonies, (db, { query }) => listColonies(db, query, now()));
   api.write(stockEndpoints.createColony, (write, { body }) => createColony(write, body));

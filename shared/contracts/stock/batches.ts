@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { calendarDay, id, idParams, instant, listQuery, pageOf } from '../common.ts';
 import type { Endpoint } from '../endpoint.ts';
-import { LineRef, RackRef, SizeOutlook, StockCounts } from './values.ts';
+import { grade, LineRef, RackRef, SizeOutlook, StockCounts } from './values.ts';
 
 export const Batch = z.object({
   id: z.string(),
@@ -83,7 +83,36 @@ export const Measurement = z.object({
 });
 export type Measurement = z.infer<typeof Measurement>;
 
+/** How many of the living pieces will be healed and of a grade by a day, with the range that holds with 80 %. */
+const ReadyCount = z.object({ day: calendarDay, expected: z.number(), low: z.int(), high: z.int() });
+
+/** When most of a batch will have reached the smallest grade that is sold, or the next one. */
+export const SaleableForecast = ReadyCount.omit({ day: true }).extend({
+  grade,
+  /** The pieces cannot be sold yet; otherwise the next grade is looked for. */
+  isFirstSale: z.boolean(),
+  /** Living pieces. */
+  of: z.int(),
+  on: calendarDay,
+  /** Week by week from today. */
+  points: z.array(ReadyCount),
+  basis: z.object({
+    /** Growth as a multiple of what is usual for the line, pooled with its genus and the farm, and its standard deviation. */
+    ratio: z.number(),
+    ratioSd: z.number(),
+    /** Measured batches of the line. */
+    batches: z.int(),
+    /** The curve that fits the line best; null: too few measurings. */
+    curve: z.enum(['linear', 'exponential', 'logistic', 'von_bertalanffy']).nullable(),
+    variation: z.number(),
+    /** Pieces of the newest sample. */
+    sampled: z.int(),
+  }),
+});
+export type SaleableForecast = z.infer<typeof SaleableForecast>;
+
 export const BatchPage = Batch.extend({
+  forecast: SaleableForecast.nullable(),
   racks: z.array(RackRef.extend({ pieces: z.int() })),
   /** Pieces that left, by how. */
   left: z.array(
