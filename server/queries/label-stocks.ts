@@ -6,7 +6,7 @@ import { DomainError } from '../../shared/errors.ts';
 import type { Db } from '../db/client.ts';
 import { labelFits, labelStocks } from '../db/schema/index.ts';
 
-export type LabelStockRow = typeof labelStocks.$inferSelect;
+type LabelStockRow = typeof labelStocks.$inferSelect;
 
 /** Own stocks by name, then those of the product. */
 export function listLabelStocks(db: Db): LabelStock[] {

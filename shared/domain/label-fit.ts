@@ -14,7 +14,7 @@ export interface LabelFit {
 export const NO_FIT: LabelFit = { shiftX: 0, shiftY: 0, scaleX: 1, scaleY: 1 };
 
 /** The two rules of a calibration page, mm: how far they start from the left and the top edge, and how long they are. */
-export interface CalibrationRules {
+interface CalibrationRules {
   left: number;
   top: number;
   across: number;

@@ -22,9 +22,9 @@ export interface LabelLayout {
 }
 
 /** Light modules on each side that ISO/IEC 18004 asks for. */
-export const QUIET_MODULES = 4;
+const QUIET_MODULES = 4;
 /** Width of a character and height of a capital in the mono type, as parts of its size. */
-export const MONO_ADVANCE = 0.6;
+const MONO_ADVANCE = 0.6;
 const CAP_HEIGHT = 0.72;
 const ROW_HEIGHT = 1.12;
 /** Larger squares read no better at arm's length and leave less room for words. */

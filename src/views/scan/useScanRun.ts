@@ -46,8 +46,7 @@ export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: S
     const reading = readScan(text, (code) => racks.value.some((each) => each.code === code));
     if (reading.kind === 'rack') await takeRack(reading.code);
     else if (reading.kind === 'plug') await takePlug(reading.code);
-    else if (reading.kind !== 'unknown')
-      list.refuse(reading.code, `This is the label of a ${reading.kind}: open it with the phone's own camera.`);
+    else if (reading.kind !== 'unknown') await tellPlace(reading.kind, reading.code);
     else list.refuse(reading.text.slice(0, 40) || 'No code', explainProblem(reading.problem), reading.suggestion);
   }
 
@@ -65,6 +64,13 @@ export function useScanRun(racks: ComputedRef<readonly Rack[]>, signal: (kind: S
     }
     moveTo(known);
     if (waiting.value !== null) await actOn(waiting.value);
+  }
+
+  /** Nothing is done with a tank or a box here: the list leads to its page. */
+  async function tellPlace(kind: 'tank' | 'box', code: string): Promise<void> {
+    await list.run(code, null, () =>
+      Promise.resolve({ detail: `Open the ${kind}`, to: { name: `${kind}-address`, params: { code } } }),
+    );
   }
 
   async function takePlug(code: string): Promise<void> {

@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import QRCode from 'qrcode';
 import { describe, expect, it } from 'vitest';
 import { type LabelContent, layoutLabel, monoWidth } from '../../../shared/domain/label-layout.ts';
@@ -62,6 +63,41 @@ describe.each(LABEL_SHEETS)('a label of stock $id', (sheet) => {
     expect(33 * qr.module).toBeCloseTo(qr.side, 9);
     // Two dots of a 203 dpi printer, the coarsest in use for labels (common practice, no source).
     expect(qr.module).toBeGreaterThan(0.25);
+  });
+});
+
+describe('a label of an own size', () => {
+  const side = fc.double({ min: 8, max: 120, noNaN: true });
+
+  it('whatever its sides, code and words lie inside of it and clear of the quiet zone', () => {
+    fc.assert(
+      fc.property(
+        side,
+        side,
+        fc.constantFrom('rectangle', 'round'),
+        fc.constantFrom(25, 29),
+        (width, across, shape, modules) => {
+          const height = shape === 'round' ? width : across;
+          const { qr, texts } = layoutLabel({ shape, width, height }, label, modules);
+
+          expect(qr.module).toBeGreaterThan(0);
+          expect(Math.min(qr.x, qr.y)).toBeGreaterThanOrEqual(-1e-9);
+          expect(qr.x + qr.side).toBeLessThanOrEqual(width + 1e-9);
+          expect(qr.y + qr.side).toBeLessThanOrEqual(height + 1e-9);
+          expect(texts.map(({ text }) => text)).toContain(label.code);
+          for (const { text, x, y, size, anchor } of texts) {
+            const wide = monoWidth(text, size);
+            const left = anchor === 'middle' ? x - wide / 2 : x;
+            expect(left).toBeGreaterThanOrEqual(-1e-9);
+            expect(left + wide).toBeLessThanOrEqual(width + 1e-9);
+            expect(y - size * 0.72).toBeGreaterThanOrEqual(-1e-9);
+            expect(y).toBeLessThanOrEqual(height + 1e-9);
+            const clear = left >= qr.x + qr.side - 1e-9 || y - size * 0.72 >= qr.y + qr.side - 0.2 || y <= qr.y + 1e-9;
+            expect(clear).toBe(true);
+          }
+        },
+      ),
+    );
   });
 });
 
