@@ -34,7 +34,9 @@ export function plugFates(db: Db, chosen: SQL, today: Day, timeZone: string): Pl
     FROM batch AS b JOIN cut AS c ON c.id = b.cut_id JOIN plug AS p ON p.batch_id = b.id
     LEFT JOIN stock_account AS a ON a.id = p.account_id
     LEFT JOIN stock_movement AS m ON m.id = (SELECT max(id) FROM stock_movement WHERE plug_code = p.code)
-    LEFT JOIN stock_account AS f ON f.id = m.from_account_id
+    LEFT JOIN stock_account AS f ON f.id = (
+      SELECT o.from_account_id FROM stock_movement AS o JOIN stock_account AS r ON r.id = o.from_account_id
+      WHERE o.plug_code = p.code AND r.kind = 'rack' ORDER BY o.id DESC LIMIT 1)
     LEFT JOIN rack AS hr ON hr.id = a.rack_id LEFT JOIN tank AS here ON here.id = hr.tank_id
     LEFT JOIN rack AS fr ON fr.id = f.rack_id LEFT JOIN tank AS before ON before.id = fr.tank_id
     WHERE c.undone_at IS NULL AND ${chosen}`);

@@ -57,9 +57,10 @@ export function saleableCount(then: PiecesThen, minMm: number): SaleableCount {
     const meanMm = Math.max(0.1, then.meanMm + score * then.meanSdMm);
     return then.survival * shareReaching(meanMm, then.variation, minMm);
   });
-  const mixed = Array.from({ length: then.alive + 1 }, (_, count) =>
-    average(chances.map((p) => chanceOf(count, then.alive, p))),
-  );
+  const mixed = Array.from({ length: then.alive + 1 }, (_, count) => {
+    const logWays = logGamma(then.alive + 1) - logGamma(count + 1) - logGamma(then.alive - count + 1);
+    return average(chances.map((p) => chanceOf(count, then.alive, p, logWays)));
+  });
   return {
     expected: then.alive * average(chances),
     low: quantile(mixed, TAIL),
@@ -67,10 +68,10 @@ export function saleableCount(then: PiecesThen, minMm: number): SaleableCount {
   };
 }
 
-function chanceOf(count: number, of: number, p: number): number {
+/** @param logWays logarithm of the number of ways to choose so many of all */
+function chanceOf(count: number, of: number, p: number, logWays: number): number {
   if (p <= 0 || p >= 1) return count === (p <= 0 ? 0 : of) ? 1 : 0;
-  const ways = logGamma(of + 1) - logGamma(count + 1) - logGamma(of - count + 1);
-  return Math.exp(ways + count * Math.log(p) + (of - count) * Math.log1p(-p));
+  return Math.exp(logWays + count * Math.log(p) + (of - count) * Math.log1p(-p));
 }
 
 function quantile(chances: readonly number[], p: number): number {

@@ -55,6 +55,12 @@ export const stockRoutes: RouteRecordRaw[] = [
     meta: { title: 'Plug', access: 'stock.read', place: 'stock' },
   },
   {
+    path: '/stock/survivors',
+    name: 'survival',
+    component: () => import('@/views/stock/SurvivalView.vue'),
+    meta: { title: 'Survivors', access: 'stock.read', place: 'stock' },
+  },
+  {
     path: '/stock/racks',
     name: 'racks',
     component: () => import('@/views/stock/RackListView.vue'),

@@ -1,5 +1,5 @@
 import { beforeEach, describe, expect, it } from 'vitest';
-import { givenCut, givenLoss } from '../../support/given-stock.ts';
+import { givenCut, givenLoss, postOnce } from '../../support/given-stock.ts';
 import { startFarm, type TestFarm } from '../../support/start-farm.ts';
 
 const DAY_MS = 24 * 3_600_000;
@@ -68,6 +68,16 @@ describe('losses of the farm', () => {
     const { body } = await asked(`/api/stock/survival?by=${by}`);
 
     expect(body.groups).toMatchObject([{ plugs: 20, lost: 4 }]);
+  });
+
+  it('when plugs are sold, they still count for the system where they stood', async () => {
+    const { plugs } = givenCut(farm, { pieces: 4 });
+    await postOnce(await farm.as('grower'), '/api/stock/gifts', { codes: plugs.map(({ code }) => code).slice(0, 2) });
+
+    const { body } = await asked('/api/stock/survival?by=system');
+
+    expect(body.groups).toMatchObject([{ plugs: 4, lost: 0 }]);
+    expect(body.groups[0].label).not.toBe('Never placed');
   });
 
   it('when asked for by something else, refuses', async () => {

@@ -89,6 +89,7 @@ export const STOPS: readonly Stop[] = [
   at('batches', 'grower', '/stock/batches'),
   of('batch', 'grower', BATCHES, ({ id }) => `/stock/batches/${id}`),
   { name: 'plug', as: 'grower', path: async (site, page) => `/stock/plugs/${await somePlug(site, page)}` },
+  at('survival', 'grower', '/stock/survivors'),
   at('racks', 'grower', '/stock/racks'),
   {
     name: 'rack',
