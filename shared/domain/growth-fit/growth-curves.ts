@@ -1,6 +1,6 @@
 import { fitCurve, type Fit, type Model, type Point } from './levenberg-marquardt.ts';
 
-export type CurveCode = 'linear' | 'exponential' | 'logistic' | 'von_bertalanffy';
+type CurveCode = 'linear' | 'exponential' | 'logistic' | 'von_bertalanffy';
 
 /** A curve of size (mm) by age (days since the cut) that was fitted to measurements. */
 export interface GrowthCurve extends Fit {

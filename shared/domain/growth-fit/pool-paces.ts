@@ -6,7 +6,7 @@ export interface ObservedPace {
 }
 
 /** How much faster than usual something grows, as far as is known. */
-export interface Pace {
+interface Pace {
   ratio: number;
   sd: number;
 }
