@@ -58,8 +58,9 @@ it('when a cut is logged on a phone, its printed label leads the camera to the p
   await heading(page, /^Labels: /);
   const file = page.waitForResponse(/\/api\/labels\/prints\/.+\/file$/);
   await page.getByRole('button', { name: 'Make the PDF' }).click();
-  const pdf = await (await file).body();
   await page.getByRole('link', { name: 'Open to print' }).waitFor();
+  // The browser keeps no copy of a file that a page took as a whole: it is made once more.
+  const pdf = await (await page.request.get((await file).url())).body();
   const [sheet] = printPdf(pdf, 300);
   if (!sheet) throw new Error('The PDF has no page.');
   const texts = await readQrCodes(sheet);
