@@ -31,7 +31,7 @@ it('when readings are logged on a phone, they stand on the page of the system, a
   await page.getByRole('link', { name: 'Log readings' }).click();
   await heading(page, 'Log readings');
   await page.getByLabel('Alkalinity').fill('8,3');
-  await page.getByLabel('Calcium').fill('431');
+  await page.getByLabel('Magnesium').fill('1340');
   await page.getByRole('button', { name: 'Log readings' }).click();
 
   const message = await toast(page, '2 readings logged.');
@@ -44,11 +44,11 @@ it('when readings are logged on a phone, they stand on the page of the system, a
     return items.map(({ parameter, value }) => `${parameter} ${value.toFixed(2)}`).sort();
   };
   // 8.3 dKH at 2.8 dKH to 1 meq/L.
-  expect(await newest()).toEqual(['alkalinity 2.96', 'calcium 431.00']);
+  expect(await newest()).toEqual(['alkalinity 2.96', 'magnesium 1340.00']);
 
   await message.getByRole('button', { name: 'Undo' }).click();
   await toast(page, 'Undone.');
-  expect(await newest()).not.toContain('calcium 431.00');
+  expect(await newest()).not.toContain('magnesium 1340.00');
 });
 
 it('when limewater is mixed and put online on a phone, the reservoirs have swapped', async () => {

@@ -64,6 +64,7 @@ it('when a password is forgotten, the link in the mail sets a new one, and the o
   const page = await site().newPage();
   await page.goto('/sign-in');
   await page.getByRole('link', { name: 'Forgotten password' }).click();
+  await heading(page, 'Forgotten password');
   await page.getByLabel('E-mail').fill(GROWER.email);
   await page.getByRole('button', { name: 'Send the link' }).click();
   await heading(page, 'Look into your mail');
